@@ -61,9 +61,6 @@ type Rotor struct {
 // afterwards and may be shared between goroutines. Slices that its methods
 // return must not be written to.
 type Molecule struct {
-	graph
-}
-type Molecule struct {
 	atoms []Atom
 	bonds []Bond
 }
