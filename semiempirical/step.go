@@ -1,0 +1,61 @@
+package semiempirical
+
+import "torsieve/internal/scf"
+
+// A cycle is the self-consistency's step: moments in, moments out. It owns all
+// memory that a cycle needs.
+type cycle struct {
+	geometry      *geometry
+	hamiltonian   *hamiltonian
+	contributions []contribution
+	orbitals      *orbitals
+
+	in, out       *moments
+	potential     *potential // of the moments that went in; made the last Fock matrix
+	unused        *potential // of those that came out
+	atoms         []atomWeights
+	fock, density []float64
+	residual      []float64
+
+	core  float64   // energy of the core Hamiltonian, hartree
+	parts []float64 // energies of the contributions
+}
+
+func newCycle(b *basis, g *geometry, h *hamiltonian, contributions []contribution, o *orbitals) *cycle {
+	n := b.functions()
+	c := &cycle{
+		geometry: g, hamiltonian: h, contributions: contributions, orbitals: o,
+		in: newMoments(b), out: newMoments(b), potential: newPotential(b), unused: newPotential(b),
+		atoms: make([]atomWeights, b.atoms()),
+		fock:  make([]float64, n*n), density: make([]float64, n*n),
+		parts: make([]float64, len(contributions)),
+	}
+	c.residual = make([]float64, len(c.in.vec))
+	return c
+}
+
+// step is the scf.Step. The energy is that of the density that comes out: all
+// terms that depend on it.
+func (c *cycle) step(in []float64) (scf.Output, error) {
+	c.in.load(in)
+	c.potential.clear()
+	for _, part := range c.contributions {
+		part.energy(c.in, c.potential)
+	}
+	c.hamiltonian.fock(c.fock, c.potential, c.atoms, c.geometry)
+	if err := c.orbitals.solve(c.fock); err != nil {
+		return scf.Output{}, err
+	}
+	c.orbitals.density(c.density)
+	c.core = c.hamiltonian.populate(c.out, c.density, c.geometry)
+	energy := c.core + c.orbitals.entropy
+	c.unused.clear()
+	for i, part := range c.contributions {
+		c.parts[i] = part.energy(c.out, c.unused)
+		energy += c.parts[i]
+	}
+	for i, v := range c.out.vec {
+		c.residual[i] = v - c.in.vec[i]
+	}
+	return scf.Output{State: c.out.vec, Residual: c.residual, Energy: energy}, nil
+}
