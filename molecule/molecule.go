@@ -61,6 +61,8 @@ type Rotor struct {
 // afterwards and may be shared between goroutines. Slices that its methods
 // return must not be written to.
 type Molecule struct {
-	atoms []Atom
-	bonds []Bond
+	*graph
+	centres     []Centre
+	stereoBonds []StereoBond
+	lazy        lazy
 }

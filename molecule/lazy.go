@@ -1,0 +1,30 @@
+package molecule
+
+import "sync"
+
+// shared is what the stereoisomers of a graph have in common and what is worked
+// out from the finished graph.
+type shared struct {
+	delocalised delocalised
+	classes     func() []int
+	distances   func() [][]int32
+}
+
+// settle prepares what depends on the aromatic flags.
+func (g *graph) settle() {
+	g.shared.delocalised = g.findDelocalised()
+	g.shared.classes = sync.OnceValue(g.classes)
+	g.shared.distances = sync.OnceValue(g.allDistances)
+}
+
+// lazy holds what a molecule works out on first use.
+type lazy struct {
+	smiles func() string
+	chiral func() bool
+	rotors func() []Rotor
+}
+
+func newMolecule(g *graph, centres []Centre, bonds []StereoBond) *Molecule {
+	m := &Molecule{graph: g, centres: centres, stereoBonds: bonds}
+	return m
+}

@@ -1,0 +1,172 @@
+package molecule
+
+import (
+	"cmp"
+	"slices"
+)
+
+// A view is a molecule's graph without its plain hydrogens, as a labelled
+// graph: nodes are the other atoms.
+type view struct {
+	labelled
+	atoms []int // by node
+	node  []int // by atom, -1 for plain hydrogens
+}
+
+// Bond codes of a view beyond the orders 1 to 3.
+const (
+	codeAromatic    = 4
+	codeDelocalised = 5
+)
+
+// view makes the labelled graph of some atoms (a fragment), without stereo.
+// merged treats delocalised groups as alike, as symmetry wants it; otherwise
+// the drawing counts, as in a SMILES string.
+func (g *graph) view(atoms []int, merged bool) *view {
+	v := &view{node: make([]int, len(g.atoms))}
+	for i := range v.node {
+		v.node[i] = -1
+	}
+	for _, i := range atoms {
+		if !g.terminalH(i) {
+			v.node[i] = len(v.atoms)
+			v.atoms = append(v.atoms, i)
+		}
+	}
+	d := g.shared.delocalised
+	v.arcs = make([][]arc, len(v.atoms))
+	for n, i := range v.atoms {
+		for at, j := range g.neighbours[i] {
+			k := g.neighbourBonds[i][at]
+			if v.node[j] < 0 {
+				continue
+			}
+			code := g.bonds[k].Order
+			switch {
+			case merged && d.bond[k]:
+				code = codeDelocalised
+			case g.bonds[k].Aromatic:
+				code = codeAromatic
+			}
+			v.arcs[n] = append(v.arcs[n], arc{v.node[j], code})
+		}
+	}
+	v.colour = g.nodeColours(v, merged)
+	return v
+}
+
+// nodeColours ranks the nodes by what they are, terminal atoms first.
+func (g *graph) nodeColours(v *view, merged bool) []int {
+	const properties = 8
+	keys := make([][properties]int, len(v.atoms))
+	d := g.shared.delocalised
+	for n, i := range v.atoms {
+		a := g.atoms[i]
+		charge, flag := a.Charge, 0
+		if merged && d.atom[i] {
+			charge, flag = 0, 1
+		}
+		ring := 0
+		if g.atomInRing[i] {
+			ring = 1
+		}
+		aromatic := 0
+		if a.Aromatic {
+			aromatic = 1
+		}
+		keys[n] = [properties]int{len(v.arcs[n]), a.Number, aromatic, ring, g.hydrogenCount(i), a.Isotope, charge*8 + a.Radical, flag}
+	}
+	order := make([]int, len(keys))
+	for n := range order {
+		order[n] = n
+	}
+	compare := func(a, b int) int { return slices.Compare(keys[a][:], keys[b][:]) }
+	slices.SortStableFunc(order, compare)
+	colour := make([]int, len(keys))
+	for at, n := range order {
+		if at > 0 {
+			colour[n] = colour[order[at-1]]
+			if compare(order[at-1], n) != 0 {
+				colour[n]++
+			}
+		}
+	}
+	return colour
+}
+
+// setStereo gives the view the stated stereo elements of its atoms.
+func (v *view) setStereo(g *graph, centres []Centre, bonds []StereoBond) {
+	v.centres, v.doubles = v.centres[:0], v.doubles[:0]
+	for _, c := range centres {
+		if c.Parity != 0 && v.node[c.Atom] >= 0 {
+			v.centres = append(v.centres, v.centre(c))
+		}
+	}
+	for _, b := range bonds {
+		if b.Known && v.node[b.J] >= 0 {
+			v.doubles = append(v.doubles, v.double(g, b))
+		}
+	}
+}
+
+func (v *view) side(atom int) int {
+	switch {
+	case atom == LonePair:
+		return lonePairSide
+	case v.node[atom] < 0:
+		return hydrogenSide
+	}
+	return v.node[atom]
+}
+
+func (v *view) centre(c Centre) labelledCentre {
+	l := labelledCentre{node: v.node[c.Atom], parity: c.Parity}
+	for i, j := range c.Neighbours {
+		l.neighbours[i] = v.side(j)
+	}
+	return l
+}
+
+func (v *view) double(g *graph, b StereoBond) labelledDouble {
+	l := labelledDouble{cis: b.Cis, ends: [2]int{v.node[b.J], v.node[b.K]}}
+	for end, pair := range [2][3]int{{b.J, b.K, b.A}, {b.K, b.J, b.B}} {
+		l.subs[end] = [2]int{v.side(pair[2]), lonePairSide}
+		for _, j := range g.neighbours[pair[0]] {
+			if j != pair[1] && j != pair[2] {
+				l.subs[end][1] = v.side(j)
+			}
+		}
+	}
+	return l
+}
+
+// classes returns symmetry classes of all atoms from constitution alone, as
+// dense ranks: refinement over the graph with delocalised groups merged, the
+// plain hydrogens by the class of their atom.
+func (g *graph) classes() []int {
+	all := make([]int, len(g.atoms))
+	for i := range all {
+		all[i] = i
+	}
+	v := g.view(all, true)
+	cells := v.cells()
+	class := make([]int, len(g.atoms))
+	order := slices.Clone(all)
+	for i := range g.atoms {
+		if n := v.node[i]; n >= 0 {
+			class[i] = cells[n]
+		} else {
+			class[i] = len(v.atoms) + cells[v.node[g.neighbours[i][0]]]
+		}
+	}
+	slices.SortStableFunc(order, func(a, b int) int { return cmp.Compare(class[a], class[b]) })
+	dense := make([]int, len(class))
+	for at, i := range order[min(1, len(order)):] {
+		previous := order[at]
+		dense[i] = dense[previous]
+		if class[i] != class[previous] {
+			dense[i]++
+		}
+	}
+	return dense
+}
