@@ -1,0 +1,196 @@
+package hf
+
+import (
+	"context"
+	"math"
+
+	"torsieve/internal/linalg"
+	"torsieve/internal/scf"
+)
+
+// A field is the self-consistent field problem of one molecule at one geometry:
+// closed-shell (one set of orbitals, each occupied twice) or unrestricted (two
+// sets). Its state, as internal/scf sees it, are the Fock matrices in an
+// orthonormal basis, one spin after the other; the residual their commutators
+// with the densities.
+//
+// Sources: C. C. J. Roothaan, Rev. Mod. Phys. 1951, 23, 69; J. A. Pople,
+// R. K. Nesbet, J. Chem. Phys. 1954, 22, 571.
+type field struct {
+	ctx       context.Context
+	fock      *fockBuilder
+	basis     *orthogonal
+	core      []float64 // kinetic energy and nuclear attraction
+	repulsion float64   // of the nuclei, hartree
+	occupied  []int     // orbitals of each spin
+	each      float64   // electrons in an occupied orbital: 2 closed-shell, 1
+
+	// How the next density is made; see converge.go.
+	damping float64 // share of the old density
+	shift   float64 // added to empty levels, hartree
+
+	// What the last step found.
+	parts    electronic
+	residual float64 // largest element of a commutator
+	gap      float64 // between occupied and empty levels of the given state, hartree
+
+	densities [][]float64 // by spin, one electron an orbital, n by n
+	total     []float64   // of both spins
+	projector [][]float64 // densities in the orthonormal basis
+	started   bool        // there are densities
+	coulomb   []float64
+	exchange  [][]float64
+	levels    []float64
+	z, a      []float64
+	orbitals  []float64
+	matrix    []float64
+	out       scf.Output
+	eigen     *linalg.Eigen
+	work      linalg.Workspace
+	increment *increment
+}
+
+// electronic holds the parts of the electronic energy, hartree.
+type electronic struct {
+	core, coulomb, exchange float64
+}
+
+func (e electronic) sum() float64 { return e.core + e.coulomb + e.exchange }
+
+func newField(fock *fockBuilder, basis *orthogonal, core []float64, repulsion float64, occupied []int) *field {
+	n, m := basis.n, basis.rows
+	f := &field{fock: fock, basis: basis, core: core, repulsion: repulsion, occupied: occupied, each: 1}
+	if len(occupied) == 1 {
+		f.each = 2
+	}
+	matrices := func(size int) (out [][]float64) {
+		for range occupied {
+			out = append(out, make([]float64, size))
+		}
+		return out
+	}
+	f.densities, f.exchange, f.projector = matrices(n*n), matrices(n*n), matrices(m*m)
+	f.total, f.coulomb, f.matrix = make([]float64, n*n), make([]float64, n*n), make([]float64, n*n)
+	f.levels, f.z, f.a, f.orbitals = make([]float64, m), make([]float64, m*m), make([]float64, m*m), make([]float64, m*n)
+	f.out.State, f.out.Residual = make([]float64, m*m*len(occupied)), make([]float64, m*m*len(occupied))
+	f.eigen = linalg.NewEigen(m)
+	if !fock.stored {
+		f.increment = newIncrement(n, len(occupied))
+	}
+	return f
+}
+
+// start makes the first state from the densities in f.densities.
+func (f *field) start(ctx context.Context) ([]float64, error) {
+	f.started, f.damping, f.shift = false, 0, 0
+	f.ctx = ctx
+	f.increment.forget()
+	if err := f.build(); err != nil {
+		return nil, err
+	}
+	return append([]float64(nil), f.out.State...), nil
+}
+
+// step is the scf.Step.
+func (f *field) step(in []float64) (scf.Output, error) {
+	if err := f.density(in); err != nil {
+		return scf.Output{}, err
+	}
+	if err := f.build(); err != nil {
+		return scf.Output{}, err
+	}
+	f.commutators()
+	return f.out, nil
+}
+
+// density fills the lowest levels of the state.
+func (f *field) density(in []float64) error {
+	n, m := f.basis.n, f.basis.rows
+	f.gap = math.Inf(1)
+	for s, occupied := range f.occupied {
+		p, q := f.densities[s], f.projector[s]
+		copy(f.a, in[s*m*m:(s+1)*m*m])
+		if f.started && f.shift > 0 { // empty levels move up by the shift
+			for i, v := range q {
+				f.a[i] -= f.shift * v
+			}
+			for i := range m {
+				f.a[i*m+i] += f.shift
+			}
+		}
+		if err := f.eigen.Solve(f.a, f.levels, f.z); err != nil {
+			return err
+		}
+		if occupied > 0 && occupied < m {
+			f.gap = min(f.gap, f.levels[occupied]-f.levels[occupied-1])
+		}
+		old := 0.0
+		if f.started {
+			old = f.damping
+		}
+		f.basis.orbitals(f.orbitals, f.z, occupied)
+		f.work.Gemm(true, false, n, n, occupied, 1-old, f.orbitals, n, f.orbitals, n, old, p, n)
+		f.work.Gemm(true, false, m, m, occupied, 1-old, f.z, m, f.z, m, old, q, m)
+	}
+	f.started = true
+	return nil
+}
+
+// build makes the Fock matrices and the energy of the densities.
+func (f *field) build() error {
+	m := f.basis.rows
+	clear(f.total)
+	for _, p := range f.densities {
+		for i, v := range p {
+			f.total[i] += f.each * v
+		}
+	}
+	if err := f.twoElectron(); err != nil {
+		return err
+	}
+	f.parts = electronic{core: inner(f.total, f.core), coulomb: 0.5 * inner(f.total, f.coulomb)}
+	for s, k := range f.exchange {
+		f.parts.exchange -= 0.5 * f.each * inner(f.densities[s], k)
+		for i, h := range f.core {
+			f.matrix[i] = h + f.coulomb[i] - k[i]
+		}
+		f.basis.transform(f.out.State[s*m*m:(s+1)*m*m], f.matrix)
+	}
+	f.out.Energy = f.repulsion + f.parts.sum()
+	return nil
+}
+
+// twoElectron fills f.coulomb and f.exchange. Where each build computes the
+// integrals anew, it is the change since the last build that they are for.
+func (f *field) twoElectron() error {
+	if f.increment == nil {
+		return f.fock.build(f.ctx, f.total, f.densities, f.coulomb, f.exchange)
+	}
+	return f.increment.build(f.ctx, f.fock, f.total, f.densities, f.coulomb, f.exchange)
+}
+
+// commutators writes F P - P F of each spin into the residual.
+func (f *field) commutators() {
+	m := f.basis.rows
+	f.residual = 0
+	for s, q := range f.projector {
+		f.work.Gemm(false, false, m, m, m, 1, f.out.State[s*m*m:(s+1)*m*m], m, q, m, 0, f.a, m)
+		e := f.out.Residual[s*m*m : (s+1)*m*m]
+		for i := range m {
+			e[i*m+i] = 0
+			for j := range i {
+				v := f.a[i*m+j] - f.a[j*m+i]
+				e[i*m+j], e[j*m+i] = v, -v
+				f.residual = max(f.residual, math.Abs(v))
+			}
+		}
+	}
+}
+
+func inner(x, y []float64) float64 {
+	sum := 0.0
+	for i, v := range x {
+		sum += v * y[i]
+	}
+	return sum
+}

@@ -1,0 +1,289 @@
+// Package hf is the third tier: Hartree-Fock single points in a Gaussian basis,
+// restricted or unrestricted, and the composite method HF-3c.
+//
+// A Surface is made for one molecule (atomic numbers, charge, multiplicity) and
+// gives energies, Mulliken charges and dipoles at any geometry. What it cannot
+// compute it refuses when it is made (Unsupported), before any work.
+package hf
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"strings"
+
+	"torsieve/hf/basis"
+	"torsieve/internal/element"
+	"torsieve/internal/gauss"
+	"torsieve/molecule"
+)
+
+// Options are the settings of a surface. The zero value is HF-3c.
+type Options struct {
+	// Method is "hf-3c" (Hartree-Fock in MINIX with dispersion, counterpoise
+	// and short-range terms; the default), "hf-d3" (with D3(BJ) dispersion) or
+	// "hf".
+	Method string
+	// Basis is a name that basis.Load knows. "" is MINIX for hf-3c, which has
+	// no other, and def2-SVP else.
+	Basis string
+	// Accuracy scales the convergence limits: 1, the default, ends when the
+	// energy changes by less than 1e-7 hartree and the commutator is below
+	// 1e-5. Below 1 also smaller integrals count.
+	Accuracy float64
+	// MemoryBytes bounds what the surface holds; 0 is 2 GiB. Integrals that do
+	// not fit are computed anew in each iteration.
+	MemoryBytes int64
+}
+
+const defaultMemory = 2 << 30
+
+// An Unsupported error says why a tier cannot take a molecule, in words for a
+// chemist.
+type Unsupported struct {
+	Reason string
+	Err    error // the cause, or nil; a *basis.Missing where a basis lacks an element
+}
+
+func (e *Unsupported) Error() string { return e.Reason }
+
+func (e *Unsupported) Unwrap() error { return e.Err }
+
+// A Surface is the energy of one molecule. It owns its scratch memory and
+// serves one goroutine at a time. Every call starts from the same guess, so
+// results do not depend on the order of calls.
+type Surface struct {
+	numbers  []int
+	nuclei   []float64 // charges of the nuclei
+	charge   int
+	occupied []int // orbitals of each spin; one entry: closed shell
+	accuracy float64
+	set      *basis.Set
+	shells   []gauss.Shell
+	offsets  []int
+	fock     *fockBuilder
+	terms    []term
+}
+
+// A term is an energy that depends on the positions of the nuclei alone.
+type term struct {
+	name   string
+	energy func(x []float64) float64
+}
+
+// New prepares for a molecule. Where the method, the basis, the electron count
+// or the memory does not allow it the error is *Unsupported; an unknown method
+// or basis name is a plain error.
+func New(numbers []int, charge, multiplicity int, o Options) (*Surface, error) {
+	o, set, err := o.settle()
+	if err != nil {
+		return nil, err
+	}
+	s := &Surface{numbers: numbers, charge: charge, accuracy: o.Accuracy, set: set}
+	for _, z := range numbers {
+		if z < 1 || z > element.MaxZ {
+			return nil, &Unsupported{Reason: fmt.Sprintf("there is no element number %d", z)}
+		}
+		s.nuclei = append(s.nuclei, float64(z))
+	}
+	if s.shells, err = set.Shells(numbers); err != nil {
+		return nil, &Unsupported{Reason: "Hartree-Fock: " + err.Error(), Err: err}
+	}
+	s.offsets = gauss.Offsets(s.shells)
+	if s.occupied, err = occupy(numbers, charge, multiplicity, s.offsets[len(s.shells)]); err != nil {
+		return nil, err
+	}
+	if s.terms, err = terms(numbers, o.Method, set.Name); err != nil {
+		return nil, &Unsupported{Reason: err.Error(), Err: err}
+	}
+	matrices := matrixBytes(s.offsets[len(s.shells)], len(s.occupied))
+	if matrices > o.MemoryBytes {
+		return nil, &Unsupported{Reason: fmt.Sprintf("Hartree-Fock in %s needs at least %d MB for this molecule, %d MB are allowed",
+			set.Name, matrices>>20+1, o.MemoryBytes>>20)}
+	}
+	s.fock = newFockBuilder(s.shells, o.MemoryBytes-matrices)
+	return s, nil
+}
+
+// settle fills in defaults and loads the basis.
+func (o Options) settle() (Options, *basis.Set, error) {
+	o.Method = strings.ToLower(o.Method)
+	if o.Method == "" {
+		o.Method = "hf-3c"
+	}
+	switch o.Method {
+	case "hf-3c":
+		if o.Basis == "" {
+			o.Basis = "MINIX"
+		}
+	case "hf-d3", "hf":
+		if o.Basis == "" {
+			o.Basis = "def2-SVP"
+		}
+	default:
+		return o, nil, fmt.Errorf("hf: no method %q; there are hf-3c, hf-d3 and hf", o.Method)
+	}
+	set, err := basis.Load(o.Basis)
+	if err != nil {
+		return o, nil, fmt.Errorf("hf: %w", err)
+	}
+	if o.Method == "hf-3c" && set.Name != "MINIX" {
+		return o, nil, fmt.Errorf("hf: hf-3c is defined in MINIX only, not in %s", set.Name)
+	}
+	if o.Accuracy == 0 {
+		o.Accuracy = 1
+	}
+	if !(o.Accuracy > 0) || math.IsInf(o.Accuracy, 0) {
+		return o, nil, fmt.Errorf("hf: accuracy: want a number above 0, have %g", o.Accuracy)
+	}
+	if o.MemoryBytes == 0 {
+		o.MemoryBytes = defaultMemory
+	}
+	return o, set, nil
+}
+
+// occupy deals the electrons out to the spins.
+func occupy(numbers []int, charge, multiplicity, functions int) ([]int, error) {
+	electrons := -charge
+	for _, z := range numbers {
+		electrons += z
+	}
+	refuse := func(format string, args ...any) error {
+		return &Unsupported{Reason: fmt.Sprintf(format, args...)}
+	}
+	unpaired := multiplicity - 1
+	switch {
+	case electrons < 1:
+		return nil, refuse("Hartree-Fock needs electrons; this molecule has none at charge %+d", charge)
+	case multiplicity < 1 || unpaired > electrons:
+		return nil, refuse("multiplicity %d does not fit %d electrons", multiplicity, electrons)
+	case multiplicity == 1 && electrons%2 == 1:
+		return nil, refuse("closed-shell Hartree-Fock needs an even number of electrons; this molecule has %d at charge %+d", electrons, charge)
+	case (electrons-unpaired)%2 == 1:
+		return nil, refuse("multiplicity %d does not fit %d electrons (charge %+d): one of them is even, or both are odd", multiplicity, electrons, charge)
+	}
+	down := (electrons - unpaired) / 2
+	up := electrons - down
+	if up > functions {
+		return nil, refuse("%d electrons of one spin do not fit the %d functions of the basis", up, functions)
+	}
+	if unpaired == 0 {
+		return []int{up}, nil
+	}
+	return []int{up, down}, nil
+}
+
+// Reset forgets the state of earlier calls; there is none to forget.
+func (s *Surface) Reset() {}
+
+// A TooClose error says that two atoms sit on one another.
+type TooClose struct {
+	A, B     int     // atoms, from 0
+	Distance float64 // bohr
+}
+
+func (e *TooClose) Error() string {
+	return fmt.Sprintf("atoms %d and %d are %.3f bohr apart: they sit on one another", e.A+1, e.B+1, e.Distance)
+}
+
+// closest is the distance in bohr under which atoms count as one on another; the
+// shortest bonds, to hydrogen, have 1.4.
+const closest = 0.5
+
+// repulsion returns the energy of the nuclei among themselves, or an error where
+// x is not a geometry.
+func (s *Surface) repulsion(x []float64) (float64, error) {
+	if len(x) != 3*len(s.numbers) {
+		panic("hf: coordinates for another number of atoms")
+	}
+	for i, v := range x {
+		if math.IsNaN(v) || math.IsInf(v, 0) {
+			return 0, fmt.Errorf("hf: coordinate %g of atom %d is not finite", v, i/3+1)
+		}
+	}
+	sum := 0.0
+	for a, za := range s.nuclei {
+		for b, zb := range s.nuclei[:a] {
+			r := math.Hypot(math.Hypot(x[3*a]-x[3*b], x[3*a+1]-x[3*b+1]), x[3*a+2]-x[3*b+2])
+			if r < closest {
+				return 0, &TooClose{A: b, B: a, Distance: r}
+			}
+			sum += za * zb / r
+		}
+	}
+	return sum, nil
+}
+
+// Energy returns the energy at x (3N, bohr) with its parts, Mulliken charges and
+// the dipole moment: of an ion about its centre of mass, which a warning says.
+// Errors: *NotConverged, *TooClose, coordinates that are not finite, and ctx's.
+func (s *Surface) Energy(ctx context.Context, x []float64) (molecule.Point, error) {
+	repulsion, err := s.repulsion(x)
+	if err != nil {
+		return molecule.Point{}, err
+	}
+	r, err := s.solve(ctx, x, repulsion)
+	if err != nil {
+		return molecule.Point{}, err
+	}
+	f := r.field
+	kinetic := inner(f.total, r.one.Kinetic)
+	p := molecule.Point{
+		Iterations: r.iterations,
+		Charges:    s.mulliken(f.total, r.one.Overlap),
+		Dipole:     s.dipole(f.total, r.one.Dipole, x),
+		Warnings:   s.doubts(r, kinetic),
+		Parts: []molecule.Part{
+			{Name: "nuclear repulsion", Energy: repulsion},
+			{Name: "kinetic", Energy: kinetic},
+			{Name: "nuclear attraction", Energy: f.parts.core - kinetic},
+			{Name: "coulomb", Energy: f.parts.coulomb},
+			{Name: "exchange", Energy: f.parts.exchange},
+		},
+	}
+	for _, t := range s.terms {
+		p.Parts = append(p.Parts, molecule.Part{Name: t.name, Energy: t.energy(x)})
+	}
+	for _, part := range p.Parts {
+		p.Energy += part.Energy
+	}
+	return p, nil
+}
+
+// A result is a converged field and what it was made from.
+type result struct {
+	field      *field
+	one        *gauss.OneElectron
+	basis      *orthogonal
+	iterations int
+}
+
+// integralCut is the size of integrals, in hartree, that are left out at
+// accuracy 1.
+const integralCut = 1e-10
+
+func (s *Surface) solve(ctx context.Context, x []float64, repulsion float64) (*result, error) {
+	r := &result{one: gauss.NewOneElectron(s.shells, x)}
+	n := s.fock.n
+	var err error
+	if r.basis, err = newOrthogonal(r.one.Overlap, n); err != nil {
+		return nil, err
+	}
+	core := make([]float64, n*n)
+	if err := gauss.Nuclear(ctx, core, s.shells, x, x, s.nuclei); err != nil {
+		return nil, err
+	}
+	for i, t := range r.one.Kinetic {
+		core[i] += t
+	}
+	if err := s.fock.place(ctx, x, integralCut*min(1, max(s.accuracy, 1e-2))); err != nil {
+		return nil, err
+	}
+	start, err := s.atoms()
+	if err != nil {
+		return nil, err
+	}
+	r.field = newField(s.fock, r.basis, core, repulsion, s.occupied)
+	r.iterations, err = r.field.converge(ctx, s.accuracy, func() { r.field.guess(start) })
+	return r, err
+}
