@@ -6,12 +6,11 @@ import "slices"
 // bridges listed in the same order, one sees them clockwise where the other
 // sees them anticlockwise.
 type tie struct {
-	a, b           int
-	bridgeA        [3]int // the neighbours of a on the three bridges
-	bridgeB        [3]int
-	lengths        [3]int // atoms on each bridge, ascending
-	outA, outB     int    // fourth neighbours, LonePair where there is none
-	hasOutA, outOK bool
+	a, b       int
+	bridgeA    [3]int // the neighbours of a on the three bridges
+	bridgeB    [3]int
+	lengths    [3]int // atoms on each bridge, ascending
+	outA, outB int    // fourth neighbours, LonePair where there is none
 }
 
 // Sizes up to which bridgeheads have only one arrangement (own choice, from

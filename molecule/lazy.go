@@ -26,5 +26,8 @@ type lazy struct {
 
 func newMolecule(g *graph, centres []Centre, bonds []StereoBond) *Molecule {
 	m := &Molecule{graph: g, centres: centres, stereoBonds: bonds}
+	m.lazy.smiles = sync.OnceValue(m.writeSMILES)
+	m.lazy.chiral = sync.OnceValue(m.findChirality)
+	m.lazy.rotors = sync.OnceValue(m.findRotors)
 	return m
 }

@@ -54,7 +54,8 @@ type Rotor struct {
 	Counted   bool  // counts as a rotatable bond in the usual sense (see RotatableBonds)
 	PeriodJ   int   // order of the graph symmetry of J's end about the bond (methyl 3, phenyl 2, else 1)
 	PeriodK   int   // likewise for K's end
-	AmideLike bool  // C-N of an amide, thioamide, urea, carbamate, amidine or guanidine
+	Idle      bool  // an end is methyl, NH3+, CF3, t-butyl or the like: one staggered state, no other conformer
+	AmideLike bool  // two planar states: C-N of an amide, thioamide, urea, carbamate, amidine or guanidine
 }
 
 // A Molecule is a perceived graph. It is made by a Builder, does not change

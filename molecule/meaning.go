@@ -1,0 +1,378 @@
+package molecule
+
+import (
+	"fmt"
+	"slices"
+)
+
+// A stereoSearch decides which candidates are stereo elements and which
+// statements about them mean anything.
+//
+// A statement means something if no symmetry of the graph with all the other
+// statements leaves the element in place and inverts it. That covers centres
+// with four different neighbours, centres that are only relative to others in a
+// ring, and centres between branches that differ in configuration alone.
+// Bridgeheads of small cages invert together or not at all (cage.go).
+type stereoSearch struct {
+	g        *graph
+	centres  []Centre
+	bonds    []StereoBond
+	group    []int     // by centre: first centre of the cage group
+	relative []Parity  // by centre: parity where the group's first has +1
+	views    []*view   // by fragment
+	fragment []int     // by atom
+	sure     [2][]bool // by centre, by bond: different neighbours in any case
+	work     int       // nodes ranked so far
+	warnings []string
+}
+
+// maxStereoWork bounds the time spent on elements whose neighbours are alike,
+// in nodes ranked; those beyond are taken for none.
+const maxStereoWork = 400_000
+
+// stereoTrials is the number of arrangements of all candidates in which an
+// element that is not stated may show that it matters.
+const stereoTrials = 12
+
+func (s *stereoSearch) run() {
+	if len(s.centres)+len(s.bonds) == 0 {
+		return
+	}
+	s.prepare()
+	s.dropHopeless()
+	s.findGroups()
+	s.dropMeaningless()
+	keepCentre, keepBond := s.findOpen()
+	s.centres = filter(s.centres, keepCentre)
+	s.bonds = filter(s.bonds, keepBond)
+	if s.work > maxStereoWork {
+		s.warnings = append(s.warnings, "too many symmetric stereo elements to tell all apart: those left out are taken for none")
+	}
+}
+
+func filter[E any](list []E, keep []bool) []E {
+	var kept []E
+	for i, e := range list {
+		if keep[i] {
+			kept = append(kept, e)
+		}
+	}
+	return kept
+}
+
+// prepare makes the views and finds the elements that are sure.
+func (s *stereoSearch) prepare() {
+	g := s.g
+	class := g.shared.classes()
+	s.fragment = make([]int, len(g.atoms))
+	s.views = make([]*view, len(g.fragments))
+	for f, atoms := range g.fragments {
+		for _, i := range atoms {
+			s.fragment[i] = f
+		}
+	}
+	s.sure[0] = make([]bool, len(s.centres))
+	for n, c := range s.centres {
+		s.sure[0][n] = allDifferent(class, c.Neighbours[:])
+	}
+	s.sure[1] = make([]bool, len(s.bonds))
+	for n, b := range s.bonds {
+		s.sure[1][n] = allDifferent(class, g.substituents(b.J, b.K)) && allDifferent(class, g.substituents(b.K, b.J))
+	}
+}
+
+// substituents returns the neighbours of end i of a double bond to j.
+func (g *graph) substituents(i, j int) []int {
+	var list []int
+	for _, n := range g.neighbours[i] {
+		if n != j {
+			list = append(list, n)
+		}
+	}
+	return list
+}
+
+func allDifferent(class []int, atoms []int) bool {
+	for n, i := range atoms {
+		for _, j := range atoms[:n] {
+			if i >= 0 && j >= 0 && class[i] == class[j] {
+				return false
+			}
+		}
+	}
+	return true
+}
+
+// dropHopeless removes the candidates with two like neighbours on branches that
+// hold no other candidate and lead nowhere else: such branches stay alike.
+func (s *stereoSearch) dropHopeless() {
+	g, class := s.g, s.g.shared.classes()
+	plain := func(i int, list []int) bool {
+		for n, a := range list {
+			for _, b := range list[:n] {
+				if a < 0 || b < 0 || class[a] != class[b] {
+					continue
+				}
+				if k, _ := g.bondBetween(i, a); !g.inRing[k] && s.isPlainBranch(i, a) {
+					return true
+				}
+			}
+		}
+		return false
+	}
+	for changed := true; changed; {
+		keepC, keepB := make([]bool, len(s.centres)), make([]bool, len(s.bonds))
+		for n, c := range s.centres {
+			keepC[n] = s.sure[0][n] || !plain(c.Atom, c.Neighbours[:])
+		}
+		for n, b := range s.bonds {
+			keepB[n] = s.sure[1][n] || !plain(b.J, g.substituents(b.J, b.K)) && !plain(b.K, g.substituents(b.K, b.J))
+		}
+		before := len(s.centres) + len(s.bonds)
+		s.centres, s.sure[0] = filter(s.centres, keepC), filter(s.sure[0], keepC)
+		s.bonds, s.sure[1] = filter(s.bonds, keepB), filter(s.sure[1], keepB)
+		changed = len(s.centres)+len(s.bonds) < before
+	}
+}
+
+// isPlainBranch says whether the branch that begins with atom a, seen from i,
+// holds no candidate. Branches of more than a few atoms are left to the slower
+// test.
+func (s *stereoSearch) isPlainBranch(i, a int) bool {
+	const most = 40
+	seen := []int{i, a}
+	for at := 1; at < len(seen); at++ {
+		for _, j := range s.g.neighbours[seen[at]] {
+			if !slices.Contains(seen, j) {
+				seen = append(seen, j)
+			}
+		}
+		if len(seen) > most {
+			return false
+		}
+	}
+	for _, c := range s.centres {
+		if c.Atom != i && slices.Contains(seen, c.Atom) {
+			return false
+		}
+	}
+	for _, b := range s.bonds {
+		if slices.Contains(seen[1:], b.J) || slices.Contains(seen[1:], b.K) {
+			return false
+		}
+	}
+	return true
+}
+
+// findGroups couples the bridgeheads that small cages tie together.
+func (s *stereoSearch) findGroups() {
+	s.group, s.relative = make([]int, len(s.centres)), make([]Parity, len(s.centres))
+	index := map[int]int{}
+	for n, c := range s.centres {
+		s.group[n], s.relative[n] = n, 1
+		index[c.Atom] = n
+	}
+	for n, c := range s.centres {
+		if s.g.ringDegree(c.Atom) < 3 {
+			continue
+		}
+		for _, j := range s.g.nearbyBridgeheads(c.Atom) {
+			m, ok := index[j]
+			if !ok || m <= n {
+				continue
+			}
+			if t, ok := s.g.tieBetween(c.Atom, j); ok {
+				s.couple(n, m, t.relation(c.Neighbours, s.centres[m].Neighbours))
+			}
+		}
+	}
+	s.checkTies()
+}
+
+// couple joins the groups of two centres whose parities have a given product.
+func (s *stereoSearch) couple(n, m int, product Parity) {
+	if product == 0 || s.group[n] == s.group[m] {
+		return
+	}
+	turn := s.relative[n] * s.relative[m] * product
+	old, now := max(s.group[n], s.group[m]), min(s.group[n], s.group[m])
+	for i, g := range s.group {
+		if g == old {
+			s.group[i] = now
+			s.relative[i] *= turn
+		}
+	}
+}
+
+// checkTies warns of stated configurations that a cage cannot have.
+func (s *stereoSearch) checkTies() {
+	for n, c := range s.centres {
+		for m, d := range s.centres[:n] {
+			if s.group[n] == s.group[m] && c.Parity*d.Parity == -s.relative[n]*s.relative[m] {
+				s.warnings = append(s.warnings, fmt.Sprintf("the stated configurations of %s and %s do not fit into one small cage",
+					s.g.centreText(d), s.g.centreText(c)))
+			}
+		}
+	}
+}
+
+// dropMeaningless takes back statements that mean nothing beside the others.
+func (s *stereoSearch) dropMeaningless() {
+	for changed := true; changed; {
+		changed = false
+		var emptyC, emptyB []int
+		for n := range s.centres {
+			if s.group[n] == n && s.doubtful(n) && !s.centreMatters(n, s.centres, s.bonds) {
+				emptyC = append(emptyC, n)
+			}
+		}
+		for n, b := range s.bonds {
+			if b.Known && !s.sure[1][n] && !s.bondMatters(n, s.centres, s.bonds) {
+				emptyB = append(emptyB, n)
+			}
+		}
+		for _, first := range emptyC {
+			for n := range s.centres {
+				if s.group[n] == first {
+					s.centres[n].Parity = 0
+					changed = true
+				}
+			}
+		}
+		for _, n := range emptyB {
+			s.bonds[n].Known, changed = false, true
+		}
+	}
+}
+
+// doubtful says whether something is stated of the cage group whose first
+// centre is n, and no member has four different neighbours.
+func (s *stereoSearch) doubtful(n int) bool {
+	stated := false
+	for m, c := range s.centres {
+		if s.group[m] == n {
+			stated = stated || c.Parity != 0
+			if s.sure[0][m] {
+				return false
+			}
+		}
+	}
+	return stated
+}
+
+// findOpen says which candidates are elements: those that are stated still, the
+// sure ones, and those that matter in one of several arrangements of all that
+// is not stated.
+func (s *stereoSearch) findOpen() (centres, bonds []bool) {
+	centres, bonds = make([]bool, len(s.centres)), make([]bool, len(s.bonds))
+	for n, c := range s.centres {
+		centres[n] = s.sure[0][n] || c.Parity != 0
+	}
+	for n, b := range s.bonds {
+		bonds[n] = s.sure[1][n] || b.Known
+	}
+	for trial := range stereoTrials {
+		cs, bs := s.arrangement(trial)
+		open := false
+		for n := range s.centres {
+			if first := s.group[n]; !centres[n] {
+				if first == n || centres[first] {
+					centres[n] = centres[first] || s.centreMatters(n, cs, bs)
+				}
+				open = open || !centres[n]
+			}
+		}
+		for n := range s.bonds {
+			if !bonds[n] {
+				bonds[n] = s.bondMatters(n, cs, bs)
+				open = open || !bonds[n]
+			}
+		}
+		if !open || s.work > maxStereoWork {
+			break
+		}
+	}
+	return centres, bonds
+}
+
+// arrangement states all elements: those that are stated as they are, the
+// others by a fixed pseudo-random rule, cages consistently.
+func (s *stereoSearch) arrangement(trial int) ([]Centre, []StereoBond) {
+	cs, bs := slices.Clone(s.centres), slices.Clone(s.bonds)
+	base := map[int]Parity{}
+	for n, c := range cs {
+		if c.Parity != 0 {
+			base[s.group[n]] = c.Parity * s.relative[n]
+		}
+	}
+	for n := range cs {
+		if cs[n].Parity != 0 {
+			continue
+		}
+		sign, ok := base[s.group[n]]
+		if !ok {
+			sign = 1 - 2*Parity(scramble(trial, s.group[n])&1)
+		}
+		cs[n].Parity = sign * s.relative[n]
+	}
+	for n := range bs {
+		if !bs[n].Known {
+			bs[n].Known, bs[n].Cis = true, scramble(trial, len(cs)+n)&1 == 0
+		}
+	}
+	return cs, bs
+}
+
+// scramble mixes two small numbers into a well-spread one (the finaliser of
+// S. Vigna's splitmix64, after G. L. Steele et al., OOPSLA 2014).
+func scramble(a, b int) uint64 {
+	x := uint64(a)<<32 + uint64(b) + 0x9e3779b97f4a7c15
+	x = (x ^ x>>30) * 0xbf58476d1ce4e5b9
+	x = (x ^ x>>27) * 0x94d049bb133111eb
+	return (x ^ x>>31) >> 7
+}
+
+// centreMatters says whether inverting centre n, and with it the centres that
+// its cage ties to it, gives something different while they stay in place.
+func (s *stereoSearch) centreMatters(n int, cs []Centre, bs []StereoBond) bool {
+	v := s.fragmentView(s.fragment[cs[n].Atom])
+	inverted := slices.Clone(cs)
+	var held []int
+	for m := range cs {
+		if s.group[m] == s.group[n] {
+			inverted[m].Parity = -cs[m].Parity
+			held = append(held, v.node[cs[m].Atom])
+		}
+	}
+	return s.differ(v, held, cs, bs, inverted, bs)
+}
+
+func (s *stereoSearch) bondMatters(n int, cs []Centre, bs []StereoBond) bool {
+	v := s.fragmentView(s.fragment[bs[n].J])
+	inverted := slices.Clone(bs)
+	inverted[n].Cis = !bs[n].Cis
+	return s.differ(v, []int{v.node[bs[n].J], v.node[bs[n].K]}, cs, bs, cs, inverted)
+}
+
+func (s *stereoSearch) fragmentView(f int) *view {
+	if s.views[f] == nil {
+		s.views[f] = s.g.view(s.g.fragments[f], true)
+	}
+	return s.views[f]
+}
+
+// differ compares two sets of statements with some nodes held in place.
+func (s *stereoSearch) differ(v *view, held []int, c1 []Centre, b1 []StereoBond, c2 []Centre, b2 []StereoBond) bool {
+	if s.work > maxStereoWork {
+		return false
+	}
+	s.work += 2 * len(v.atoms)
+	l := &view{labelled: labelled{colour: slices.Clone(v.colour), arcs: v.arcs}, atoms: v.atoms, node: v.node}
+	for _, n := range held {
+		l.colour[n] = len(v.atoms) // of a cage group only the whole stays in place
+	}
+	l.setStereo(s.g, c1, b1)
+	first := l.canonical()
+	l.setStereo(s.g, c2, b2)
+	return !slices.Equal(first.certificate, l.canonical().certificate)
+}
