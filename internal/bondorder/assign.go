@@ -2,6 +2,7 @@ package bondorder
 
 import (
 	"fmt"
+	"math"
 	"slices"
 )
 
@@ -21,15 +22,18 @@ func Assign(numbers []int, x []float64, charge, unpaired int) (Result, error) {
 	if err != nil {
 		return Result{}, err
 	}
-	degree := make([]int, len(numbers))
+	neighbours := make([][]int, len(numbers))
 	for _, b := range bonds {
-		degree[b.A]++
-		degree[b.B]++
+		neighbours[b.A] = append(neighbours[b.A], b.B)
+		neighbours[b.B] = append(neighbours[b.B], b.A)
 	}
 	choices := make([][]state, len(numbers))
 	most := make([]int, len(numbers))
 	for i, z := range numbers {
-		choices[i] = states(z, degree[i])
+		choices[i] = states(z, len(neighbours[i]))
+		if z < 10 && isBent(x, i, neighbours[i]) {
+			penaliseBent(choices[i])
+		}
 		for _, s := range choices[i] {
 			most[i] = max(most[i], s.pi)
 		}
@@ -38,7 +42,7 @@ func Assign(numbers []int, x []float64, charge, unpaired int) (Result, error) {
 	for _, p := range pieces(len(numbers), bonds, most) {
 		options := solve(p, bonds, choices, most)
 		if len(options) == 0 {
-			return Result{}, fmt.Errorf("atom %d has %d neighbours: no valence that it may have fits", p.atoms[0]+1, degree[p.atoms[0]])
+			return Result{}, fmt.Errorf("atom %d has %d neighbours: no valence that it may have fits", p.atoms[0]+1, len(neighbours[p.atoms[0]]))
 		}
 		solved = append(solved, options)
 	}
@@ -51,6 +55,20 @@ func Assign(numbers []int, x []float64, charge, unpaired int) (Result, error) {
 		return Result{}, fmt.Errorf("no bond orders and formal charges fit a total charge of %+d%s", charge, want)
 	}
 	return result(last, bonds, len(numbers)), nil
+}
+
+// isBent says whether atom i has two neighbours at an angle below bent.
+func isBent(x []float64, i int, neighbours []int) bool {
+	if len(neighbours) != 2 {
+		return false
+	}
+	a, b := neighbours[0], neighbours[1]
+	var dot float64
+	for k := range 3 {
+		dot += (x[3*a+k] - x[3*i+k]) * (x[3*b+k] - x[3*i+k])
+	}
+	cosine := dot / (distance(x, i, a) * distance(x, i, b))
+	return cosine > math.Cos(bent*math.Pi/180)
 }
 
 // A total is a choice for all pieces up to one.

@@ -20,9 +20,10 @@ import (
 
 // A Bond joins atoms A < B.
 type Bond struct {
-	A, B  int
-	Order int
-	ratio float64 // length over the sum of covalent radii
+	A, B   int
+	Order  int
+	ratio  float64 // length over the sum of covalent radii
+	inRing bool    // of five or six atoms
 }
 
 const (
@@ -77,6 +78,10 @@ func Connect(numbers []int, x []float64) ([]Bond, error) {
 		bonds = append(bonds, b)
 	}
 	slices.SortFunc(bonds, func(a, b Bond) int { return cmp.Or(a.A-b.A, a.B-b.B) })
+	for k, b := range bonds {
+		back := stepsBack(b, neighbours)
+		bonds[k].inRing = back == 4 || back == 5
+	}
 	return bonds, nil
 }
 
@@ -127,4 +132,28 @@ func maxDegree(z int) int {
 		return 12
 	}
 	return 6
+}
+
+// stepsBack returns over how many other bonds one end of a bond is reached from
+// the other, or 0 if it takes more than five.
+func stepsBack(b Bond, neighbours [][]int) int {
+	seen := map[int]bool{b.A: true}
+	front := []int{b.A}
+	for steps := 1; steps <= 5; steps++ {
+		var next []int
+		for _, i := range front {
+			for _, j := range neighbours[i] {
+				if seen[j] || i == b.A && j == b.B {
+					continue
+				}
+				if j == b.B {
+					return steps
+				}
+				seen[j] = true
+				next = append(next, j)
+			}
+		}
+		front = next
+	}
+	return 0
 }

@@ -23,11 +23,16 @@ const (
 	costBeyond     = 0.25
 	costLoneBeyond = 2.0 // beyond the octet with a lone pair, as in SF4
 	costSecond     = 4.0 // for a second charge on one atom
+	costBent       = 8.0 // two double bonds or a triple bond at a bent atom
 	maxUnpaired    = 2
 )
 
+// bent is the angle in degrees below which an atom with two neighbours is none
+// of an allene or alkyne; those of rings are bent to 140 at times.
+const bent = 135
+
 // costNegative and costPositive are those of one charge.
-var costNegative = map[int]float64{5: 0.5, 6: 6, 7: 2.5, 8: 1.5, 9: 1, 14: 6, 15: 4, 16: 1.5, 17: 1, 34: 1.5, 35: 1, 53: 1}
+var costNegative = map[int]float64{5: 0.5, 6: 6, 7: 2, 8: 1.5, 9: 1, 14: 6, 15: 4, 16: 1.5, 17: 1, 34: 1.5, 35: 1, 53: 1}
 var costPositive = map[int]float64{1: 3, 6: 3, 7: 2.5, 8: 4.5, 9: 9, 14: 3, 15: 1.5, 16: 2.5, 17: 5, 34: 2.5, 35: 4, 53: 3}
 
 const costOther = 4.0
@@ -86,7 +91,7 @@ func pairCost(z, pairs int) (float64, bool) {
 		return 0, true // a proton; boron with three bonds
 	case pairs <= octet:
 		return costDeficiency * float64(octet-pairs), true
-	case element.Period(z) >= 3 && pairs <= 6 || z == 53 && pairs == 7:
+	case element.Period(z) >= 3 && pairs <= 6 || element.Group(z) == 17 && z > 9 && pairs == 7:
 		return costBeyond * float64(pairs-octet), true
 	}
 	return 0, false
@@ -132,10 +137,18 @@ func metalStates(z, degree int) []state {
 // lengths of C-C, C-N, C-O, N-N and S-O bonds (each within 0.03).
 var orderRatio = [3]float64{1, 0.87, 0.79}
 
-// lengthCost says how badly a bond of the given length ratio fits an order.
-func lengthCost(ratio float64, pi int) float64 {
-	off := (ratio - orderRatio[pi]) / 0.06
-	return min(0.3*off*off, 1.5)
+// ringBonus is what a pi bond inside of a five- or six-membered ring is worth:
+// of two resonance forms, that with the aromatic ring is drawn.
+const ringBonus = 1.0
+
+// bondCost says how badly a bond's length fits an order, less the bonus.
+func bondCost(b Bond, pi int) float64 {
+	off := (b.ratio - orderRatio[pi]) / 0.06
+	cost := min(0.3*off*off, 1.5)
+	if b.inRing {
+		cost -= ringBonus * float64(pi)
+	}
+	return cost
 }
 
 // maxPi is the largest number of pi bonds for a length ratio.
@@ -147,4 +160,14 @@ func maxPi(ratio float64) int {
 		return 1
 	}
 	return 0
+}
+
+// penaliseBent adds the cost of two pi bonds at an atom whose two neighbours
+// stand at an angle.
+func penaliseBent(list []state) {
+	for n := range list {
+		if list[n].pi == 2 {
+			list[n].cost += costBent
+		}
+	}
 }

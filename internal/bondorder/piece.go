@@ -137,7 +137,7 @@ func decideBond(have []partial, k int, b Bond, at, other, most1, most2 int) []pa
 				n.open[at] += pi
 				n.open[other] += pi
 			}
-			n.cost += lengthCost(b.ratio, pi)
+			n.cost += bondCost(b, pi)
 			n.trail = &decision{bond: k, pi: pi, atom: -1, before: h.trail}
 			next.add(n)
 		}

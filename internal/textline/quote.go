@@ -50,6 +50,16 @@ func Clean(s string) string {
 	return strings.TrimSpace(b.String())
 }
 
+// Short returns s cleaned and cut off with dots if it is long: a name for a
+// message.
+func Short(s string) string {
+	s = Clean(s)
+	if utf8.RuneCountInString(s) <= quoted {
+		return s
+	}
+	return string([]rune(s)[:quoted]) + "..."
+}
+
 func plain(s string) bool {
 	for i := range len(s) {
 		if s[i] < ' ' || s[i] > '~' {

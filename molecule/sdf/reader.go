@@ -242,8 +242,6 @@ func (r *Reader) failed(rec Record, err error) Record {
 	var f *fault
 	if errors.As(err, &f) {
 		p.Line = f.line
-	} else {
-		p.Msg, p.Err = "", err
 	}
 	if strings.HasPrefix(p.Msg, "not an SDF") {
 		p.ID = "" // whatever stands there is no title
