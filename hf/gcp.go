@@ -47,7 +47,7 @@ var gcpTables = sync.OnceValues(func() (*gcpTable, error) {
 // functions.
 //
 // Source: H. Kruse, S. Grimme, J. Chem. Phys. 2012, 136, 154101,
-// doi:10.1063/1.3700154, eqs. 3 to 6.
+// doi:10.1063/1.3700154.
 type gcp struct {
 	params gcpParams
 	shell  []int     // principal quantum number of each atom's Slater function

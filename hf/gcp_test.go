@@ -67,7 +67,7 @@ func correctionCases(t *testing.T) []correctionCase {
 }
 
 // decodeFile reads a JSON file, which may be compressed.
-func decodeFile(t *testing.T, path string, into any) {
+func decodeFile(t testing.TB, path string, into any) {
 	t.Helper()
 	f, err := os.Open(path)
 	if err != nil {

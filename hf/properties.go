@@ -51,8 +51,8 @@ func (s *Surface) doubts(r *result, kinetic float64) []string {
 	if f.gap < 0.05 {
 		out = append(out, fmt.Sprintf("the gap between occupied and empty orbitals is only %.3f hartree: other states may lie near", f.gap))
 	}
-	if left := r.basis.n - r.basis.rows; left > 0 {
-		out = append(out, fmt.Sprintf("%d functions of the basis are linearly dependent and were left out (smallest overlap eigenvalue %.1e)", left, r.basis.smallest))
+	if left := f.basis.n - f.basis.rows; left > 0 {
+		out = append(out, fmt.Sprintf("%d functions of the basis are linearly dependent and were left out (smallest overlap eigenvalue %.1e)", left, f.basis.smallest))
 	}
 	total := f.repulsion + f.parts.sum()
 	if ratio := (kinetic - total) / kinetic; ratio < 1.9 || ratio > 2.1 {

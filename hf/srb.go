@@ -43,7 +43,7 @@ var pairRadii = sync.OnceValues(func() ([][]float64, error) {
 // what the small basis makes bonds of light elements too long.
 //
 // Source: R. Sure, S. Grimme, J. Comput. Chem. 2013, 34, 1672,
-// doi:10.1002/jcc.23317, eq. 7. Pairs with an element beyond argon have no
+// doi:10.1002/jcc.23317. Pairs with an element beyond argon have no
 // such term, as in the authors' program.
 type srb struct {
 	scale []float64 // hartree, one a pair (a, b < a)

@@ -254,7 +254,6 @@ func (s *Surface) Energy(ctx context.Context, x []float64) (molecule.Point, erro
 type result struct {
 	field      *field
 	one        *gauss.OneElectron
-	basis      *orthogonal
 	iterations int
 }
 
@@ -263,27 +262,36 @@ type result struct {
 const integralCut = 1e-10
 
 func (s *Surface) solve(ctx context.Context, x []float64, repulsion float64) (*result, error) {
-	r := &result{one: gauss.NewOneElectron(s.shells, x)}
-	n := s.fock.n
-	var err error
-	if r.basis, err = newOrthogonal(r.one.Overlap, n); err != nil {
-		return nil, err
-	}
-	core := make([]float64, n*n)
-	if err := gauss.Nuclear(ctx, core, s.shells, x, x, s.nuclei); err != nil {
-		return nil, err
-	}
-	for i, t := range r.one.Kinetic {
-		core[i] += t
-	}
-	if err := s.fock.place(ctx, x, integralCut*min(1, max(s.accuracy, 1e-2))); err != nil {
+	f, one, err := s.prepare(ctx, x, repulsion)
+	if err != nil {
 		return nil, err
 	}
 	start, err := s.atoms()
 	if err != nil {
 		return nil, err
 	}
-	r.field = newField(s.fock, r.basis, core, repulsion, s.occupied)
-	r.iterations, err = r.field.converge(ctx, s.accuracy, func() { r.field.guess(start) })
+	r := &result{field: f, one: one}
+	r.iterations, err = f.converge(ctx, s.accuracy, func() { f.guess(start) })
 	return r, err
+}
+
+// prepare computes the integrals at x.
+func (s *Surface) prepare(ctx context.Context, x []float64, repulsion float64) (*field, *gauss.OneElectron, error) {
+	one := gauss.NewOneElectron(s.shells, x)
+	n := s.fock.n
+	orthogonal, err := newOrthogonal(one.Overlap, n)
+	if err != nil {
+		return nil, nil, err
+	}
+	core := make([]float64, n*n)
+	if err := gauss.Nuclear(ctx, core, s.shells, x, x, s.nuclei); err != nil {
+		return nil, nil, err
+	}
+	for i, t := range one.Kinetic {
+		core[i] += t
+	}
+	if err := s.fock.place(ctx, x, integralCut*min(1, max(s.accuracy, 1e-2))); err != nil {
+		return nil, nil, err
+	}
+	return newField(s.fock, orthogonal, core, repulsion, s.occupied), one, nil
 }
