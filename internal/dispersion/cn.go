@@ -13,7 +13,7 @@ type coordination struct {
 	slope  []float64 // d count / d distance of the last update, one a pair
 }
 
-// newD3Coordination counts as D3 does (J. Chem. Phys. 2010, 132, 154104, eq. 15).
+// newD3Coordination counts as D3 does (J. Chem. Phys. 2010, 132, 154104).
 func newD3Coordination(numbers []int) *coordination {
 	return newCoordination(numbers, expCount, 40, plainWeight)
 }

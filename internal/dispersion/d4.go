@@ -49,7 +49,7 @@ type d4Flavour struct {
 const switchWidth = 0.05
 
 // gfn2Flavour belongs to GFN2-xTB (C. Bannwarth, S. Ehlert, S. Grimme, J. Chem.
-// Theory Comput. 2019, 15, 1652, Table 3).
+// Theory Comput. 2019, 15, 1652).
 var gfn2Flavour = d4Flavour{
 	params:  D3Params{S6: 1, S8: 2.7, A1: 0.52, A2: 5.0},
 	s9:      5,

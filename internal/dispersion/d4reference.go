@@ -111,7 +111,7 @@ func (t *d4Reference) polarizability(s *d4System, m chargeModel) []float64 {
 // polarizability when its charge (plus the effective nuclear charge) is q
 // instead of ref, and its derivative with respect to q.
 //
-// Source: J. Chem. Phys. 2019, 150, 154122, eq. 2.
+// Source: J. Chem. Phys. 2019, 150, 154122.
 func (t *d4Reference) chargeScale(hardness, ref, q float64) (zeta, slope float64) {
 	if q <= 0 {
 		return math.Exp(t.Constants.Height), 0

@@ -9,7 +9,7 @@ import "math"
 //
 // q being C8/C6. Source of the form: A. D. Becke, E. R. Johnson, J. Chem. Phys.
 // 2005, 123, 154101; S. Grimme, S. Ehrlich, L. Goerigk, J. Comput. Chem. 2011,
-// 32, 1456, eq. 6.
+// 32, 1456.
 type D3Params struct {
 	S6, S8 float64
 	A1     float64

@@ -4,7 +4,9 @@
 //
 // Everything is in atomic units. Coordinates are flat, 3N numbers in bohr. A
 // value of one of the types serves one goroutine at a time: it owns its
-// scratch memory, and nothing is allocated after the constructor.
+// scratch memory, and nothing is allocated after the constructor. Two atoms at
+// one place give NaN; callers look at a geometry first, and only EEQ does so
+// itself.
 //
 // D3: S. Grimme, J. Antony, S. Ehrlich, H. Krieg, J. Chem. Phys. 2010, 132,
 // 154104, with the damping of S. Grimme, S. Ehrlich, L. Goerigk, J. Comput.

@@ -9,7 +9,7 @@ type D4EEQ struct {
 }
 
 // hfFlavour belongs to Hartree-Fock (E. Caldeweyher et al., J. Chem. Phys.
-// 2019, 150, 154122, supplementary material).
+// 2019, 150, 154122).
 var hfFlavour = d4Flavour{
 	params:  D3Params{S6: 1, S8: 1.61679827, A1: 0.44959224, A2: 3.35743605},
 	s9:      1,

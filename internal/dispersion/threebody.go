@@ -4,7 +4,7 @@ import "math"
 
 // threeBody is the damped triple-dipole term of Axilrod, Teller and Muto.
 //
-// Source: J. Chem. Phys. 2019, 150, 154122, eq. 8 and following; the geometric
+// Source: J. Chem. Phys. 2019, 150, 154122; the geometric
 // mean of the pair coefficients stands for the C9 coefficient.
 //
 // All factors of a triple but the angular polynomial and the damping's
