@@ -31,16 +31,22 @@ func (cs charges) addTo(grad, x []float64) float64 {
 	var energy float64
 	for n := range cs {
 		c := &cs[n]
-		d := arrow(x, c.i, c.j)
-		inv := 1 / (screening*dot(d, d) + screeningOffset)
+		a, b := x[3*c.i:3*c.i+3:3*c.i+3], x[3*c.j:3*c.j+3:3*c.j+3]
+		d0, d1, d2 := a[0]-b[0], a[1]-b[1], a[2]-b[2]
+		inv := 1 / (screening*(d0*d0+d1*d1+d2*d2) + screeningOffset)
 		e := c.qq * inv
 		energy += e
 		if grad == nil {
 			continue
 		}
 		f := -2 * screening * e * inv
-		push(grad, c.i, f, d)
-		push(grad, c.j, -f, d)
+		ga, gb := grad[3*c.i:3*c.i+3:3*c.i+3], grad[3*c.j:3*c.j+3:3*c.j+3]
+		ga[0] += f * d0
+		ga[1] += f * d1
+		ga[2] += f * d2
+		gb[0] -= f * d0
+		gb[1] -= f * d1
+		gb[2] -= f * d2
 	}
 	return energy
 }

@@ -17,12 +17,13 @@ func (f slope) Gradient(ctx context.Context, grad, x []float64) (float64, error)
 // without the parts, and without allocating. It uses s and goes with it.
 func (s *Surface) Slope() relax.Surface { return slope{s} }
 
-// Minimise relaxes x (3N, bohr) in place; see relax.Minimise. It keeps its
-// memory for the next call.
+// Minimise relaxes x (3N, bohr) in place; see relax.Minimise. It starts from a
+// model Hessian, and keeps its memory for the next call.
 func (s *Surface) Minimise(ctx context.Context, x []float64, set relax.Settings) (relax.Result, error) {
 	s.check(x)
 	if s.minimiser == nil {
 		s.minimiser = relax.NewMinimiser(len(x))
 	}
+	set.Numbers = s.tables.numbers
 	return s.minimiser.Minimise(ctx, slope{s}, x, set)
 }

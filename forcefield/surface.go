@@ -33,6 +33,7 @@ type Surface struct {
 // tables are what a surface and its clones share. Nothing in them changes.
 type tables struct {
 	m        *molecule.Molecule
+	numbers  []int
 	options  Options
 	skeleton *skeleton
 	apart    []int8
@@ -54,7 +55,7 @@ func New(m *molecule.Molecule, o Options) (*Surface, error) {
 	if err != nil {
 		return nil, err
 	}
-	tab := &tables{m: m, options: o, skeleton: t.skeleton(o), names: t.names}
+	tab := &tables{m: m, numbers: m.Numbers(), options: o, skeleton: t.skeleton(o), names: t.names}
 	tab.apart = tab.skeleton.bondsApart()
 	tab.bonded = tab.skeleton.bonded(o, t)
 	tab.hard = tab.skeleton.pairs(tab.apart, o.polarShare())
@@ -148,7 +149,7 @@ func (s *Surface) FreezeCharges(x []float64) error {
 		return nil
 	}
 	q := make([]float64, m.NumAtoms())
-	if err := dispersion.NewEEQ(m.Numbers()).Charges(x, float64(m.Charge()), q); err != nil {
+	if err := dispersion.NewEEQ(s.tables.numbers).Charges(x, float64(m.Charge()), q); err != nil {
 		return fmt.Errorf("force field: charges: %w", err)
 	}
 	return s.SetCharges(average(q, m.Classes()))

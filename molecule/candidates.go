@@ -85,11 +85,11 @@ const minStereoRing = 8
 
 // doubleCandidate returns bond k as a stereo bond, its configuration not
 // stated, if it can have two: a double bond between C or N that is in no small
-// ring and does not turn by itself. stated says whether the input marks it.
-func (g *graph) doubleCandidate(k int, stated bool) (StereoBond, bool) {
+// ring and does not turn by itself.
+func (g *graph) doubleCandidate(k int) (StereoBond, bool) {
 	b := g.bonds[k]
 	s := StereoBond{Bond: k, J: b.A, K: b.B}
-	if b.Order != 2 || b.Aromatic || g.inRing[k] && g.smallest[k] < minStereoRing || g.flexibleImine(k, stated) {
+	if b.Order != 2 || b.Aromatic || g.inRing[k] && g.smallest[k] < minStereoRing || g.flexibleImine(k) {
 		return s, false
 	}
 	for end, pair := range [2][2]int{{b.A, b.B}, {b.B, b.A}} {
@@ -135,11 +135,11 @@ func (g *graph) planarEnd(i, j int) (ref int, ok bool) {
 	return ref, plain < 2
 }
 
-// flexibleImine says whether C=N bond k changes its configuration without a
-// rotation: in a delocalised cation it is a single bond as much as a double
-// one, and where the proton of =NH or of a neighbouring N-H can hop, it does.
-// The last two hold their configuration only where the input states it.
-func (g *graph) flexibleImine(k int, stated bool) bool {
+// flexibleImine says whether C=N bond k changes its configuration by itself: in
+// a delocalised ion it is a single bond as much as a double one, and where the
+// proton of =NH or of a neighbouring N-H (amidine, guanidine) can hop, it does.
+// Marks at such bonds are dropped, and the bond is a rotor.
+func (g *graph) flexibleImine(k int) bool {
 	if g.shared.delocalised.bond[k] {
 		return true
 	}
@@ -148,7 +148,7 @@ func (g *graph) flexibleImine(k int, stated bool) bool {
 	if g.atoms[c].Number == 7 {
 		c, n = n, c
 	}
-	if stated || g.atoms[c].Number != 6 || g.atoms[n].Number != 7 || g.atoms[n].Charge != 0 {
+	if g.atoms[c].Number != 6 || g.atoms[n].Number != 7 || g.atoms[n].Charge != 0 {
 		return false
 	}
 	if g.carriesH(n) {

@@ -204,7 +204,7 @@ func (w *writer) saysTooMuch() bool {
 		if b.Order != 2 || known[k] || !w.marked(b.A) || !w.marked(b.B) {
 			continue
 		}
-		if _, ok := w.m.doubleCandidate(k, true); ok {
+		if _, ok := w.m.doubleCandidate(k); ok {
 			return true
 		}
 	}

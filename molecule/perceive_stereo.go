@@ -5,7 +5,8 @@ import "math"
 // SetStereoFrom states the configuration of all centres and double bonds that
 // the positions of the atoms added so far show. x holds three numbers for each
 // of them; the unit does not matter. What is flat or halfway between cis and
-// trans stays unstated. Amine nitrogens, which invert, stay so as well.
+// trans stays unstated. Amine nitrogens, which invert, stay so as well, and
+// C=N-H, whose hydrogen changes sides in amidines and guanidines.
 func (b *Builder) SetStereoFrom(x []float64) {
 	if len(x) != 3*len(b.atoms) {
 		panic("molecule: coordinates and atoms differ in number")
@@ -30,7 +31,7 @@ func (b *Builder) SetStereoFrom(x []float64) {
 		}
 	}
 	for _, bond := range b.bonds {
-		if bond.Order == 2 {
+		if bond.Order == 2 && !b.invertsFreely(bond.A, neighbours) && !b.invertsFreely(bond.B, neighbours) {
 			b.setDoubleFrom(x, bond.A, bond.B, neighbours)
 		}
 	}
@@ -88,6 +89,15 @@ func parityAt(x []float64, i int, neighbours []int) Parity {
 		return -1
 	}
 	return 0
+}
+
+// invertsFreely says whether atom i is a nitrogen that holds hydrogen alone
+// besides its double bond.
+func (b *Builder) invertsFreely(i int, neighbours [][]int) bool {
+	if b.atoms[i].Number != 7 || len(neighbours[i]) != 2 {
+		return false
+	}
+	return b.atoms[neighbours[i][0]].Number == 1 || b.atoms[neighbours[i][1]].Number == 1
 }
 
 // setDoubleFrom states whether the first substituents at i and j are cis.

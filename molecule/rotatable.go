@@ -5,9 +5,9 @@ import "slices"
 // Rotors returns the bonds about which parts of the molecule turn: single bonds
 // outside rings between atoms that both carry something off the axis, so that
 // neither end is linear. Bonds of methyl and the like are among them, marked
-// Idle. So are the bonds of delocalised C-N systems and the C=N bonds of
-// amidines and =NH imines whose configuration is not stated: they have two
-// states and are never counted.
+// Idle. So are the C=N bonds of delocalised ions, of amidines with N-H and of
+// =NH imines, which are no stereo elements: they have two states and are never
+// counted.
 //
 // The order is that of the bonds.
 func (m *Molecule) Rotors() []Rotor { return m.lazy.rotors() }
@@ -33,12 +33,12 @@ func (m *Molecule) findRotors() []Rotor {
 			continue
 		}
 		r := Rotor{Bond: k, J: b.A, K: b.B, AmideLike: m.amideLike(b.A, b.B) || m.amideLike(b.B, b.A) || b.Order == 2}
-		near, far := m.side(b.A, b.B), m.side(b.B, b.A)
-		if len(near) < len(far) {
+		onJ, onK := m.side(b.B, b.A), m.side(b.A, b.B)
+		if len(onJ) < len(onK) {
 			r.J, r.K = r.K, r.J
-			far = near
+			onK = onJ
 		}
-		r.Moving = far
+		r.Moving = onK
 		r.PeriodJ, r.PeriodK = m.period(r.J, r.K, cells), m.period(r.K, r.J, cells)
 		r.Idle = m.idleEnd(r.J, r.K, r.PeriodJ) || m.idleEnd(r.K, r.J, r.PeriodK)
 		r.Counted = !r.AmideLike && m.branches(r.J, r.K) && m.branches(r.K, r.J)
@@ -61,10 +61,7 @@ func (m *Molecule) turns(k int) bool {
 	if m.atoms[c].Number == 7 {
 		c, n = n, c
 	}
-	if m.atoms[c].Number != 6 || m.atoms[n].Number != 7 || !m.flexibleImine(k, false) {
-		return false
-	}
-	return !slices.ContainsFunc(m.stereoBonds, func(s StereoBond) bool { return s.Bond == k })
+	return m.atoms[c].Number == 6 && m.atoms[n].Number == 7 && m.flexibleImine(k)
 }
 
 // offAxis says whether atom i has neighbours beside j that are off the axis

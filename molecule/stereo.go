@@ -52,7 +52,7 @@ func (d *draft) withStereo(g *graph) *Molecule {
 	var bonds []StereoBond
 	for k := range g.bonds {
 		mark, isStated := marks[k]
-		b, ok := g.doubleCandidate(k, isStated)
+		b, ok := g.doubleCandidate(k)
 		if !ok {
 			continue
 		}

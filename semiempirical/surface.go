@@ -124,7 +124,7 @@ func (s *Surface) converge(ctx context.Context) (cycles int, cautious bool, err 
 }
 
 func (s *Surface) iterate(ctx context.Context, damping float64) (cycles int, err error) {
-	s.mixer.Restart(damping)
+	if s.warm && KEEP > 0 { s.mixer.Continue(KEEP, WEIGHT) } else { s.mixer.Restart(damping) }
 	loop := scf.Loop{
 		Step:    s.cycle.step,
 		Mixer:   s.mixer,
@@ -209,3 +209,4 @@ func (s *Surface) warnings(cautious bool) []string {
 	}
 	return w
 }
+var KEEP, WEIGHT = 0, 0.0

@@ -2,10 +2,11 @@ package gauss
 
 import "math"
 
-// A batch integrates one bra of s and p shells with many kets of one class at
+// A batch integrates one bra with many kets of s and p shells of one class at
 // once. The kets' primitives stand side by side (lanes), so that the part that
 // is the same for all classes, the Boys function, runs over long arrays; see
-// potentials. Then each class has straight code of its own.
+// potentials. Then each class has straight code of its own, but for bras with d
+// or higher shells, which share one (class_any.go).
 //
 // A charge cloud of p shells is a sum of Hermite Gaussians whose coefficients
 // depend on the primitives only through h = 1/(2p) and s = b/p:
@@ -36,10 +37,11 @@ type batch struct {
 	// Of one bra primitive and all lanes: P-Q and the scaled Boys functions
 	// c c' (-2 rho)^m F_m / sqrt(p+q).
 	dx, dy, dz [maxLanes]float64
-	g          [5][maxLanes]float64
+	g          [topPotential + 1][maxLanes]float64
 
 	acc []float64 // sums over primitives, one stretch a ket
 	out [81]float64
+	any anySums
 }
 
 const (
@@ -49,8 +51,10 @@ const (
 
 // Sums over primitives that a bra needs: with weight h^2 the six second
 // derivatives, with h none and first ones, with h s the first ones, with s
-// (1-s) none, in this order.
-var braSums = [...]int{classSS: 1, classPS: 4, classPP: 14}
+// (1-s) none, in this order. Other bras are summed as what they are.
+func braSums(bra *shellPair) int {
+	return [...]int{classSS: 1, classPS: 4, classPP: 14, classAny: bra.nf}[bra.class]
+}
 
 // batches fills the columns of the kets lo..hi of one class in the rows of a
 // block.
@@ -127,13 +131,17 @@ func (b *batch) integrate(bra *shellPair) {
 		return
 	}
 	class := b.ket[0].class
-	size := braSums[bra.class] * b.ket[0].nf
-	b.acc = grow(b.acc, maxKets*14*9)
-	clear(b.acc[:b.kets*size])
+	size := braSums(bra) * b.ket[0].nf
+	b.acc = grow(b.acc, b.kets*size)
+	clear(b.acc)
 	for i := range bra.prims {
 		p := &bra.prims[i]
 		if math.Abs(p.c)*b.largest < b.cut {
 			break
+		}
+		if bra.class == classAny {
+			b.addAny(bra, i)
+			continue
 		}
 		b.potentials(p, int(bra.class+class))
 		switch [2]pairClass{bra.class, class} {
@@ -157,10 +165,10 @@ func (b *batch) integrate(bra *shellPair) {
 // of ket k, nf_bra by nf_ket. The slice is good until the next call.
 func (b *batch) finish(bra *shellPair, k int) []float64 {
 	n := b.ket[k].nf
-	size := braSums[bra.class] * n
+	size := braSums(bra) * n
 	acc := b.acc[k*size:][:size]
 	switch bra.class {
-	case classSS:
+	case classSS, classAny:
 		return acc
 	case classPS:
 		for i, ab := range bra.ab {

@@ -52,10 +52,10 @@ func NewRepulsion(shells []Shell) *Repulsion {
 // to be below threshold (hartree) are left out from then on.
 func (r *Repulsion) Place(x []float64, threshold float64) {
 	r.threshold = threshold
-	r.batch.cut = primitiveShare * threshold
-	r.quartet.cut = primitiveShare * threshold
 	r.makePairs(x)
+	r.batch.cut, r.quartet.cut = 0, 0 // bounds are square roots: nothing in them is too small
 	r.bounds()
+	r.batch.cut, r.quartet.cut = primitiveShare*threshold, primitiveShare*threshold
 	r.sortPairs()
 }
 
@@ -130,7 +130,7 @@ func (r *Repulsion) Block(dst []float64, bra int, skip func(ket int) bool) {
 			continue
 		}
 		base := r.pairs[lo].first
-		if p.class == classAny {
+		if c == classAny {
 			for k := lo; k < hi; k++ {
 				if skip == nil || !skip(k) {
 					ket := &r.pairs[k]
@@ -207,7 +207,7 @@ func (r *Repulsion) one(bra, ket *shellPair) []float64 {
 	if bra.class < ket.class {
 		panic("gauss: bra and ket in the wrong order")
 	}
-	if bra.class == classAny {
+	if ket.class == classAny {
 		return r.quartet.integrals(bra, ket)
 	}
 	return r.batch.single(bra, ket)

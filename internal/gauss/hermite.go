@@ -93,6 +93,12 @@ func coulombHermite(r, scratch, boys []float64, l int, a float64, x [3]float64, 
 		boys[m] *= pre
 		pre *= -2 * a
 	}
+	raiseHermite(r, scratch, boys, l, x)
+}
+
+// raiseHermite writes the derivatives up to degree l into r: boys holds those
+// of degree 0 at all orders m. scratch is as long as r.
+func raiseHermite(r, scratch, boys []float64, l int, x [3]float64) {
 	steps := hermiteSteps()
 	cur, next := r, scratch
 	if l%2 == 1 { // so that the last level falls into r

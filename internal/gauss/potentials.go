@@ -16,6 +16,9 @@ const (
 	fastTop  = 4
 )
 
+// topPotential is the highest order that any class asks for: (ff|pp).
+const topPotential = 8
+
 type fastRow [8]float64
 
 var fastTables = sync.OnceValue(func() *[fastTop + 1][fastRows]fastRow {
@@ -38,6 +41,10 @@ var fastTables = sync.OnceValue(func() *[fastTop + 1][fastRows]fastRow {
 // potentials computes, for one bra primitive and all lanes, the distance P-Q
 // and the Boys functions up to order top with the factors that b.g asks for.
 func (b *batch) potentials(p *primitive, top int) {
+	if top > fastTop {
+		b.highPotentials(p, top)
+		return
+	}
 	n := b.lanes
 	q, x, y, z, c := b.q[:n], b.x[:n], b.y[:n], b.z[:n], b.c[:n]
 	dx, dy, dz := b.dx[:n], b.dy[:n], b.dz[:n]
@@ -109,6 +116,23 @@ func (b *batch) potentials(p *primitive, top int) {
 			pre *= r
 			g3[k] = pre * f3
 			g4[k] = pre * r * f
+		}
+	}
+}
+
+// highPotentials is potentials for orders above those of s and p.
+func (b *batch) highPotentials(p *primitive, top int) {
+	var f [topPotential + 1]float64
+	for k := range b.lanes {
+		x, y, z := p.x-b.x[k], p.y-b.y[k], p.z-b.z[k]
+		b.dx[k], b.dy[k], b.dz[k] = x, y, z
+		inv := 1 / (p.p + b.q[k])
+		rho := p.p * b.q[k] * inv
+		pre := p.c * b.c[k] * math.Sqrt(inv)
+		Boys(f[:top+1], rho*(x*x+y*y+z*z))
+		for m := range top + 1 {
+			b.g[m][k] = pre * f[m]
+			pre *= -2 * rho
 		}
 	}
 }

@@ -281,7 +281,8 @@ func compareGeneral(t *testing.T, shells []Shell, x []float64) {
 		return nil
 	}
 	b, k := find(0, 1), find(2, 3)
-	got := r.quartet.integrals(b, k)
+	got := append([]float64(nil), r.quartet.integrals(b, k)...)
+	special := r.one(b, k) // the code for this class
 	want := slowQuartet([4]*Shell{&shells[b.i], &shells[b.j], &shells[k.i], &shells[k.j]}, x)
 	largest := 0.0
 	for i, w := range want {
@@ -289,6 +290,10 @@ func compareGeneral(t *testing.T, shells []Shell, x []float64) {
 		if math.Abs(got[i]-w) > 1e-12 {
 			t.Fatalf("l = %d %d %d %d, element %d: %.15g, slow %.15g", shells[b.i].L, shells[b.j].L,
 				shells[k.i].L, shells[k.j].L, i, got[i], w)
+		}
+		if math.Abs(special[i]-w) > 1e-12 {
+			t.Fatalf("l = %d %d %d %d, element %d: %.15g by its class, slow %.15g", shells[b.i].L, shells[b.j].L,
+				shells[k.i].L, shells[k.j].L, i, special[i], w)
 		}
 	}
 	if largest < 1e-4 {

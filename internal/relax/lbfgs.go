@@ -2,8 +2,9 @@ package relax
 
 import "gonum.org/v1/gonum/floats"
 
-// memory is how many steps the history keeps.
-const memory = 12
+// memory is how many steps the history keeps. Torsions coupled through
+// crowding need many: with 12 a ligand took twice as many gradients.
+const memory = 80
 
 // A history holds the last steps and changes of gradient, which stand for the
 // inverse Hessian: L-BFGS.

@@ -55,6 +55,40 @@ func TestBroydenFindsFixedPoint(t *testing.T) {
 	}
 }
 
+// A mixer that knows a neighbouring problem needs fewer iterations, and the
+// oldest part of what it knows can be dropped.
+func TestBroydenContinues(t *testing.T) {
+	for _, keep := range []int{40, 8} {
+		s := newSwing(6)
+		mixer := NewBroyden(6, 0.4)
+		loop := Loop{Step: s.step, Mixer: mixer, Done: Within(1e-10, 1e-11), MaxIter: 60}
+		state, first, err := loop.Solve(t.Context(), make([]float64, 6))
+		if err != nil {
+			t.Fatal(err)
+		}
+		near := append([]float64(nil), state...)
+		for i := range near {
+			near[i] += 0.01 * float64(i%3-1)
+		}
+		fresh := Loop{Step: s.step, Mixer: NewBroyden(6, 0.4), Done: loop.Done, MaxIter: 60}
+		_, alone, err := fresh.Solve(t.Context(), near)
+		if err != nil {
+			t.Fatal(err)
+		}
+		mixer.Continue(keep)
+		again, second, err := loop.Solve(t.Context(), near)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if out, _ := s.step(append([]float64(nil), again...)); rms(out.Residual) > 1e-9 {
+			t.Errorf("keep %d: ends with residual %g", keep, rms(out.Residual))
+		}
+		if second.N >= alone.N {
+			t.Errorf("keep %d: %d iterations, %d without the picture, %d at first", keep, second.N, alone.N, first.N)
+		}
+	}
+}
+
 // On a linear problem of n unknowns, the picture is complete after n+1 steps.
 func TestBroydenLinear(t *testing.T) {
 	matrix := [3][3]float64{{-2, 0.3, 0}, {0.5, 0.2, 1}, {0, -1, 0.6}}

@@ -180,7 +180,7 @@ func (t *table) setDoubleBonds(b *molecule.Builder, neighbours [][]int) (notes [
 		p, side1 := t.side(bond.a, bond.b, neighbours[bond.a])
 		q, side2 := t.side(bond.b, bond.a, neighbours[bond.b])
 		switch {
-		case p < 0 || q < 0:
+		case p < 0 || q < 0 || t.invertsFreely(bond.a, p) || t.invertsFreely(bond.b, q):
 		case side1 == 0 || side2 == 0:
 			notes = append(notes, note{bond.a, bond.b, fmt.Sprintf("the double bond of atoms %d and %d is drawn in one line with its substituent: cis or trans is taken as not stated", bond.a+1, bond.b+1)})
 		default:
@@ -188,6 +188,12 @@ func (t *table) setDoubleBonds(b *molecule.Builder, neighbours [][]int) (notes [
 		}
 	}
 	return notes
+}
+
+// invertsFreely says whether atom i is a nitrogen whose substituent is hydrogen:
+// where it is drawn means nothing (see molecule.Builder.SetStereoFrom).
+func (t *table) invertsFreely(i, substituent int) bool {
+	return t.atoms[i].number == 7 && t.atoms[substituent].number == 1
 }
 
 // side returns a substituent of i and on which side of the line i-j it is drawn,

@@ -1,0 +1,69 @@
+package main
+
+import (
+	"crypto/sha256"
+	"encoding/hex"
+	"io"
+	"os"
+
+	"torsieve/molecule/load"
+	"torsieve/screen"
+	"torsieve/screen/report"
+)
+
+// ligands reads all files of a run. What could not be read or is refused is
+// among the ligands, and has been told.
+func (s *session) ligands(files []string, in inputOptions, how intakeOptions) ([]*screen.Ligand, []report.Input, error) {
+	intake := screen.NewIntake()
+	intake.ExpandStereo = how.Stereo == "expand"
+	intake.StripSalts = how.Salts == "strip"
+	var ligands []*screen.Ligand
+	var inputs []report.Input
+	for _, file := range files {
+		input := report.Input{File: file, SHA256: hashFile(file)}
+		err := s.records(file, in, func(rec load.Record) error {
+			input.Records++
+			ligands = append(ligands, intake.Take(file, rec)...)
+			return nil
+		})
+		if err != nil {
+			return nil, nil, err
+		}
+		inputs = append(inputs, input)
+	}
+	for _, l := range ligands {
+		for _, w := range l.Warnings {
+			s.voice.warn("%s: %s", l.Name(), w)
+		}
+		if l.Err != nil {
+			s.voice.failed("%s", told(l))
+		}
+	}
+	return ligands, inputs, nil
+}
+
+// told is what is said of a ligand with an error: a reader's error knows its
+// place itself.
+func told(l *screen.Ligand) string {
+	if l.Status == screen.Unreadable {
+		return l.Err.Error()
+	}
+	return l.Name() + ": " + l.Err.Error()
+}
+
+// hashFile returns the SHA-256 of a file as it lies on disk, or "" for a stream.
+func hashFile(file string) string {
+	if file == "-" {
+		return ""
+	}
+	f, err := os.Open(file)
+	if err != nil {
+		return "" // the reader will say so
+	}
+	defer f.Close()
+	h := sha256.New()
+	if _, err := io.Copy(h, f); err != nil {
+		return ""
+	}
+	return hex.EncodeToString(h.Sum(nil))
+}

@@ -1,0 +1,98 @@
+package main
+
+import (
+	"fmt"
+	"runtime"
+	"strconv"
+	"strings"
+
+	"torsieve/internal/linalg"
+)
+
+// Options that several commands share, in groups. A group is embedded by the
+// commands that it makes sense for.
+
+// inputOptions say how to read a file whose name does not.
+type inputOptions struct {
+	Format       string `group:"Input" help:"Format of standard input: smi, csv, tsv, sdf, mol or xyz." enum:",smi,csv,tsv,sdf,mol,xyz" default:"" placeholder:"NAME"`
+	IDField      string `group:"Input" name:"id-field" help:"SDF data item that holds the id (default: the title)." placeholder:"NAME"`
+	SmilesColumn string `group:"Input" help:"Column of a table that holds the SMILES." placeholder:"NAME"`
+	IDColumn     string `group:"Input" name:"id-column" help:"Column of a table that holds the id." placeholder:"NAME"`
+	Charge       *int   `group:"Input" help:"Total charge, where a file cannot say (XYZ)." placeholder:"N"`
+	Multiplicity *int   `group:"Input" help:"Spin multiplicity, where a file cannot say (XYZ)." placeholder:"N"`
+}
+
+// intakeOptions settle what an input leaves open.
+type intakeOptions struct {
+	Stereo string `group:"Input" help:"Unstated stereo: expand to at most 8 isomers, or refuse." enum:"expand,refuse" default:"expand"`
+	Salts  string `group:"Input" help:"Several fragments: refuse, or strip to the largest organic one." enum:"refuse,strip" default:"refuse"`
+}
+
+// methodOptions choose the theory of the quantum tiers.
+type methodOptions struct {
+	Final   string `group:"Methods" help:"Method of the last tier: hf-3c, hf-d3 or hf." enum:"hf-3c,hf-d3,hf" default:"hf-3c"`
+	Basis   string `group:"Methods" help:"Basis of the last tier (default: MINIX for hf-3c, def2-SVP for the others)." placeholder:"NAME"`
+	Solvent string `group:"Methods" help:"Solvent; only none yet: the gas phase (default: ${default})." default:"none" placeholder:"NAME"`
+}
+
+// check refuses what is not built yet, by name.
+func (m methodOptions) check() error {
+	if !strings.EqualFold(m.Solvent, "none") {
+		return nothing(fmt.Errorf("solvent %q: solvation is not built yet, only the gas phase is", m.Solvent), "use --solvent none")
+	}
+	return nil
+}
+
+// workOptions bound the work and make it repeatable.
+type workOptions struct {
+	Jobs   int    `group:"Work" help:"Units of work at a time (default: all cores)." placeholder:"N"`
+	Memory size   `group:"Work" help:"What all surfaces together may hold (default: ${default})." default:"4GB" placeholder:"SIZE"`
+	Seed   uint64 `group:"Work" help:"Start of the random numbers (default: ${default})." default:"0" placeholder:"N"`
+
+	Portable bool `group:"Work" help:"Use the kernels that every processor has, for the same bytes elsewhere."`
+}
+
+// AfterApply is called by kong before the command runs.
+func (w workOptions) AfterApply() error {
+	if w.Portable {
+		linalg.UsePortable()
+	}
+	return nil
+}
+
+// jobs is what was asked for, or all cores that this process may use.
+func (w workOptions) jobs() int {
+	if w.Jobs == 0 {
+		return runtime.GOMAXPROCS(0)
+	}
+	return w.Jobs
+}
+
+// A size is a number of bytes, written with a unit: 512MB, 4GB, 4GiB.
+type size int64
+
+var sizeUnits = []struct {
+	name  string
+	bytes float64
+}{
+	{"KiB", 1 << 10}, {"MiB", 1 << 20}, {"GiB", 1 << 30}, {"TiB", 1 << 40},
+	{"KB", 1e3}, {"MB", 1e6}, {"GB", 1e9}, {"TB", 1e12},
+	{"K", 1e3}, {"M", 1e6}, {"G", 1e9}, {"T", 1e12}, {"B", 1},
+}
+
+// UnmarshalText reads a size.
+func (s *size) UnmarshalText(text []byte) error {
+	number, factor := string(text), 1.0
+	for _, u := range sizeUnits {
+		if len(number) > len(u.name) && strings.EqualFold(number[len(number)-len(u.name):], u.name) {
+			number, factor = number[:len(number)-len(u.name)], u.bytes
+			break
+		}
+	}
+	v, err := strconv.ParseFloat(strings.TrimSpace(number), 64)
+	if err != nil || !(v >= 0) || v*factor > 1e15 {
+		return fmt.Errorf("want a size such as 512MB or 4GB, have %q", text)
+	}
+	*s = size(v * factor)
+	return nil
+}

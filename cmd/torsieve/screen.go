@@ -1,0 +1,200 @@
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"os"
+	"path/filepath"
+	"runtime"
+	"time"
+
+	"torsieve/internal/linalg"
+	"torsieve/internal/units"
+	"torsieve/screen"
+	"torsieve/screen/report"
+)
+
+// screenCommand is the main job.
+type screenCommand struct {
+	Ligands []string `arg:"" help:"Ligands: .smi, .csv, .tsv, .sdf, .mol, .xyz, also gzip'd, or - with --format."`
+	Out     string   `help:"Run folder: made if it is not there." required:"" placeholder:"DIR"`
+	Fresh   bool     `help:"Remove the results of an earlier run in the folder first."`
+
+	Through       string    `group:"Methods" help:"Last tier to run: forcefield, semiempirical or hf." enum:"forcefield,semiempirical,hf" default:"hf"`
+	MaxConformers int       `group:"Methods" help:"Cap on the conformers that enter the semi-empirical tier (default: ${default})." default:"${max_conformers}" placeholder:"N"`
+	Window        float64   `group:"Methods" help:"Energy window for the last tier (default: 5 to 10, by the rotatable bonds)." placeholder:"KCAL"`
+	Temperature   []float64 `group:"Methods" help:"Temperature of the ensemble; may be repeated, the first one ranks (default: ${default})." default:"298.15" placeholder:"K"`
+	Accuracy      float64   `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
+
+	Log string `group:"Work" help:"Log of every step, JSON lines (default: log.jsonl in the run folder)." placeholder:"FILE"`
+
+	Input   inputOptions  `embed:""`
+	Intake  intakeOptions `embed:""`
+	Methods methodOptions `embed:""`
+	Work    workOptions   `embed:""`
+}
+
+// Run reads the ligands, computes them, and leaves a run folder.
+func (c *screenCommand) Run(s *session) error {
+	begun := time.Now()
+	tiers, options, err := c.settings()
+	if err != nil {
+		return err
+	}
+	ligands, inputs, err := s.ligands(c.Ligands, c.Input, c.Intake)
+	if err != nil {
+		return err
+	}
+	if !anyReadable(ligands) {
+		return &failure{code: exitNothing} // nothing is written for it
+	}
+	run := c.describe(s, tiers, inputs, begun)
+	folder, err := report.Create(c.Out, c.Fresh, run)
+	if err != nil {
+		return nothing(err, folderHint(err))
+	}
+	log, closeLog, err := c.openLog()
+	if err != nil {
+		return nothing(err, "")
+	}
+	defer closeLog()
+	s.voice.note("gas phase: no solvent is modelled yet")
+	return c.compute(s, ligands, tiers, options, folder, run, log)
+}
+
+// compute runs the ligands and writes what became of them, also when a signal
+// ends it.
+func (c *screenCommand) compute(s *session, ligands []*screen.Ligand, tiers []screen.Tier, o screen.Options,
+	folder *report.Folder, run *report.Run, log *logger,
+) error {
+	watch := newWatcher(s.voice, log, ligands, len(tiers))
+	o.Watch = watch.see
+	err := screen.Run(s.ctx, ligands, tiers, o, func(r *screen.Result) error {
+		run.Counts.Add(r.Status)
+		return folder.Keep(r)
+	})
+	watch.close()
+	stopped := errors.Is(err, context.Cause(s.ctx)) && s.ctx.Err() != nil
+	if err != nil && !stopped {
+		return nothing(err, "")
+	}
+	run.End(time.Now())
+	if writeErr := folder.Close(run); writeErr != nil {
+		return nothing(writeErr, "")
+	}
+	s.voice.note("%s", summary(run.Counts, c.Out))
+	if stopped {
+		return err
+	}
+	return runStatus(run.Counts)
+}
+
+// settings turns options into those of the pipeline and checks them.
+func (c *screenCommand) settings() ([]screen.Tier, screen.Options, error) {
+	o := screen.Defaults()
+	o.Temperatures = c.Temperature
+	o.MaxConformers = c.MaxConformers
+	o.Window = c.Window * units.KcalPerMol
+	o.Seed, o.Jobs, o.Memory = c.Work.Seed, c.Work.jobs(), int64(c.Work.Memory)
+	if err := c.Methods.check(); err != nil {
+		return nil, o, err
+	}
+	if err := o.Check(); err != nil {
+		return nil, o, nothing(err, "")
+	}
+	tiers, err := tiersThrough(c.Through, tierOptions{methodOptions: c.Methods, Accuracy: c.Accuracy, Memory: o.Memory})
+	return tiers, o, err
+}
+
+// describe fills what run.json says before anything is computed.
+func (c *screenCommand) describe(s *session, tiers []screen.Tier, inputs []report.Input, begun time.Time) *report.Run {
+	run := &report.Run{
+		Program: "torsieve", Version: fullVersion(), Go: runtime.Version(),
+		Command: s.command, Settings: c.values(), Methods: map[string]string{}, Inputs: inputs,
+		Machine: report.Machine{
+			System: runtime.GOOS + "/" + runtime.GOARCH, Processor: processor(), Kernel: linalg.Kernel(),
+			Cores: runtime.NumCPU(), Jobs: c.Work.jobs(), Memory: int64(c.Work.Memory),
+		},
+		Begun: begun.Format(time.RFC3339),
+	}
+	for _, t := range tiers {
+		run.Methods[t.Name()] = t.Method()
+	}
+	return run
+}
+
+// values are the settings that decide the results.
+func (c *screenCommand) values() map[string]any {
+	return map[string]any{
+		"through": c.Through, "max-conformers": c.MaxConformers, "window": c.Window,
+		"temperature": c.Temperature, "accuracy": c.Accuracy,
+		"final": c.Methods.Final, "basis": c.Methods.Basis, "solvent": c.Methods.Solvent,
+		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Work.Seed,
+		"format": c.Input.Format, "id-field": c.Input.IDField,
+		"smiles-column": c.Input.SmilesColumn, "id-column": c.Input.IDColumn,
+		"charge": c.Input.Charge, "multiplicity": c.Input.Multiplicity,
+	}
+}
+
+// openLog opens the log; closing it is told only where something was lost.
+func (c *screenCommand) openLog() (*logger, func(), error) {
+	path := c.Log
+	if path == "" {
+		path = filepath.Join(c.Out, "log.jsonl")
+	}
+	f, err := os.Create(path)
+	if err != nil {
+		return nil, nil, err
+	}
+	return newLogger(f), func() { _ = f.Close() }, nil
+}
+
+func anyReadable(ligands []*screen.Ligand) bool {
+	for _, l := range ligands {
+		if l.Err == nil {
+			return true
+		}
+	}
+	return false
+}
+
+// folderHint says what to do about a folder that was not taken.
+func folderHint(err error) string {
+	switch {
+	case errors.Is(err, report.ErrHasRun):
+		return "give another folder, or --fresh to remove that run's results and compute anew"
+	case errors.Is(err, report.ErrNotEmpty):
+		return "give a new or an empty folder"
+	}
+	return ""
+}
+
+// summary is the last line of a run.
+func summary(c report.Counts, dir string) string {
+	text := fmt.Sprintf("%d of %d ligands done", c.Done, c.Ligands)
+	for _, part := range []struct {
+		n    int
+		what string
+	}{
+		{c.Partial, "partial"}, {c.Refused, "refused"}, {c.Failed, "failed"},
+		{c.Unreadable, "unreadable"}, {c.Stopped, "stopped"},
+	} {
+		if part.n > 0 {
+			text += fmt.Sprintf(", %d %s", part.n, part.what)
+		}
+	}
+	return text + ": see " + filepath.Join(dir, report.LigandTable)
+}
+
+// runStatus is the exit status of a run that came to its end.
+func runStatus(c report.Counts) error {
+	good := c.Done + c.Partial
+	switch {
+	case c.Done == c.Ligands:
+		return nil
+	case good == 0:
+		return &failure{code: exitNothing}
+	}
+	return &failure{code: exitPartly}
+}

@@ -1,0 +1,84 @@
+// Package dedupe says whether two shapes of a molecule are the same: the
+// smallest RMSD over rigid motions and over the renumberings of the atoms that
+// the graph cannot tell apart, mirror images included where the molecule is its
+// own mirror image.
+//
+// Coordinates are flat, 3N, in bohr; so is every RMSD.
+package dedupe
+
+import (
+	"torsieve/molecule"
+)
+
+// Options say which atoms are compared. Heavy atoms always are.
+type Options struct {
+	PolarHydrogens bool // hydrogens on N, O and S too: their places make different minima
+	AllHydrogens   bool
+}
+
+// Limits of the renumberings that are tried one by one.
+const (
+	exactLimit  = 120   // beyond it equivalent end atoms are assigned apart
+	searchLimit = 10000 // beyond it a comparison is an upper bound
+)
+
+// A Comparer compares shapes of one molecule. It does not change and may be
+// shared between goroutines.
+type Comparer struct {
+	m        *molecule.Molecule
+	atoms    []int   // the atoms compared
+	same     [][]int // renumberings that keep the stated stereo: atoms[k] of one shape lies on atoms[p[k]] of the other
+	inverse  [][]int // renumberings that turn all stated centres over; for mirror images
+	leaves   [][]int // sets of equivalent end atoms (indices into atoms), assigned after each renumbering
+	complete bool
+}
+
+// NewComparer prepares for the shapes of m.
+func NewComparer(m *molecule.Molecule, o Options) *Comparer {
+	c := &Comparer{m: m}
+	for i := range m.Atoms() {
+		if o.AllHydrogens || m.Atom(i).Number > 1 || o.PolarHydrogens && polar(m, i) {
+			c.atoms = append(c.atoms, i)
+		}
+	}
+	if len(c.atoms) == 0 { // hydrogen alone
+		for i := range m.Atoms() {
+			c.atoms = append(c.atoms, i)
+		}
+	}
+	s := newSymmetry(m, c.atoms)
+	maps, all := s.renumberings(nil, exactLimit)
+	if !all {
+		if leaves := s.leaves(); s.coreSize(leaves) >= 3 {
+			c.leaves = leaves
+		}
+		maps, all = s.renumberings(c.leaves, searchLimit)
+	}
+	c.complete = all
+	c.same, c.inverse = s.byStereo(maps)
+	return c
+}
+
+func polar(m *molecule.Molecule, hydrogen int) bool {
+	for _, j := range m.Neighbours(hydrogen) {
+		switch m.Atom(j).Number {
+		case 7, 8, 16:
+			return true
+		}
+	}
+	return false
+}
+
+// Atoms returns the indices of the atoms that are compared.
+func (c *Comparer) Atoms() []int { return c.atoms }
+
+// Mirrors says whether mirror images count as one shape: the graph with its
+// stated stereo is its own mirror image.
+func (c *Comparer) Mirrors() bool { return len(c.inverse) > 0 }
+
+// Exact says whether an RMSD is the smallest there is. For molecules with very
+// many equivalent atoms it is an upper bound.
+func (c *Comparer) Exact() bool { return c.complete && c.leaves == nil }
+
+// Clone returns c: a Comparer may be shared.
+func (c *Comparer) Clone() *Comparer { return c }

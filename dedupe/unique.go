@@ -1,0 +1,85 @@
+package dedupe
+
+import (
+	"cmp"
+	"math"
+	"slices"
+
+	"torsieve/internal/units"
+)
+
+// Thresholds say when two shapes are one. Both must hold.
+type Thresholds struct {
+	RMSD   float64 // bohr
+	Energy float64 // hartree; the difference of the two energies
+}
+
+// DefaultThresholds are meant for shapes that were relaxed to an RMS gradient
+// of 1e-4 hartree/bohr or better: 0.125 angstrom and 0.25 kcal/mol.
+func DefaultThresholds() Thresholds {
+	return Thresholds{RMSD: 0.125 * units.Angstrom, Energy: 0.25 * units.KcalPerMol}
+}
+
+// A Group is one shape and all that are the same.
+type Group struct {
+	Keep     int    // the lowest member
+	Members  []int  // all members, Keep first, then upwards in energy
+	Mirrored []bool // by member: it is the mirror image of Keep
+}
+
+// Unique sorts shapes into groups, by the leader algorithm in the order of
+// their energies: each joins the lowest leader that it is the same as, or leads
+// a new group. Groups come in the order of their leaders' energies; ties go by
+// index. Panics if xs and energies differ in length.
+func Unique(c *Comparer, xs [][]float64, energies []float64, t Thresholds) []Group {
+	if len(xs) != len(energies) {
+		panic("dedupe: shapes and energies differ in number")
+	}
+	order := make([]int, len(xs))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortStableFunc(order, func(i, j int) int { return cmp.Compare(energies[i], energies[j]) })
+	var leaders []leader
+	for _, i := range order {
+		s := leader{energy: energies[i], x: c.take(xs[i])}
+		s.print = fingerprintOf(s.x)
+		k, mirrored := c.join(leaders, s, t)
+		if k < 0 {
+			s.group = Group{Keep: i}
+			leaders = append(leaders, s)
+			k = len(leaders) - 1
+		}
+		g := &leaders[k].group
+		g.Members, g.Mirrored = append(g.Members, i), append(g.Mirrored, mirrored)
+	}
+	groups := make([]Group, len(leaders))
+	for k := range leaders {
+		groups[k] = leaders[k].group
+	}
+	return groups
+}
+
+type leader struct {
+	energy float64
+	x      []float64 // compared atoms
+	print  fingerprint
+	group  Group
+}
+
+// join returns the leader that s is the same as, -1 if there is none. Leaders
+// stand in the order of their energies, so those out of reach come first.
+func (c *Comparer) join(leaders []leader, s leader, t Thresholds) (k int, mirrored bool) {
+	first, _ := slices.BinarySearchFunc(leaders, s.energy-t.Energy, func(l leader, e float64) int {
+		return cmp.Compare(l.energy, e)
+	})
+	for k := first; k < len(leaders); k++ {
+		if leaders[k].print.apart(s.print) > t.RMSD {
+			continue
+		}
+		if f := c.best(leaders[k].x, s.x); f.rmsd <= t.RMSD && !math.IsNaN(f.rmsd) {
+			return k, f.mirrored
+		}
+	}
+	return -1, false
+}

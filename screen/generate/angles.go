@@ -1,0 +1,209 @@
+package generate
+
+import "slices"
+
+// angle returns the range of the angle i-j-k that the graph allows.
+func (g *bounder) angle(i, j, k int) (low, high float64) {
+	middle, slack := g.usualAngle(i, j, k)
+	return max(40*degree, middle-slack), min(180*degree, middle+slack)
+}
+
+func (g *bounder) usualAngle(i, j, k int) (middle, slack float64) {
+	ringBonds := g.ringBonds(j)
+	if size := g.ringOf(i, j, k); size > 0 {
+		middle, slack = g.ringAngle(j, size), 3*degree
+		if ringBonds > 2 && g.h[j] != trigonal {
+			slack = 9 * degree // bridges and fused corners bend where they must
+		}
+		return middle, slack
+	}
+	switch g.h[j] {
+	case linear:
+		return 180 * degree, 0
+	case trigonal:
+		return g.trigonalAngle(i, j, k, ringBonds)
+	case other:
+		return 110 * degree, 70 * degree
+	}
+	if g.inSmallRing(j) {
+		return 116 * degree, 9 * degree
+	}
+	switch n := g.m.Atom(j).Number; {
+	case n == 8 || n == 7:
+		middle, slack = 110*degree, 5*degree
+	case n == 16 && len(g.m.Neighbours(j)) == 2, n == 34:
+		middle, slack = 101*degree, 5*degree
+	case n > 10:
+		middle, slack = 109*degree, 10*degree
+	default:
+		middle, slack = 110.5*degree, 4*degree
+	}
+	if ringBonds > 2 {
+		slack = 10 * degree
+	}
+	return middle, slack
+}
+
+// trigonalAngle shares the rest of the full turn where the third angle lies in
+// a ring.
+func (g *bounder) trigonalAngle(i, j, k, ringBonds int) (middle, slack float64) {
+	near := g.m.Neighbours(j)
+	if len(near) != 3 || ringBonds < 2 {
+		return 120 * degree, 4 * degree
+	}
+	third := near[0] + near[1] + near[2] - i - k
+	inside := 0.0
+	for _, other := range [2]int{i, k} {
+		if size := g.ringOf(other, j, third); size > 0 {
+			inside += g.ringAngle(j, size)
+		}
+	}
+	if ringBonds == 3 {
+		return 360*degree - inside, 5 * degree
+	}
+	return (360*degree - inside) / 2, 5 * degree
+}
+
+// ringAngle is the usual angle at j inside a ring of some size.
+func (g *bounder) ringAngle(j, size int) float64 {
+	flat := g.h[j] == trigonal
+	pick := func(sp2, sp3 float64) float64 {
+		if flat {
+			return sp2 * degree
+		}
+		return sp3 * degree
+	}
+	if g.m.Atom(j).Number == 16 && size <= 6 && size > 3 {
+		return pick(93, 94)
+	}
+	switch size {
+	case 3:
+		return 60 * degree
+	case 4:
+		return pick(91, 88)
+	case 5:
+		return pick(108, 104)
+	case 6:
+		return pick(120, 111)
+	case 7:
+		return pick(127, 114)
+	}
+	if g.h[j] == linear {
+		return 175 * degree
+	}
+	return pick(122, 114)
+}
+
+// ringOf returns the size of the smallest ring in which i, j and k follow each
+// other, 0 if there is none. Beyond eight atoms a ring does not shape angles.
+func (g *bounder) ringOf(i, j, k int) int {
+	for _, r := range g.onRing[j] {
+		ring := g.rings[r]
+		if len(ring) > 8 {
+			break
+		}
+		at := slices.Index(ring, j)
+		before, after := ring[(at+len(ring)-1)%len(ring)], ring[(at+1)%len(ring)]
+		if before == i && after == k || before == k && after == i {
+			return len(ring)
+		}
+	}
+	return 0
+}
+
+func (g *bounder) ringBonds(j int) int {
+	count := 0
+	for _, k := range g.m.NeighbourBonds(j) {
+		if g.m.BondInRing(k) {
+			count++
+		}
+	}
+	return count
+}
+
+func (g *bounder) inSmallRing(j int) bool {
+	for _, r := range g.onRing[j] {
+		if len(g.rings[r]) <= 4 {
+			return true
+		}
+	}
+	return false
+}
+
+// dihedral returns the range of |a-b-c-d| about bond bc that the graph allows.
+func (g *bounder) dihedral(a, b, c, d, bc int) (low, high float64) {
+	if held, ok := g.cis[bc]; ok {
+		same := (a == held.a || d == held.a) == (a == held.b || d == held.b)
+		return flat(same == held.cis)
+	}
+	bond := g.m.Bond(bc)
+	size := g.m.SmallestRing(bc)
+	stiff := g.h[b] == trigonal && g.h[c] == trigonal && size > 0 && size <= 7
+	if stiff && (bond.Aromatic || bond.Order == 2 || size <= 5) {
+		return g.planarRing(a, b, c, d)
+	}
+	return g.ringDihedral(a, b, c, d)
+}
+
+func flat(cis bool) (low, high float64) {
+	if cis {
+		return 0, 10 * degree
+	}
+	return 170 * degree, 180 * degree
+}
+
+// planarRing: about a flat ring bond the ring atoms are cis, and so are the
+// substituents; a ring atom and a substituent are trans.
+func (g *bounder) planarRing(a, b, c, d int) (low, high float64) {
+	for _, r := range g.onRing[b] {
+		ring := g.rings[r]
+		before, ok1 := neighbourOnRing(ring, b, c)
+		after, ok2 := neighbourOnRing(ring, c, b)
+		if ok1 && ok2 && len(ring) <= 7 {
+			return flat((a == before) == (d == after))
+		}
+	}
+	return 0, 180 * degree
+}
+
+// neighbourOnRing returns the ring atom next to j that is not k, where j and k
+// are next to each other on the ring.
+func neighbourOnRing(ring []int, j, k int) (int, bool) {
+	n := len(ring)
+	at := slices.Index(ring, j)
+	if at < 0 {
+		return 0, false
+	}
+	before, after := ring[(at+n-1)%n], ring[(at+1)%n]
+	switch k {
+	case before:
+		return after, true
+	case after:
+		return before, true
+	}
+	return 0, false
+}
+
+// ringDihedral bounds the endocyclic dihedrals of small rings.
+func (g *bounder) ringDihedral(a, b, c, d int) (low, high float64) {
+	for _, r := range g.onRing[b] {
+		ring := g.rings[r]
+		if before, ok := neighbourOnRing(ring, b, c); !ok || before != a && before != d {
+			continue
+		}
+		if !slices.Contains(ring, a) || !slices.Contains(ring, d) {
+			continue
+		}
+		switch len(ring) {
+		case 4:
+			return 0, 40 * degree
+		case 5:
+			return 0, 55 * degree
+		case 6:
+			return 0, 75 * degree
+		case 7:
+			return 0, 110 * degree
+		}
+	}
+	return 0, 180 * degree
+}

@@ -1,0 +1,142 @@
+package generate
+
+import (
+	"context"
+	"math"
+	"slices"
+)
+
+// assembled relaxes structures put together from fragments: all combinations
+// where they are few, otherwise samples.
+func (s *search) assembled(ctx context.Context) error {
+	if s.combinations() > float64(s.o.Exhaustive) {
+		return s.sampled(ctx)
+	}
+	leaves := s.enumerate()
+	s.result.Complete = len(leaves) <= s.o.relaxations()
+	if !s.result.Complete {
+		slices.SortStableFunc(leaves, func(a, b leaf) int {
+			switch {
+			case a.cost < b.cost:
+				return -1
+			case a.cost > b.cost:
+				return 1
+			}
+			return 0
+		})
+		leaves = leaves[:s.o.relaxations()]
+	}
+	for _, l := range leaves {
+		x := make([]float64, 3*s.m.NumAtoms())
+		s.assembly.force(l.recipe, x)
+		if err := s.add(ctx, x, l.recipe); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// combinations counts the recipes with every rotor in the middle of a state.
+func (s *search) combinations() float64 {
+	n := 1.0
+	for _, t := range s.assembly.turns {
+		n *= float64(len(t.states))
+	}
+	for _, f := range s.assembly.frags {
+		n *= float64(len(f.shapes))
+	}
+	return n
+}
+
+// A leaf is a complete recipe that does not clash. cost ranks leaves: minus the
+// logarithm of the product of the weights, and the crowding.
+type leaf struct {
+	recipe recipe
+	cost   float64
+}
+
+// enumerate goes through all combinations depth first and leaves a branch where
+// fragments clash.
+func (s *search) enumerate() []leaf {
+	a := s.assembly
+	rec := recipe{make([]int, len(a.frags)), make([]float64, len(a.turns))}
+	x := make([]float64, 3*s.m.NumAtoms())
+	var leaves []leaf
+	var visit func(k int, cost float64)
+	visit = func(k int, cost float64) {
+		if k == len(a.steps) {
+			leaves = append(leaves, leaf{rec.clone(), cost})
+			return
+		}
+		step := a.steps[k]
+		shapes := s.sampler.shapes[step.frag]
+		for shape, share := range shapes {
+			rec.shapes[step.frag] = shape
+			if step.turn < 0 {
+				a.put(k, rec, x)
+				a.settle(k)
+				visit(k+1, cost-math.Log(share))
+				continue
+			}
+			for n := range a.turns[step.turn].states {
+				s.result.Starts++
+				crowding, ok := s.fitIn(k, n, rec, x)
+				if !ok {
+					continue
+				}
+				a.settle(k)
+				weight := s.sampler.states[step.turn][n]
+				visit(k+1, cost-math.Log(share)-math.Log(weight)+crowding/tooCrowded)
+				a.unsettle(k)
+			}
+		}
+	}
+	visit(0, 0)
+	s.result.Embedded += len(leaves)
+	return leaves
+}
+
+// offsets from the middle of a state, in its spreads, that are tried where the
+// middle clashes.
+var offsets = [...]float64{0, 0.8, -0.8, 1.6, -1.6}
+
+func (s *search) fitIn(k, n int, rec recipe, x []float64) (crowding float64, ok bool) {
+	turn := s.assembly.steps[k].turn
+	st := s.assembly.turns[turn].states[n]
+	for _, off := range offsets {
+		rec.angles[turn] = st.angle + off*st.spread
+		if crowding = s.assembly.put(k, rec, x); crowding < tooCrowded {
+			return crowding, true
+		}
+	}
+	return 0, false
+}
+
+// batch is how many structures are drawn between two looks at the energies.
+const batch = 50
+
+// sampled draws structures in batches until the budget is spent. The first
+// batches follow the table of torsions, the later ones also what turned out to
+// be low.
+func (s *search) sampled(ctx context.Context) error {
+	budget := s.o.relaxations()
+	for done := 0; done < budget; done += batch {
+		n := min(batch, budget-done)
+		grid := latin(stream(s.o.Seed, s.id, streamAngles, done), n, len(s.assembly.turns))
+		from := len(s.pool)
+		for k := range n {
+			x := make([]float64, 3*s.m.NumAtoms())
+			rec, _, ok := s.sampler.draw(stream(s.o.Seed, s.id, streamKick, done+k), grid[k], x)
+			s.result.Starts++
+			if !ok {
+				continue
+			}
+			s.result.Embedded++
+			if err := s.add(ctx, x, rec); err != nil {
+				return err
+			}
+		}
+		s.sampler.learn(s.pool[from:])
+	}
+	return nil
+}

@@ -1,0 +1,98 @@
+package generate
+
+import (
+	"context"
+	"fmt"
+	"slices"
+
+	"torsieve/dedupe"
+	"torsieve/internal/units"
+)
+
+// rough tells structures apart that are only loosely relaxed.
+var rough = dedupe.Thresholds{RMSD: 0.2 * units.Angstrom, Energy: 1 * units.KcalPerMol}
+
+// finish drops duplicates and what is too high, relaxes the best choice to the
+// end, and puts it in order.
+func (s *search) finish(ctx context.Context) (Result, error) {
+	kept := s.distinct(s.pool, nil, rough)
+	kept = s.within(kept)
+	s.result.Found = len(kept)
+	chosen := s.order(kept)
+	if len(chosen) > s.o.Max {
+		chosen = chosen[:s.o.Max]
+		s.result.Complete = false
+	}
+	var final []entry
+	var hits []int
+	for _, c := range chosen {
+		energy, err := s.relaxed(ctx, c.x, tightly)
+		if ctx.Err() != nil {
+			return Result{}, ctx.Err()
+		}
+		if err != nil {
+			s.failure = err
+			continue
+		}
+		c.energy = energy
+		final = append(final, c.entry)
+		hits = append(hits, c.hits)
+	}
+	if len(final) == 0 {
+		return Result{}, fmt.Errorf("no structure could be relaxed: %w", s.failure)
+	}
+	list := s.order(s.within(s.distinct(final, hits, dedupe.DefaultThresholds())))
+	s.conformers(list)
+	return s.result, nil
+}
+
+// A candidate is a distinct structure and how often it was met.
+type candidate struct {
+	entry
+	hits int
+}
+
+// distinct keeps the lowest of each shape; hits, where known, add up.
+func (s *search) distinct(list []entry, hits []int, t dedupe.Thresholds) []candidate {
+	xs, energies := make([][]float64, len(list)), make([]float64, len(list))
+	for k, e := range list {
+		xs[k], energies[k] = e.x, e.energy
+	}
+	var kept []candidate
+	for _, g := range dedupe.Unique(s.comparer, xs, energies, t) {
+		c := candidate{entry: list[g.Keep]}
+		for _, k := range g.Members {
+			if hits != nil {
+				c.hits += hits[k]
+			} else {
+				c.hits++
+			}
+		}
+		kept = append(kept, c)
+	}
+	return kept
+}
+
+// within keeps what lies in the window; list is sorted by energy.
+func (s *search) within(list []candidate) []candidate {
+	for k, c := range list {
+		if c.energy-list[0].energy > s.o.Window {
+			return list[:k]
+		}
+	}
+	return list
+}
+
+// conformers writes the result. Families are numbered in the order of the list.
+func (s *search) conformers(list []candidate) {
+	var seen [][]int
+	for _, c := range list {
+		family := slices.IndexFunc(seen, func(f []int) bool { return slices.Equal(f, c.recipe.shapes) })
+		if family < 0 {
+			family = len(seen)
+			seen = append(seen, c.recipe.shapes)
+		}
+		s.result.Conformers = append(s.result.Conformers,
+			Conformer{X: c.x, Energy: c.energy, Family: family, Hits: c.hits})
+	}
+}

@@ -1,0 +1,194 @@
+package generate
+
+import (
+	"fmt"
+	"slices"
+
+	"torsieve/molecule"
+)
+
+// A fragment is what stays stiff when the rotors turn: a ring system, a chain
+// atom with its hydrogens, a double bond. It overlaps with each neighbour in
+// the two atoms of the bond between them.
+type fragment struct {
+	core    []int // atoms of the molecule, ascending
+	outside []int // their neighbours in other fragments, ascending
+	joints  []joint
+
+	// The model is the fragment as a molecule of its own: core, outside and as
+	// much beyond as keeps the bonds' nature, the rest filled with hydrogen.
+	model  *molecule.Molecule
+	atoms  []int              // molecule's atom of each of the model's first atoms
+	held   []handedness       // in the model's numbers
+	bonds  map[int]doubleBond // likewise, by bond of the model
+	number map[int]int        // model's number of a molecule's atom; for look-up only
+	rings  int                // flexible ring bonds
+	shapes []shape
+}
+
+// A joint is a rotor as one of its two fragments sees it.
+type joint struct {
+	rotor, inside, outside int
+}
+
+// A shape is one conformer of a fragment.
+type shape struct {
+	x      []float64 // positions of core, then outside, bohr
+	energy float64   // hartree above the lowest shape
+}
+
+// fragments cuts m at its rotors.
+func fragments(m *molecule.Molecule, rotors []molecule.Rotor) ([]*fragment, error) {
+	cut := make([]bool, len(m.Bonds()))
+	for _, r := range rotors {
+		cut[r.Bond] = true
+	}
+	owner := make([]int, m.NumAtoms())
+	for i := range owner {
+		owner[i] = -1
+	}
+	var list []*fragment
+	for i := range owner {
+		if owner[i] >= 0 {
+			continue
+		}
+		f := &fragment{core: connected(m, i, cut)}
+		for _, a := range f.core {
+			owner[a] = len(list)
+		}
+		list = append(list, f)
+	}
+	for k, r := range rotors {
+		for _, end := range [2][2]int{{r.J, r.K}, {r.K, r.J}} {
+			f := list[owner[end[0]]]
+			f.joints = append(f.joints, joint{k, end[0], end[1]})
+			f.outside = append(f.outside, end[1])
+		}
+	}
+	held, bonds := handednesses(m), heldBonds(m)
+	for _, f := range list {
+		slices.Sort(f.outside)
+		f.outside = slices.Compact(f.outside)
+		if err := f.makeModel(m, held, bonds); err != nil {
+			return nil, err
+		}
+	}
+	return list, nil
+}
+
+// connected returns the atoms that hang together with i by bonds not cut.
+func connected(m *molecule.Molecule, i int, cut []bool) []int {
+	seen := map[int]bool{i: true}
+	part := []int{i}
+	for at := 0; at < len(part); at++ {
+		for k, j := range m.Neighbours(part[at]) {
+			if !cut[m.NeighbourBonds(part[at])[k]] && !seen[j] {
+				seen[j] = true
+				part = append(part, j)
+			}
+		}
+	}
+	slices.Sort(part)
+	return part
+}
+
+// makeModel builds the fragment's own molecule.
+func (f *fragment) makeModel(m *molecule.Molecule, held []handedness, bonds map[int]doubleBond) error {
+	f.atoms = surroundings(m, f.core, f.outside)
+	f.number = make(map[int]int, len(f.atoms))
+	b := molecule.NewBuilder()
+	for k, i := range f.atoms {
+		f.number[i] = k
+		a := m.Atom(i)
+		b.AddAtom(molecule.BuilderAtom{Number: a.Number, Charge: a.Charge, Isotope: a.Isotope, Radical: a.Radical,
+			Hydrogens: f.missing(m, i)})
+	}
+	for _, bond := range m.Bonds() {
+		p, ok1 := f.number[bond.A]
+		q, ok2 := f.number[bond.B]
+		if !ok1 || !ok2 {
+			continue
+		}
+		if _, err := b.AddBond(p, q, bond.Order); err != nil {
+			return fmt.Errorf("fragment of atoms %v: %w", f.core, err)
+		}
+	}
+	var err error
+	if f.model, _, err = b.Build(); err != nil {
+		return fmt.Errorf("fragment of atoms %v: %w", f.core, err)
+	}
+	f.takeStereo(m, held, bonds)
+	return nil
+}
+
+// surroundings lists core, outside, and then what keeps the nature of the
+// outer bonds: partners of multiple and aromatic bonds, and single heavy atoms.
+func surroundings(m *molecule.Molecule, core, outside []int) []int {
+	list := append(slices.Clone(core), outside...)
+	seen := make(map[int]bool, len(list))
+	for _, i := range list {
+		seen[i] = true
+	}
+	for at := 0; at < len(list); at++ {
+		i := list[at]
+		for k, j := range m.Neighbours(i) {
+			bond := m.Bond(m.NeighbourBonds(i)[k])
+			alone := len(m.Neighbours(j)) == 1 && m.Atom(j).Number != 1
+			if !seen[j] && (bond.Order > 1 || bond.Aromatic || alone) {
+				seen[j] = true
+				list = append(list, j)
+			}
+		}
+	}
+	return list
+}
+
+// missing counts the bonds of atom i that the model leaves out.
+func (f *fragment) missing(m *molecule.Molecule, i int) int {
+	count := 0
+	for _, j := range m.Neighbours(i) {
+		if !slices.Contains(f.atoms, j) {
+			count++
+		}
+	}
+	return count
+}
+
+// takeStereo translates the stereo elements that lie in the fragment.
+func (f *fragment) takeStereo(m *molecule.Molecule, held []handedness, bonds map[int]doubleBond) {
+	for _, h := range held {
+		if !slices.Contains(f.core, h.centre) {
+			continue
+		}
+		h.centre = f.number[h.centre]
+		for k, p := range h.points {
+			h.points[k] = f.number[p]
+		}
+		f.held = append(f.held, h)
+	}
+	f.bonds = make(map[int]doubleBond)
+	for _, d := range bonds {
+		j, ok1 := f.number[d.j]
+		k, ok2 := f.number[d.k]
+		a, ok3 := f.number[d.a]
+		b, ok4 := f.number[d.b]
+		if ok1 && ok2 && ok3 && ok4 {
+			bond, _ := f.model.BondBetween(j, k)
+			f.bonds[bond] = doubleBond{j, k, a, b, d.cis}
+		}
+	}
+	f.rings = flexibleRingBonds(f.model)
+}
+
+// flexibleRingBonds counts the ring bonds that are not held flat.
+func flexibleRingBonds(m *molecule.Molecule) int {
+	h := hybrids(m)
+	count := 0
+	for k, b := range m.Bonds() {
+		stiff := b.Aromatic || h[b.A] == trigonal && h[b.B] == trigonal
+		if size := m.SmallestRing(k); size > 3 && !(stiff && size <= 7) {
+			count++
+		}
+	}
+	return count
+}

@@ -1,0 +1,49 @@
+package generate
+
+import (
+	"torsieve/forcefield"
+	"torsieve/internal/units"
+)
+
+// Options are the settings of a search. Start from Defaults. All budgets count
+// starts and conformers, never seconds.
+type Options struct {
+	Max    int         // conformers to hand over; 250
+	Seed   uint64      // of all random choices; 1
+	Window float64     // hartree above the lowest conformer; 25 kcal/mol
+	Start  [][]float64 // geometries to begin with besides our own, 3N, bohr
+
+	// Field is the force field that shapes are relaxed in; forcefield.Defaults.
+	Field forcefield.Options
+
+	// Relaxations is how many structures are relaxed at most; 0: twice Max and
+	// at least 100.
+	Relaxations int
+
+	// Exhaustive is the largest number of combinations of torsion states and
+	// ring shapes that are all built; beyond it they are sampled; 3000.
+	Exhaustive int
+}
+
+// Defaults returns the usual settings.
+func Defaults() Options {
+	return Options{
+		Max: 250, Seed: 1, Window: 25 * units.KcalPerMol, Field: forcefield.Defaults(), Exhaustive: 3000,
+	}
+}
+
+// relaxations is the budget of minimisations.
+func (o Options) relaxations() int {
+	if o.Relaxations > 0 {
+		return o.Relaxations
+	}
+	return max(100, 2*o.Max)
+}
+
+// fragmentField leaves electrostatics out: a fragment's charges are not those
+// of the molecule.
+func (o Options) fragmentField() forcefield.Options {
+	f := o.Field
+	f.Charges = "none"
+	return f
+}

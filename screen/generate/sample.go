@@ -1,0 +1,103 @@
+package generate
+
+import (
+	"math"
+	"math/rand/v2"
+)
+
+// A sampler draws recipes that do not clash.
+type sampler struct {
+	a      *assembly
+	states [][]float64 // by rotor: weights of the states, adapted as energies come in
+	shapes [][]float64 // by fragment: weights of the shapes
+}
+
+func newSampler(a *assembly) *sampler {
+	s := &sampler{a: a}
+	for _, t := range a.turns {
+		w := make([]float64, len(t.states))
+		for k, st := range t.states {
+			w[k] = st.weight
+		}
+		s.states = append(s.states, w)
+	}
+	for _, f := range a.frags {
+		s.shapes = append(s.shapes, f.weights())
+	}
+	return s
+}
+
+// draws of one fragment's placing before the sampler goes back to the start,
+// and starts before it gives up.
+const (
+	placings = 8
+	restarts = 12
+)
+
+// draw grows a structure into x fragment by fragment; where one clashes it
+// draws that one again. first chooses the states of the first round, rotor by
+// rotor, in 0..1; nil leaves them to r. It reports whether it succeeded.
+func (s *sampler) draw(r *rand.Rand, first []float64, x []float64) (recipe, float64, bool) {
+	rec := recipe{make([]int, len(s.a.frags)), make([]float64, len(s.a.turns))}
+	for try := range restarts {
+		if try > 0 {
+			first = nil
+		}
+		if crowding, ok := s.grow(r, first, rec, x); ok {
+			return rec, crowding, true
+		}
+	}
+	return rec, 0, false
+}
+
+func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) (float64, bool) {
+	var crowding float64
+	for k, step := range s.a.steps {
+		added, ok := 0.0, false
+		for p := range placings {
+			rec.shapes[step.frag] = pick(s.shapes[step.frag], r.Float64())
+			if step.turn >= 0 {
+				u := r.Float64()
+				if p == 0 && first != nil {
+					u = first[step.turn]
+				}
+				rec.angles[step.turn] = s.angle(step.turn, pick(s.states[step.turn], u), r)
+			}
+			if added = s.a.put(k, rec, x); crowding+added < tooCrowded {
+				ok = true
+				break
+			}
+		}
+		if !ok {
+			return 0, false
+		}
+		crowding += added
+		s.a.settle(k)
+	}
+	return crowding, true
+}
+
+// angle draws from a state, at most two standard deviations away.
+func (s *sampler) angle(turn, k int, r *rand.Rand) float64 {
+	st := s.a.turns[turn].states[k]
+	return st.angle + st.spread*math.Max(-2, math.Min(2, r.NormFloat64()))*jitter
+}
+
+// jitter is the share of a state's spread that is drawn; the force field moves
+// the rest.
+const jitter = 0.7
+
+// pick returns the index in which the fraction u of the summed weights falls.
+func pick(weights []float64, u float64) int {
+	var sum float64
+	for _, w := range weights {
+		sum += w
+	}
+	u *= sum
+	for k, w := range weights {
+		if u -= w; u < 0 {
+			return k
+		}
+	}
+	return len(weights) - 1
+}

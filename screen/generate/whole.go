@@ -1,0 +1,42 @@
+package generate
+
+import "context"
+
+// Shares of the budget that are embedded as a whole, beside what is put
+// together from fragments: one in so many, within limits.
+const (
+	wholeShare = 20
+	fewestRuns = 4
+	mostRuns   = 30
+)
+
+// embedded relaxes embeddings of the whole molecule: a second opinion on what
+// the assembly can make, and the only way where it can make nothing.
+func (s *search) embedded(ctx context.Context) error {
+	runs := min(mostRuns, max(fewestRuns, s.o.relaxations()/wholeShare))
+	if len(s.pool) == 0 {
+		runs = s.o.relaxations() / 2
+	}
+	for k := range runs {
+		s.result.Starts++
+		x, err := s.embedder.next(ctx, stream(s.o.Seed, s.id, streamWhole, k))
+		if ctx.Err() != nil {
+			return ctx.Err()
+		}
+		if err != nil {
+			s.failure = err
+			if len(s.pool) > 0 || k >= 2 {
+				break
+			}
+			continue
+		}
+		s.result.Embedded++
+		if err := s.add(ctx, x, recipe{}); err != nil {
+			return err
+		}
+	}
+	if len(s.pool) == 0 {
+		return s.failure
+	}
+	return nil
+}

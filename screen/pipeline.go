@@ -1,0 +1,209 @@
+package screen
+
+import (
+	"cmp"
+	"context"
+	"fmt"
+	"math"
+	"slices"
+
+	"torsieve/dedupe"
+	"torsieve/screen/ensemble"
+	"torsieve/screen/generate"
+)
+
+// ligandRun takes one ligand the whole way:
+//
+//	generate -> forcefield -> dedupe -> semiempirical -> dedupe -> hf -> ensemble
+//
+// Read run first: each line is a folder. The generator relaxes its shapes in
+// the force field and drops doubles itself, so tier 0 is done with it. How many
+// geometries go on from a line to the next is decided in promote.go.
+type ligandRun struct {
+	*machine
+	ligand     *Ligand
+	comparer   *dedupe.Comparer
+	conformers []Conformer
+	result     *Result
+}
+
+func (r *ligandRun) run(ctx context.Context) error {
+	if err := r.accept(); err != nil {
+		return refusal{err}
+	}
+	if err := r.generate(ctx); err != nil {
+		return fmt.Errorf("generate: %w", err)
+	}
+	for tier := 1; tier < len(r.tiers); tier++ {
+		if err := r.climb(ctx, tier); err != nil {
+			return fmt.Errorf("%s: %w", r.tiers[tier].Name(), err)
+		}
+	}
+	r.weigh()
+	return nil
+}
+
+// A refusal says that the input is what is wrong.
+type refusal struct{ error }
+
+func (r refusal) Unwrap() error { return r.error }
+
+// accept asks before any work whether every tier can take the molecule.
+func (r *ligandRun) accept() error {
+	if err := Refuse(r.ligand.Mol); err != nil {
+		return err
+	}
+	for _, tier := range r.tiers {
+		err := Guard(func() error {
+			_, err := tier.Surface(r.ligand.Mol)
+			return err
+		})
+		if err != nil {
+			return fmt.Errorf("%s: %w", tier.Name(), err)
+		}
+	}
+	return nil
+}
+
+// generate finds the shapes and relaxes them in the force field.
+func (r *ligandRun) generate(ctx context.Context) error {
+	var found generate.Result
+	begun := r.options.Clock()
+	err := r.pool.unit(ctx, func() (err error) {
+		o := r.options.Generate
+		o.Seed = r.options.Seed
+		found, err = Shapes(ctx, r.ligand, o)
+		return err
+	})
+	r.result.Took[0] = r.options.Clock().Sub(begun)
+	if err != nil {
+		return err
+	}
+	if len(found.Conformers) == 0 {
+		return fmt.Errorf("no shape was found in %d starts", found.Starts)
+	}
+	r.result.Warnings = append(r.result.Warnings, found.Warnings...)
+	for i, c := range found.Conformers {
+		energies := make([]float64, len(r.tiers))
+		for t := range energies {
+			energies[t] = math.NaN()
+		}
+		energies[0] = c.Energy
+		r.conformers = append(r.conformers, Conformer{Number: i + 1, X: c.X, Family: c.Family, Energies: energies})
+	}
+	r.result.Entered[0] = len(found.Conformers)
+	return nil
+}
+
+// climb takes the conformers that may go up to a tier and brings back those
+// that the tier could compute, each shape once.
+func (r *ligandRun) climb(ctx context.Context, tier int) error {
+	up := r.promote(tier)
+	r.result.Entered[tier] = len(up)
+	r.tellEntered(tier, len(up))
+	outcomes, err := r.compute(ctx, tier, up)
+	if err != nil {
+		return err
+	}
+	var reached []int
+	var first error
+	for k, i := range up {
+		r.result.Took[tier] += outcomes[k].took
+		if err := r.settle(tier, &r.conformers[i], outcomes[k]); err != nil {
+			if first == nil {
+				first = err
+			}
+			continue
+		}
+		reached = append(reached, i)
+	}
+	if len(reached) == 0 {
+		return fmt.Errorf("none of %d conformers could be computed, the first: %w", len(up), first)
+	}
+	if failed := len(up) - len(reached); failed > 0 {
+		r.result.Status = Partial
+		r.result.Reason = fmt.Sprintf("%s: %d of %d conformers could not be computed, the first: %v",
+			r.tiers[tier].Name(), failed, len(up), first)
+	}
+	r.dropDoubles(tier, reached)
+	return nil
+}
+
+// settle writes a tier's answer into the conformer. A geometry that moved must
+// still be the same molecule.
+func (r *ligandRun) settle(tier int, c *Conformer, o outcome) error {
+	err := o.err
+	moved := err == nil && !slices.Equal(o.x, c.X)
+	if moved {
+		if err = sameBonds(r.ligand.Mol, o.x); err == nil {
+			err = r.ligand.Mol.StereoMatches(o.x)
+		}
+	}
+	if err != nil {
+		c.Why = fmt.Sprintf("%s: %v", r.tiers[tier].Name(), err)
+		return fmt.Errorf("conformer %d: %w", c.Number, err)
+	}
+	c.X, c.Energies[tier], c.Last = o.x, o.energy, tier
+	c.Doubts = append(c.Doubts, o.doubts...)
+	return nil
+}
+
+// dropDoubles keeps the lowest conformer of each shape.
+func (r *ligandRun) dropDoubles(tier int, which []int) {
+	xs := make([][]float64, len(which))
+	energies := make([]float64, len(which))
+	for k, i := range which {
+		xs[k], energies[k] = r.conformers[i].X, r.conformers[i].Energies[tier]
+	}
+	for _, group := range dedupe.Unique(r.comparer, xs, energies, dedupe.DefaultThresholds()) {
+		keep := &r.conformers[which[group.Keep]]
+		for _, m := range group.Members {
+			if m != group.Keep {
+				r.conformers[which[m]].Why = fmt.Sprintf("same shape as %d", keep.Number)
+			}
+		}
+	}
+}
+
+// weigh ranks what is left and gives every conformer its weight.
+func (r *ligandRun) weigh() {
+	kept := r.alive(len(r.tiers) - 1)
+	slices.SortStableFunc(kept, func(a, b int) int {
+		return cmp.Compare(r.conformers[a].Final(), r.conformers[b].Final())
+	})
+	shapes := make([][]float64, len(kept))
+	for k, i := range kept {
+		shapes[k] = r.conformers[i].X
+	}
+	copies, complete := ensemble.Copies(r.ligand.Mol, shapes)
+	if !complete {
+		r.warnf("the molecule has more symmetry than was searched: degeneracies count mirror images alone")
+	}
+	states := make([]ensemble.State, len(kept))
+	for k, i := range kept {
+		c := &r.conformers[i]
+		c.Rank, c.Copies, c.Why = k+1, copies[k], "kept"
+		states[k] = ensemble.State{Energy: c.Final(), Copies: float64(c.Copies)}
+	}
+	r.result.Kept = kept
+	for _, t := range r.options.Temperatures {
+		r.result.Ensembles = append(r.result.Ensembles, r.weights(states, t))
+	}
+	r.superpose(kept)
+}
+
+func (r *ligandRun) weights(states []ensemble.State, t float64) Weights {
+	w := Weights{Distribution: ensemble.Weigh(states, t)}
+	if scatter, known := r.tiers[len(r.tiers)-1].Scatter(r.ligand.Mol); known {
+		w.Bars = ensemble.Bars(states, t, scatter, [2]uint64{r.options.Seed, hash(r.ligand.SMILES)})
+	}
+	return w
+}
+
+// superpose lays every kept conformer onto the lowest one.
+func (r *ligandRun) superpose(kept []int) {
+	best := r.conformers[kept[0]].X
+	for _, i := range kept[1:] {
+		r.comparer.Superpose(best, r.conformers[i].X)
+	}
+}

@@ -1,0 +1,70 @@
+package screen
+
+import (
+	"fmt"
+	"slices"
+	"time"
+
+	"torsieve/screen/ensemble"
+)
+
+// A Status says how a ligand ended. The words stand in ligands.csv.
+type Status string
+
+// The ways in which a ligand can end.
+const (
+	Done       Status = "done"
+	Partial    Status = "partial" // an ensemble, but some conformers had no energy at a tier
+	Refused    Status = "refused" // nothing was computed: the reason is in the input
+	Failed     Status = "failed"  // a tier could not do what it should
+	Unreadable Status = "unreadable"
+	Stopped    Status = "stopped" // the run ended first
+)
+
+// A Conformer is one shape of a ligand and what the tiers found.
+type Conformer struct {
+	Number   int       // from 1, in the generator's order: its name in every file
+	X        []float64 // bohr; as the last relaxing tier left it
+	Family   int       // the generator's family of shapes
+	Energies []float64 // by tier, hartree; NaN where not computed
+	Last     int       // index of the last tier that computed it
+	Rank     int       // from 1 by final energy; 0: not in the ensemble
+	Copies   int       // see ensemble.Shape; 0: not in the ensemble
+	Why      string    // "kept", or why it went no further
+	Doubts   []string  // what a tier was not sure of
+}
+
+// Final is the energy that ranks, in hartree: the last tier's at the geometry
+// of the last tier that relaxes.
+func (c *Conformer) Final() float64 { return c.Energies[c.Last] }
+
+// A Result is what became of one ligand.
+type Result struct {
+	Ligand     *Ligand
+	Status     Status
+	Reason     string // of a status other than Done
+	Tiers      []string
+	Conformers []Conformer // in the order of their numbers
+	Kept       []int       // indexes into Conformers, by rank
+	Ensembles  []Weights   // one per temperature, over Kept
+	Entered    []int       // conformers that each tier looked at
+	Took       []time.Duration
+	Warnings   []string
+}
+
+// Weights is the ensemble at one temperature, with the bars of its populations.
+type Weights struct {
+	ensemble.Distribution
+	Bars []ensemble.Bar // nil where the tier's scatter is not known
+}
+
+// sharedWith is the result of another ligand with the same structure. The
+// geometries are those of the first, atoms in its order.
+func (r *Result) sharedWith(l *Ligand) *Result {
+	same := *r
+	same.Ligand = l
+	same.Warnings = append(slices.Clone(l.Warnings), r.Warnings[len(r.Ligand.Warnings):]...)
+	same.Warnings = append(same.Warnings, fmt.Sprintf("same structure as %s: computed once, atoms in its order", r.Ligand.ID))
+	same.Took = make([]time.Duration, len(r.Took))
+	return &same
+}

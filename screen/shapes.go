@@ -1,0 +1,23 @@
+package screen
+
+import (
+	"context"
+
+	"torsieve/internal/relax"
+	"torsieve/screen/generate"
+)
+
+// Shapes is the generator's answer for a ligand: distinct shapes, relaxed in the
+// force field, the shapes that the input gave among the starts. Random choices
+// depend on o.Seed and the structure, not on the ligand's id.
+func Shapes(ctx context.Context, l *Ligand, o generate.Options) (generate.Result, error) {
+	o.Start = l.Starts
+	return generate.Conformers(ctx, l.Mol, l.SMILES, o)
+}
+
+// RelaxDefaults says when a geometry of a quantum tier is done: its energy is
+// then within some 1e-5 hartree of the minimum's, its shape within some
+// hundredths of an angstrom.
+func RelaxDefaults() relax.Settings {
+	return relax.Settings{RMSGradient: 1e-4, MaxGradient: 4e-4, EnergyChange: 1e-6, MaxGradients: 500, Noise: 1e-7}
+}

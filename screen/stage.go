@@ -1,0 +1,133 @@
+package screen
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"slices"
+	"sync/atomic"
+	"time"
+
+	"golang.org/x/sync/errgroup"
+
+	"torsieve/internal/relax"
+	"torsieve/molecule"
+	"torsieve/molecule/load"
+)
+
+// An outcome is a tier's answer for one conformer: where it is and how high, or
+// why there is none.
+type outcome struct {
+	x      []float64 // bohr
+	energy float64   // hartree
+	doubts []string
+	err    error
+	took   time.Duration
+}
+
+// compute gives every conformer in which to a surface of the tier. out[i]
+// belongs to which[i] however the work was dealt out. Only a tier that cannot
+// take the molecule at all, or the end of ctx, ends it early.
+func (r *ligandRun) compute(ctx context.Context, tier int, which []int) ([]outcome, error) {
+	out := make([]outcome, len(which))
+	workers := min(len(which), r.options.Jobs)
+	g, ctx := errgroup.WithContext(ctx)
+	var next atomic.Int64
+	for range workers {
+		g.Go(func() error {
+			release, err := r.pool.hold(ctx, r.tiers[tier].Memory(r.ligand.Mol))
+			if err != nil {
+				return err
+			}
+			defer release()
+			return r.work(ctx, tier, which, &next, out)
+		})
+	}
+	err := g.Wait()
+	return out, err
+}
+
+// work is one worker of compute: a surface of its own, and the next conformer
+// until there is none.
+func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomic.Int64, out []outcome) error {
+	var surface Surface
+	for {
+		i := int(next.Add(1)) - 1
+		if i >= len(which) {
+			return nil
+		}
+		if surface == nil {
+			err := r.pool.unit(ctx, func() (err error) {
+				surface, err = r.tiers[tier].Surface(r.ligand.Mol)
+				return err
+			})
+			if err != nil {
+				return err
+			}
+		}
+		c := &r.conformers[which[i]]
+		var took time.Duration
+		err := r.pool.unit(ctx, func() error {
+			begun := r.options.Clock()
+			defer func() { took = r.options.Clock().Sub(begun) }()
+			surface.Reset() // or the answer would depend on who went before
+			out[i] = r.one(ctx, tier, surface, c)
+			return out[i].err
+		})
+		if ctx.Err() != nil {
+			return ctx.Err()
+		}
+		out[i].err, out[i].took = err, took
+		if errors.As(err, new(*Fault)) {
+			surface = nil // whatever state it was left in
+		}
+		r.tellComputed(tier, c, out[i])
+	}
+}
+
+// one computes one conformer: relaxed where the surface has a gradient, as it
+// stands where not.
+func (r *ligandRun) one(ctx context.Context, tier int, surface Surface, c *Conformer) outcome {
+	if err := load.CheckGeometry(r.ligand.Mol.Numbers(), c.X); err != nil {
+		return outcome{err: err}
+	}
+	if sloped, ok := surface.(Sloped); ok {
+		return r.relaxed(ctx, sloped, c.X)
+	}
+	p, err := surface.Energy(ctx, c.X)
+	return outcome{x: c.X, energy: p.Energy, doubts: p.Warnings, err: err}
+}
+
+func (r *ligandRun) relaxed(ctx context.Context, surface Sloped, from []float64) outcome {
+	x := slices.Clone(from)
+	set := r.options.Relax
+	set.Numbers = r.ligand.Mol.Numbers()
+	p, err := Relax(ctx, surface, x, set)
+	if err != nil {
+		return outcome{err: err}
+	}
+	return outcome{x: x, energy: p.Energy, doubts: p.Warnings}
+}
+
+// Relax moves x downhill on the surface, in place, and returns the point that
+// was reached. A relaxation that did not converge is an error.
+func Relax(ctx context.Context, surface Sloped, x []float64, set relax.Settings) (molecule.Point, error) {
+	var last molecule.Point
+	slope := relax.Func(func(ctx context.Context, grad, x []float64) (float64, error) {
+		p, err := surface.Gradient(ctx, grad, x)
+		last = p
+		return p.Energy, err
+	})
+	res, err := relax.Minimise(ctx, slope, x, set)
+	if err == nil {
+		err = res.Status.Err()
+	}
+	if errors.Is(err, relax.ErrGradientLimit) {
+		return molecule.Point{}, fmt.Errorf("not relaxed after %d gradients (rms %.1e hartree/bohr)", res.Gradients, res.RMSGradient)
+	}
+	if err != nil {
+		return molecule.Point{}, err
+	}
+	last.Energy = res.Energy
+	return last, nil
+}

@@ -1,0 +1,47 @@
+package screen
+
+import (
+	"context"
+
+	"torsieve/molecule"
+	"torsieve/screen/ensemble"
+)
+
+// A Tier is one level of theory. The interfaces stand here, with their only
+// user; the tiers do not import this package. Their surfaces fit by having the
+// methods, and cmd/torsieve makes a Tier of each.
+type Tier interface {
+	// Name is the tier's word in options, files and messages.
+	Name() string
+	// Method is what a paper would cite: "GFN2-xTB", "HF-3c".
+	Method() string
+	// Surface returns a new surface for m, or an error that says what of m the
+	// tier cannot take. It may be called by several goroutines at once.
+	Surface(m *molecule.Molecule) (Surface, error)
+	// Memory is an upper estimate of what one surface of m holds, in bytes.
+	Memory(m *molecule.Molecule) int64
+	// Scatter is how far conformer energies of this tier lie from the truth for
+	// a molecule like m, and whether that is known.
+	Scatter(m *molecule.Molecule) (s ensemble.Scatter, known bool)
+}
+
+// A Surface is a tier's energy for one molecule. It owns its scratch memory and
+// keeps its last converged state as the next start, so it serves one goroutine
+// at a time. Reset forgets that state.
+//
+// Energy takes 3N coordinates in bohr and neither keeps nor changes x. It
+// returns ctx.Err() soon after ctx ends; any other error is about x alone.
+type Surface interface {
+	Energy(ctx context.Context, x []float64) (molecule.Point, error)
+	Reset()
+}
+
+// A Sloped surface also has a gradient; hf's, for one, does not. A tier whose
+// surfaces are sloped relaxes the geometries that come to it, another one takes
+// them as they are.
+//
+// Gradient writes dE/dx in hartree/bohr into grad, len(grad) == len(x).
+type Sloped interface {
+	Surface
+	Gradient(ctx context.Context, grad, x []float64) (molecule.Point, error)
+}
