@@ -217,7 +217,7 @@ var inspected = map[string][]string{
 	"radical.smi":    {"ok propyl"},
 	"dup_names.smi":  {"ok lig", "ok lig"},
 	"path_name.smi":  {"ok ../../escape", "ok a/b:c*?"},
-	"long_chain.smi": {"smi:1: record 1 (long): SMILES with 100000 atoms besides hydrogen is over the limit of 5000"},
+	"long_chain.smi": {"smi:1: record 1 (long): SMILES with 100000 atoms besides hydrogen is over the limit of 1200"},
 }
 
 // hinted are warnings due where a later stage will refuse, or where something

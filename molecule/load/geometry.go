@@ -6,6 +6,7 @@ import (
 
 	"torsieve/internal/element"
 	"torsieve/internal/units"
+	"torsieve/molecule"
 )
 
 // Two atoms nearer than this, in bohr, are at the same place for all purposes:
@@ -41,4 +42,28 @@ func CheckGeometry(numbers []int, x []float64) error {
 		}
 	}
 	return nil
+}
+
+// longBond is the largest length of a bond, in sums of covalent radii, that is
+// taken for meant.
+const longBond = 1.6
+
+// stretched names the bond of a 3D record that is much too long, the worst of
+// them, or returns "".
+func stretched(m *molecule.Molecule, x []float64) string {
+	worst, text := longBond, ""
+	for _, b := range m.Bonds() {
+		zi, zj := m.Atom(b.A).Number, m.Atom(b.B).Number
+		reach := element.CovalentRadius(zi) + element.CovalentRadius(zj)
+		var d2 float64
+		for k := range 3 {
+			d2 += (x[3*b.A+k] - x[3*b.B+k]) * (x[3*b.A+k] - x[3*b.B+k])
+		}
+		if d := math.Sqrt(d2); reach > 0 && d > worst*reach {
+			worst = d / reach
+			text = fmt.Sprintf("the bond of atoms %d (%s) and %d (%s) is %.2f angstrom long: are the coordinates those of this molecule?",
+				b.A+1, element.Symbol(zi), b.B+1, element.Symbol(zj), d/units.Angstrom)
+		}
+	}
+	return text
 }

@@ -33,10 +33,12 @@ type Record struct {
 	Err      error // a *molecule.ParseError: why there is no molecule
 }
 
-// DefaultMaxAtoms is the largest number of atoms that are read for one record.
-// No tier can do much with a molecule of that size; the limit keeps mistakes
-// (a protein, a file glued together) from eating all memory.
-const DefaultMaxAtoms = 5000
+// DefaultMaxAtoms is the largest number of atoms in the text of one record;
+// hydrogens that a SMILES or a molfile leaves out are not counted. The limit
+// keeps mistakes (a protein, a file glued together) from eating minutes: what
+// is under it is understood within about a second, and no tier could do much
+// with more.
+const DefaultMaxAtoms = 1200
 
 // Options say what a file itself does not. The zero value is fine for files.
 type Options struct {
@@ -109,6 +111,9 @@ func finish(rec *Record) {
 	}
 	if err := CheckGeometry(rec.Mol.Numbers(), rec.X); err != nil {
 		rec.Warnings = append(rec.Warnings, err.Error())
+	}
+	if text := stretched(rec.Mol, rec.X); text != "" {
+		rec.Warnings = append(rec.Warnings, text)
 	}
 }
 

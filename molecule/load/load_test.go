@@ -266,6 +266,37 @@ func jsonString(s string) string {
 	return string(text)
 }
 
+func TestWriteSMILES(t *testing.T) {
+	for _, rec := range readFile(t, formats+"conformers.sdf.gz", Options{})[:40] {
+		var b strings.Builder
+		if err := WriteSMILES(&b, rec.Mol, "a\n b\t"+rec.ID); err != nil {
+			t.Fatal(err)
+		}
+		again := readText(t, b.String(), Options{Format: "smi"})
+		if len(again) != 1 || again[0].Err != nil || again[0].ID != "a\uFFFD b "+rec.ID || again[0].Mol.SMILES() != rec.Mol.SMILES() {
+			t.Errorf("%q is read as %s", b.String(), summary(again))
+		}
+	}
+}
+
+// A record whose coordinates belong to something else is used with a warning;
+// one that calls itself 3D and is a drawing is no geometry.
+func TestDoubtfulGeometry(t *testing.T) {
+	data, err := os.ReadFile(formats + "files/methanol.mol")
+	if err != nil {
+		t.Fatal(err)
+	}
+	long := strings.Replace(string(data), "    1.4250    0.0000", "    3.4250    0.0000", 1)
+	records := readText(t, long, Options{Format: "mol"})
+	if w := allWarnings(records); !strings.Contains(w, "the bond of atoms 1 (C) and 2 (O) is 3.42 angstrom long") {
+		t.Errorf("warnings %q", w)
+	}
+	flat := strings.NewReplacer("0.8900 H", "0.0000 H", "-0.8900 H", " 0.0000 H").Replace(string(data))
+	if records = readText(t, flat, Options{Format: "mol"}); len(records) != 1 || records[0].Err != nil || records[0].X != nil {
+		t.Errorf("a flat CH3 is taken for a geometry: %s", summary(records))
+	}
+}
+
 // Reading never panics, ends, and gives records or errors that can be shown.
 func FuzzText(f *testing.F) {
 	for _, pattern := range []string{"files/*", "hostile/*"} {

@@ -95,57 +95,6 @@ func (s *tableSource) readHeader(line string) error {
 	return nil
 }
 
-// column finds the column that the user names, or else the first that is good.
-func (s *tableSource) column(wanted string, good func(name string, exact bool) bool) (int, error) {
-	if wanted != "" {
-		for i, name := range s.header {
-			if strings.EqualFold(name, strings.TrimSpace(wanted)) {
-				return i, nil
-			}
-		}
-		return -1, fmt.Errorf("no column is called %s; there are %s", textline.Quote(wanted), s.columnNames())
-	}
-	for _, exact := range []bool{true, false} {
-		for i, name := range s.header {
-			if good(strings.ToLower(name), exact) {
-				return i, nil
-			}
-		}
-	}
-	return -1, nil
-}
-
-func isSmilesColumn(name string, exact bool) bool {
-	return name == "smiles" || !exact && strings.Contains(name, "smiles")
-}
-
-func isIDColumn(name string, exact bool) bool {
-	if name == "id" {
-		return true
-	}
-	if exact {
-		return false
-	}
-	switch name {
-	case "name", "title", "ligand", "compound", "molecule":
-		return true
-	}
-	return strings.HasSuffix(name, "_id") || strings.HasSuffix(name, " id") || strings.HasSuffix(name, "_name")
-}
-
-func (s *tableSource) columnNames() string {
-	const shown = 12
-	var names []string
-	for i, name := range s.header {
-		if i == shown {
-			names = append(names, "...")
-			break
-		}
-		names = append(names, textline.Quote(name))
-	}
-	return strings.Join(names, ", ")
-}
-
 // parse reads one row, which may run over several lines where a cell is quoted.
 func (s *tableSource) parse(rec Record, line string) Record {
 	cells, closed := splitCells(line, s.comma)
@@ -170,46 +119,4 @@ func (s *tableSource) parse(rec Record, line string) Record {
 		return rec.failed(s.file, fmt.Sprintf("the column %s is empty", textline.Quote(s.header[s.smiles])), nil)
 	}
 	return rec.parseSMILES(s.file, strings.TrimSpace(cells[s.smiles]), s.o.MaxAtoms)
-}
-
-// splitCells cuts a row at its commas. A cell may stand in double quotes, in
-// which two of them mean one (RFC 4180). closed is false if a quote is open at
-// the end.
-func splitCells(row string, comma byte) (cells []string, closed bool) {
-	for {
-		if strings.HasPrefix(row, `"`) {
-			cell, rest, ok := cutQuoted(row)
-			if !ok {
-				return append(cells, cell), false
-			}
-			if i := strings.IndexByte(rest, comma); i >= 0 {
-				cells, row = append(cells, cell+rest[:i]), rest[i+1:]
-				continue
-			}
-			return append(cells, cell+rest), true
-		}
-		i := strings.IndexByte(row, comma)
-		if i < 0 {
-			return append(cells, row), true
-		}
-		cells, row = append(cells, row[:i]), row[i+1:]
-	}
-}
-
-// cutQuoted takes a quoted cell off the front of row.
-func cutQuoted(row string) (cell, rest string, ok bool) {
-	var b strings.Builder
-	for i := 1; i < len(row); i++ {
-		if row[i] != '"' {
-			b.WriteByte(row[i])
-			continue
-		}
-		if i+1 < len(row) && row[i+1] == '"' {
-			b.WriteByte('"')
-			i++
-			continue
-		}
-		return b.String(), row[i+1:], true
-	}
-	return b.String(), "", false
 }

@@ -2,6 +2,7 @@ package sdf
 
 import (
 	"errors"
+	"fmt"
 	"io"
 	"os"
 	"path/filepath"
@@ -109,6 +110,45 @@ func TestOddities(t *testing.T) {
 				t.Errorf("got %s with charge %d, want %s with %d", m.Formula(), m.Charge(), tc.formula, tc.charge)
 			}
 		})
+	}
+}
+
+// Aromatic bonds without hydrogens: pyrrole and imidazole have one form each,
+// 4-methylimidazole two tautomers.
+func TestAromaticNitrogens(t *testing.T) {
+	ring := func(symbols ...string) string {
+		var lines []string
+		for n, s := range symbols {
+			lines = append(lines, fmt.Sprintf("%10.4f    0.0000    0.0000 %s   0  0", float64(n), s))
+		}
+		for n := range 5 {
+			lines = append(lines, fmt.Sprintf("%3d%3d  4  0", n+1, (n+1)%5+1))
+		}
+		if len(symbols) > 5 {
+			lines = append(lines, "  2  6  1  0")
+		}
+		return molfile(fmt.Sprintf("%3d%3d  0  0  0  0  0  0  0  0999 V2000", len(symbols), len(symbols)), append(lines, "M  END")...)
+	}
+	for _, tc := range []struct{ text, want string }{
+		{ring("N", "C", "C", "C", "C"), "C4H5N"},
+		{ring("N", "C", "N", "C", "C"), "C3H4N2"},
+		{ring("O", "C", "N", "C", "C"), "C3H3NO"},
+		{ring("C", "C", "N", "C", "N", "C"), "the aromatic rings leave open which of the nitrogens 3, 5 holds a hydrogen: 2 tautomers fit"},
+		{ring("C", "C", "C", "C", "C"), "no Kekule form"},
+	} {
+		records := readAll(t, tc.text)
+		if len(records) != 1 {
+			t.Fatalf("%d records", len(records))
+		}
+		got := ""
+		if r := records[0]; r.Err != nil {
+			got = r.Err.Error()
+		} else {
+			got = r.Mol.Formula()
+		}
+		if !strings.Contains(got, tc.want) {
+			t.Errorf("got %s, want %s", got, tc.want)
+		}
 	}
 }
 
