@@ -12,10 +12,25 @@ type Options struct {
 	SoftCore          bool   // repulsion without violence, for starting structures
 }
 
-// Defaults returns the variant that torsieve uses.
+// Defaults returns the variant that torsieve uses: all of ours.
+//
+// Measured on 1460 conformers of 150 molecules (D. Folmsbee, G. Hutchison, Int.
+// J. Quantum Chem. 2021, 121, e26381; reference DLPNO-CCSD(T)), the part whose
+// bonding the published force fields agree on. Mean absolute deviation of
+// relative energies in kcal/mol, at the given geometries and after relaxation;
+// last, the relaxed window that keeps 99 % of the conformers within 3 kcal/mol:
+//
+//	Reference              2.32  0.75  4.5
+//	with corrections       2.32  0.73  4.2
+//	with charges           2.29  0.75  4.1
+//	with both              2.28  0.72  3.9
+//	both, small polar H    1.36  0.70  3.8
+//
+// All are rough (conformers taken as equal deviate by 0.66): choose with a wide
+// window.
 func Defaults() Options {
 	return Options{
-		Charges: "eeq", Corrections: true, NitrogenInversion: true, Ammonium: true, SmallRings: true,
+		Charges: "eeq", Corrections: true, NitrogenInversion: true, Ammonium: true, SmallRings: true, PolarHydrogens: true,
 	}
 }
 

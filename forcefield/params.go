@@ -31,7 +31,7 @@ type atomType struct {
 	Class         class
 	MainGroup     bool
 	Radius        float64 // bohr, of a single bond
-	Angle         float64 // rad, natural angle at such an atom
+	Angle         float64 // rad, natural angle at such an atom; see radians
 	X             float64 // bohr, distance of the van der Waals minimum
 	D             float64 // hartree, depth of its well
 	Z             float64 // effective charge, e
@@ -65,7 +65,7 @@ var typeTable = sync.OnceValue(func() *table {
 	for _, f := range file.Types {
 		a := &atomType{
 			Name: f.Type, Number: f.Number, Class: class(f.Class), MainGroup: f.MainGroup,
-			Radius: f.R * units.Angstrom, Angle: f.Theta0 * math.Pi / 180,
+			Radius: f.R * units.Angstrom, Angle: radians(f.Theta0),
 			X: f.X * units.Angstrom, D: f.D * units.KcalPerMol, Z: f.Z,
 			V: f.V * units.KcalPerMol, U: f.U * units.KcalPerMol, Chi: f.Chi,
 		}
@@ -79,6 +79,20 @@ var typeTable = sync.OnceValue(func() *table {
 	}
 	return t
 })
+
+// radians converts degrees so that 90, 120 and 180, which choose the form of a
+// bend, come out as the constants that they are compared with.
+func radians(degrees float64) float64 {
+	switch degrees {
+	case 90:
+		return math.Pi / 2
+	case 120:
+		return trigonalAngle
+	case 180:
+		return math.Pi
+	}
+	return degrees * math.Pi / 180
+}
 
 func decode(name string, data []byte, into any) {
 	d := json.NewDecoder(bytes.NewReader(data))

@@ -47,10 +47,16 @@ func (s *skeleton) stretches() stretches {
 	return out
 }
 
+// trigonalAngle is the 120 degrees of the table. Tabulated whole fractions of a
+// turn are exact after conversion, see atomType.
+const trigonalAngle = 2 * math.Pi / 3
+
 // An angleRule replaces the natural angle of one bend, or returns 0.
 type angleRule func(i, j, k int) float64
 
-func (s *skeleton) bends(special angleRule) bends {
+// With open set, trigonal centres take the general form: theirs vanishes at 0
+// degrees too, where starting structures would collapse.
+func (s *skeleton) bends(special angleRule, open bool) bends {
 	var out bends
 	for j, arms := range s.arms {
 		for n, a := range arms {
@@ -58,6 +64,9 @@ func (s *skeleton) bends(special angleRule) bends {
 				angle := 0.0
 				if special != nil {
 					angle = special(a.atom, j, b.atom)
+				}
+				if t := s.types[j]; open && angle == 0 && t.Angle == trigonalAngle {
+					angle = trigonalAngle
 				}
 				out = append(out, bend{int32(a.atom), int32(j), int32(b.atom), s.bendShape(a, j, b, angle)})
 			}
@@ -88,15 +97,14 @@ func (s *skeleton) bendShape(a arm, j int, b arm, angle float64) [5]float64 {
 	case crowded:
 		return squareBend(k)
 	}
-	degrees := math.Round(natural*180e4/math.Pi) / 1e4 // as tabulated
 	switch {
-	case degrees == 180:
+	case natural == math.Pi:
 		return linearBend(k)
-	case degrees == 120:
+	case natural == trigonalAngle:
 		return trigonalBend(k)
-	case degrees == 90 && (t.digit() == '4' || t.digit() == '6'):
+	case natural == math.Pi/2 && (t.digit() == '4' || t.digit() == '6'):
 		return squareBend(k)
-	case degrees == 90:
+	case natural == math.Pi/2:
 		return rightBend(k)
 	}
 	return generalBend(k, c0)

@@ -39,6 +39,7 @@ type tables struct {
 	apart    []int8
 	hard     pairs
 	bonded   []term
+	open     []term   // bonded, for starting structures
 	names    []string // of the atom types
 }
 
@@ -57,7 +58,8 @@ func New(m *molecule.Molecule, o Options) (*Surface, error) {
 	}
 	tab := &tables{m: m, numbers: m.Numbers(), options: o, skeleton: t.skeleton(o), names: t.names}
 	tab.apart = tab.skeleton.bondsApart()
-	tab.bonded = tab.skeleton.bonded(o, t)
+	tab.bonded = tab.skeleton.bonded(o, t, false)
+	tab.open = tab.skeleton.bonded(o, t, true)
 	tab.hard = tab.skeleton.pairs(tab.apart, o.polarShare())
 	s := &Surface{tables: tab, warnings: t.warnings}
 	s.assemble(o.SoftCore)
@@ -87,7 +89,8 @@ func (t *typing) skeleton(o Options) *skeleton {
 
 // bonded returns the terms along bonds, in the order in which they are added
 // up and shown. t may be nil: then nothing beyond the published terms is known.
-func (s *skeleton) bonded(o Options, t *typing) []term {
+// open is that of bends.
+func (s *skeleton) bonded(o Options, t *typing, open bool) []term {
 	var angles angleRule
 	var scale func(int) float64
 	if t != nil {
@@ -97,7 +100,7 @@ func (s *skeleton) bonded(o Options, t *typing) []term {
 		scale = t.scale
 	}
 	terms := []term{
-		s.stretches(), s.bends(angles), s.torsions(scale), s.inversions(o.nitrogenBarrier() * units.KcalPerMol),
+		s.stretches(), s.bends(angles, open), s.torsions(scale), s.inversions(o.nitrogenBarrier() * units.KcalPerMol),
 	}
 	if t != nil && o.Corrections {
 		terms = append(terms, t.corrections(s))
@@ -105,16 +108,14 @@ func (s *skeleton) bonded(o Options, t *typing) []term {
 	return terms
 }
 
-// assemble lists the terms that count now.
+// assemble lists the terms that count now. Soft surfaces have no charges:
+// opposite ones would pull overlapping atoms together.
 func (s *Surface) assemble(soft bool) {
-	s.terms = append(s.terms[:0:0], s.tables.bonded...)
-	switch {
-	case soft:
-		s.terms = append(s.terms, softPairs(s.tables.hard))
-		return // opposite charges would pull overlapping atoms together
-	default:
-		s.terms = append(s.terms, s.tables.hard)
+	if soft {
+		s.terms = append(s.tables.open[:len(s.tables.open):len(s.tables.open)], softPairs(s.tables.hard))
+		return
 	}
+	s.terms = append(s.tables.bonded[:len(s.tables.bonded):len(s.tables.bonded)], s.tables.hard)
 	if s.charges != nil {
 		s.terms = append(s.terms, s.tables.coulomb(s.charges))
 	}
@@ -127,8 +128,9 @@ func (s *Surface) Clone() *Surface {
 	return &c
 }
 
-// Softened returns a clone with the soft core of Options.SoftCore and without
-// charges, for starting structures with clashes.
+// Softened returns a clone for starting structures with clashes: with the soft
+// core of Options.SoftCore, bends that open again from 0 degrees, and without
+// charges.
 func (s *Surface) Softened() *Surface {
 	c := s.Clone()
 	c.assemble(true)

@@ -91,7 +91,7 @@ func TestSingleBends(t *testing.T) {
 		near(t, what+" r_jk", s.links[1].length/ang, a.RJK, 6e-7)
 		k := bendConstant(types[0], types[2], s.links[0].length, s.links[1].length, math.Cos(types[1].Angle))
 		near(t, what+" K", k/kcal, a.KConst, 1e-4)
-		bs := s.bends(nil)
+		bs := s.bends(nil, false)
 		for degrees, want := range a.E {
 			near(t, what+" at "+degrees, bs.addTo(nil, angled(number(t, degrees)))/kcal, want, 2e-6)
 		}
