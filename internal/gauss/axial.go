@@ -1,6 +1,7 @@
 package gauss
 
 import (
+	"cmp"
 	"math"
 	"slices"
 )
@@ -14,8 +15,8 @@ const Operators = 9
 const maxAxial = 5
 
 // axialCut is the exponent beyond which a pair of primitives is left out:
-// exp(-32) is 1e-14.
-const axialCut = 32
+// exp(-30) is 1e-13.
+const axialCut = 30
 
 // An AxialPair computes the integrals <a| op |b> of two shells, up to d, for
 // the overlap, the dipole and the quadrupole with its origin on b's atom:
@@ -28,8 +29,10 @@ const axialCut = 32
 //
 // With the z axis along the bond, from b to a, every integral is a sum over
 // pairs of primitives of exp(-mu R^2) times a polynomial in R that is even or
-// odd, and most are zero. The polynomials depend on the two shells alone and
-// are worked out once; a Frame then turns the few numbers left into blocks.
+// odd, and most are zero or multiples of one another. The polynomials depend
+// on the two shells alone and are worked out once. For each bond, Integrals
+// gives the few numbers that are left, and Block and Slope make of them what is
+// wanted in the molecule's axes, with a Frame.
 // (One-dimensional moments of products of Gaussians: T. Helgaker, P. Jorgensen,
 // J. Olsen, Molecular Electronic-Structure Theory, 2000, chapter 9.)
 //
@@ -38,12 +41,12 @@ type AxialPair struct {
 	la, lb    int
 	mu        []float64 // alpha beta/(alpha+beta), ascending
 	integrals []axialIntegral
-	rows      []float64    // coefficients of exp(-mu R^2), len(mu) for each row
-	places    []axialPlace // where integrals stand in a block
+	rows      []float64   // coefficients of exp(-mu R^2), len(mu) for each row
+	places    axialPlaces // where integrals stand in a block
 
 	// turned says the same of the change of the block per radian when a moves
 	// along the bond's x, and y, and the bond turns.
-	turned [2][]axialPlace
+	turned [2]axialPlaces
 }
 
 // An axialIntegral is a distinct number in the bond's frame: the sum over t of
@@ -53,13 +56,32 @@ type axialIntegral struct {
 	odd         int
 }
 
-// An axialPlace says that element (a, b, op) of a block holds factor times an
-// integral.
+// An axialPlace says that an element of a block holds factor times an integral.
 type axialPlace struct {
-	a, b, op int
-	integral int
 	factor   float64
+	integral uint8
+	ab       uint8 // element, maxAxial a + b
+	op       uint8
 }
+
+// axialPlaces are the places of a block, those of the overlap first, then those
+// of the dipole, then those of the quadrupole.
+type axialPlaces struct {
+	overlap, dipole, quadrupole []axialPlace
+}
+
+func (p *axialPlaces) add(at axialPlace) {
+	switch operatorL(int(at.op)) {
+	case 0:
+		p.overlap = append(p.overlap, at)
+	case 1:
+		p.dipole = append(p.dipole, at)
+	default:
+		p.quadrupole = append(p.quadrupole, at)
+	}
+}
+
+func (p *axialPlaces) all() []axialPlace { return slices.Concat(p.overlap, p.dipole, p.quadrupole) }
 
 // NewAxialPair works out the table of two shells. Their atoms do not matter.
 // Panics beyond d shells and for Cartesian ones: a caller's mistake.
@@ -108,45 +130,49 @@ func (p *AxialPair) place(i, j, op int, poly [][]float64) {
 	}
 	for k, in := range p.integrals {
 		if factor, ok := multiple(rows, p.rows[in.first*len(p.mu):(in.first+in.rows)*len(p.mu)]); ok && in.odd == odd {
-			p.places = append(p.places, axialPlace{i, j, op, k, factor})
+			p.places.add(axialPlace{factor, uint8(k), uint8(maxAxial*i + j), uint8(op)})
 			return
 		}
 	}
-	p.places = append(p.places, axialPlace{i, j, op, len(p.integrals), 1})
+	p.places.add(axialPlace{1, uint8(len(p.integrals)), uint8(maxAxial*i + j), uint8(op)})
 	p.integrals = append(p.integrals, axialIntegral{first: len(p.rows) / len(p.mu), rows: len(rows) / len(p.mu), odd: odd})
 	p.rows = append(p.rows, rows...)
 }
 
 // turn lists how the block changes when the bond is turned about local axis
 // n (0: x, 1: y), times sign.
-func (p *AxialPair) turn(axis int, sign float64) []axialPlace {
-	sum := make(map[[4]int]float64)
-	for _, at := range p.places {
+func (p *AxialPair) turn(axis int, sign float64) axialPlaces {
+	sum := make(map[axialPlace]float64) // by element and integral
+	for _, at := range p.places.all() {
+		a, b, op := int(at.ab)/maxAxial, int(at.ab)%maxAxial, int(at.op)
 		add := func(a, b, op int, g float64) {
-			if g != 0 {
-				sum[[4]int{a, b, op, at.integral}] += sign * g * at.factor
-			}
+			sum[axialPlace{0, at.integral, uint8(maxAxial*a + b), uint8(op)}] += sign * g * at.factor
 		}
 		for m := range 2*p.la + 1 {
-			add(m, at.b, at.op, generator(p.la, axis, m, at.a))
+			add(m, b, op, generator(p.la, axis, m, a))
 		}
 		for m := range 2*p.lb + 1 {
-			add(at.a, m, at.op, generator(p.lb, axis, m, at.b))
+			add(a, m, op, generator(p.lb, axis, m, b))
 		}
-		l := operatorL(at.op)
+		l := operatorL(op)
 		for m := range 2*l + 1 {
-			add(at.a, at.b, l*l+m, generator(l, axis, m, at.op-l*l))
+			add(a, b, l*l+m, generator(l, axis, m, op-l*l))
 		}
 	}
-	var places []axialPlace
+	var found []axialPlace
 	for at, factor := range sum {
 		if math.Abs(factor) > 1e-14 {
-			places = append(places, axialPlace{at[0], at[1], at[2], at[3], factor})
+			at.factor = factor
+			found = append(found, at)
 		}
 	}
-	slices.SortFunc(places, func(s, t axialPlace) int {
-		return slices.Compare([]int{s.a, s.b, s.op, s.integral}, []int{t.a, t.b, t.op, t.integral})
+	slices.SortFunc(found, func(s, t axialPlace) int {
+		return cmp.Or(cmp.Compare(s.ab, t.ab), cmp.Compare(s.op, t.op), cmp.Compare(s.integral, t.integral))
 	})
+	var places axialPlaces
+	for _, at := range found {
+		places.add(at)
+	}
 	return places
 }
 

@@ -23,7 +23,8 @@ import "math"
 // the exponents before the geometry comes in: P. M. W. Gill, J. A. Pople, Int.
 // J. Quantum Chem. 1991, 40, 753, doi:10.1002/qua.560400605.
 type batch struct {
-	cut float64 // products of primitives below it are left out
+	cut    float64 // products of primitives below it are left out
+	kernel potentialKernel
 
 	// Ket primitives. Lane k: exponent sum q, centre, c, h, s as in primitive.
 	lanes               int
@@ -31,7 +32,7 @@ type batch struct {
 	kets                int
 	begin               [maxKets + 1]int // lanes of each ket
 	ket                 [maxKets]*shellPair
-	col                 [maxKets]int
+	row                 [maxKets]int
 	largest             float64 // largest |c|
 
 	// Of one bra primitive and all lanes: P-Q and the scaled Boys functions
@@ -56,9 +57,9 @@ func braSums(bra *shellPair) int {
 	return [...]int{classSS: 1, classPS: 4, classPP: 14, classAny: bra.nf}[bra.class]
 }
 
-// batches fills the columns of the kets lo..hi of one class in the rows of a
-// block.
-func (r *Repulsion) batches(dst []float64, cols, bra, lo, hi int, skip func(int) bool) {
+// batches fills the rows of the kets lo..hi of one class, the first of which
+// dst begins with.
+func (r *Repulsion) batches(dst []float64, bra, lo, hi int, skip func(int) bool) {
 	b, p := &r.batch, &r.pairs[bra]
 	base := r.pairs[lo].first
 	b.reset()
@@ -68,19 +69,19 @@ func (r *Repulsion) batches(dst []float64, cols, bra, lo, hi int, skip func(int)
 		}
 		ket := &r.pairs[k]
 		if b.full(ket) {
-			r.flush(dst, cols, p)
+			r.flush(dst, p)
 		}
 		b.add(p, ket, ket.first-base)
 	}
-	r.flush(dst, cols, p)
+	r.flush(dst, p)
 }
 
 // flush integrates what the batch holds and empties it.
-func (r *Repulsion) flush(dst []float64, cols int, bra *shellPair) {
+func (r *Repulsion) flush(dst []float64, bra *shellPair) {
 	b := &r.batch
 	b.integrate(bra)
 	for k := range b.kets {
-		r.scatter(dst[b.col[k]:], cols, bra, b.ket[k], b.finish(bra, k))
+		r.scatter(dst[b.row[k]*bra.unique:], bra, b.ket[k], b.finish(bra, k))
 	}
 	b.reset()
 }
@@ -102,11 +103,11 @@ func (b *batch) full(ket *shellPair) bool {
 }
 
 // add appends the primitives of a ket that count beside the bra's largest.
-func (b *batch) add(bra, ket *shellPair, col int) {
+func (b *batch) add(bra, ket *shellPair, row int) {
 	least := b.cut / math.Abs(bra.prims[0].c)
 	b.begin[b.kets] = b.lanes
 	b.ket[b.kets] = ket
-	b.col[b.kets] = col
+	b.row[b.kets] = row
 	n := b.lanes
 	for i := range ket.prims {
 		q := &ket.prims[i]

@@ -10,10 +10,10 @@ import (
 // another. It owns scratch memory and serves one goroutine at a time.
 //
 // Integrals come in blocks. A block belongs to one pair of shells, the bra; its
-// rows are the bra's pairs of functions and its columns the pairs of functions
-// of all kets that are not after the bra in a fixed order of pairs and whose
-// Schwarz bound times the bra's passes the threshold. So each integral comes
-// once. It carries a factor 1/2 for a = b, for c = d, and for the bra being the
+// rows are the pairs of functions of all kets that are not after the bra in a
+// fixed order of pairs and whose Schwarz bound times the bra's passes the
+// threshold, and its columns the bra's pairs of functions. So each integral
+// comes once. It carries a factor 1/2 for a = b, for c = d, and for the bra being the
 // ket: what a Coulomb and an exchange sum over all permutations asks for.
 //
 // Source of the bound: M. Haser, R. Ahlrichs, J. Comput. Chem. 1989, 10, 104,
@@ -38,6 +38,7 @@ type Repulsion struct {
 // NewRepulsion returns an engine for the shells. They are kept, not copied.
 func NewRepulsion(shells []Shell) *Repulsion {
 	r := &Repulsion{shells: shells, offsets: Offsets(shells)}
+	r.batch.kernel = activePotentials()
 	total, squares := 0, 0
 	for i := range shells {
 		n := len(shells[i].Exps)
@@ -70,8 +71,8 @@ func (r *Repulsion) Pairs() int { return len(r.pairs) }
 // in which blocks number them. The slices change with Place.
 func (r *Repulsion) Functions() (first, second []int32) { return r.first, r.second }
 
-// Rows returns the pairs of functions of a bra: from begin up to end.
-func (r *Repulsion) Rows(bra int) (begin, end int) {
+// Columns returns the pairs of functions of a bra: from begin up to end.
+func (r *Repulsion) Columns(bra int) (begin, end int) {
 	p := &r.pairs[bra]
 	return p.first, p.first + p.unique
 }
@@ -79,10 +80,10 @@ func (r *Repulsion) Rows(bra int) (begin, end int) {
 // A Span is a range of pairs of functions, End not included.
 type Span struct{ Begin, End int }
 
-// Columns appends the ranges of ket functions of a bra's block to dst, which it
+// Rows appends the ranges of ket functions of a bra's block to dst, which it
 // returns with their number. Ket pairs inside a range are ordered by falling
 // bound.
-func (r *Repulsion) Columns(dst []Span, bra int) ([]Span, int) {
+func (r *Repulsion) Rows(dst []Span, bra int) ([]Span, int) {
 	n := 0
 	for c := range r.pairs[bra].class + 1 {
 		if lo, hi := r.kets(bra, c); hi > lo {
@@ -116,76 +117,84 @@ func (r *Repulsion) Bound(pair int) (bound float64, i, j int) {
 // left at zero.
 func (r *Repulsion) Block(dst []float64, bra int, skip func(ket int) bool) {
 	p := &r.pairs[bra]
-	_, cols := r.Columns(nil, bra)
-	if len(dst) != cols*p.unique {
+	var buffer [classes]Span
+	_, rows := r.Rows(buffer[:0], bra)
+	if len(dst) != rows*p.unique {
 		panic("gauss: Block: slice of the wrong length")
 	}
 	if skip != nil {
 		clear(dst)
 	}
-	at := 0
 	for c := range p.class + 1 {
 		lo, hi := r.kets(bra, c)
 		if hi == lo {
 			continue
 		}
-		base := r.pairs[lo].first
 		if c == classAny {
+			base := r.pairs[lo].first
 			for k := lo; k < hi; k++ {
 				if skip == nil || !skip(k) {
 					ket := &r.pairs[k]
-					r.scatter(dst[at+ket.first-base:], cols, p, ket, r.quartet.integrals(p, ket))
+					r.scatter(dst[(ket.first-base)*p.unique:], p, ket, r.quartet.integrals(p, ket))
 				}
 			}
 		} else {
-			r.batches(dst[at:], cols, bra, lo, hi, skip)
+			r.batches(dst, bra, lo, hi, skip)
 		}
-		at += r.pairs[hi-1].first + r.pairs[hi-1].unique - base
+		dst = dst[(r.pairs[hi-1].first+r.pairs[hi-1].unique-r.pairs[lo].first)*p.unique:]
 	}
 }
 
-// scatter writes one quartet, nf_bra by nf_ket, into the rows of a block, each
-// unique pair once and with its factor.
-func (r *Repulsion) scatter(dst []float64, cols int, bra, ket *shellPair, v []float64) {
+// scatter writes one quartet, given as nf_bra by nf_ket, as rows of a block,
+// each unique pair once and with its factor.
+func (r *Repulsion) scatter(dst []float64, bra, ket *shellPair, v []float64) {
 	if bra.i != bra.j && ket.i != ket.j && bra != ket {
-		for row := range bra.nf {
-			copy(dst[row*cols:], v[row*ket.nf:(row+1)*ket.nf])
+		n, m := bra.nf, ket.nf
+		v = v[:n*m]
+		for row := range m {
+			out := dst[row*n:][:n]
+			for col := range out {
+				out[col] = v[col*m+row]
+			}
 		}
 		return
 	}
-	f := 1.0
-	if bra == ket {
-		f = 0.5
-	}
-	na, nb := r.shells[bra.i].Size(), r.shells[bra.j].Size()
-	nc, nd := r.shells[ket.i].Size(), r.shells[ket.j].Size()
+	nb, nd := r.shells[bra.j].Size(), r.shells[ket.j].Size()
 	row := 0
-	for a := range na {
-		for b := range nb {
-			if bra.i == bra.j && b > a {
+	for c := range r.shells[ket.i].Size() {
+		for d := range nd {
+			if ket.i == ket.j && d > c {
 				break
 			}
-			out, in := dst[row*cols:], v[(a*nb+b)*ket.nf:]
 			col := 0
-			for c := range nc {
-				for d := range nd {
-					if ket.i == ket.j && d > c {
+			for a := range r.shells[bra.i].Size() {
+				for b := range nb {
+					if bra.i == bra.j && b > a {
 						break
 					}
-					g := f
-					if bra.i == bra.j && a == b {
-						g *= 0.5
-					}
-					if ket.i == ket.j && c == d {
-						g *= 0.5
-					}
-					out[col] = g * in[c*nd+d]
+					f := share(bra, ket, a == b, c == d)
+					dst[row*bra.unique+col] = f * v[(a*nb+b)*ket.nf+c*nd+d]
 					col++
 				}
 			}
 			row++
 		}
 	}
+}
+
+// share is the factor that an integral (ab|cd) carries.
+func share(bra, ket *shellPair, ab, cd bool) float64 {
+	f := 1.0
+	if bra == ket {
+		f *= 0.5
+	}
+	if bra.i == bra.j && ab {
+		f *= 0.5
+	}
+	if ket.i == ket.j && cd {
+		f *= 0.5
+	}
+	return f
 }
 
 // bounds computes the Schwarz bound of every pair.
@@ -215,3 +224,6 @@ func (r *Repulsion) one(bra, ket *shellPair) []float64 {
 
 // Threshold returns what Place was given, hartree.
 func (r *Repulsion) Threshold() float64 { return r.threshold }
+
+// Shell returns shell number i.
+func (r *Repulsion) Shell(i int) *Shell { return &r.shells[i] }

@@ -16,15 +16,15 @@ func fullList(shells []gauss.Shell, x []float64) ([]float64, int) {
 	r.Place(x, 1e-14)
 	first, second := r.Functions()
 	for bra := range r.Pairs() {
-		spans, cols := r.Columns(nil, bra)
-		lo, hi := r.Rows(bra)
-		v := make([]float64, cols*(hi-lo))
+		spans, rows := r.Rows(nil, bra)
+		lo, hi := r.Columns(bra)
+		v := make([]float64, rows*(hi-lo))
 		r.Block(v, bra, nil)
 		at := 0
-		for row := lo; row < hi; row++ {
-			for _, s := range spans {
-				for k := s.Begin; k < s.End; k++ {
-					place(all, n, int(first[row]), int(second[row]), int(first[k]), int(second[k]), v[at])
+		for _, s := range spans {
+			for k := s.Begin; k < s.End; k++ {
+				for col := lo; col < hi; col++ {
+					place(all, n, int(first[col]), int(second[col]), int(first[k]), int(second[k]), v[at])
 					at++
 				}
 			}

@@ -86,7 +86,9 @@ func TestAxialBlocks(t *testing.T) {
 					got[k] = math.NaN() // must be overwritten
 				}
 				f := NewFrame(v)
-				pair.Block(&s, &f, got, stride)
+				value := make([]float64, pair.Size())
+				pair.Integrals(&s, f.R, value, nil)
+				pair.Block(&s, &f, value, got, stride)
 				for i := range want {
 					for j := range want[i] {
 						for op, w := range want[i][j] {
@@ -111,10 +113,10 @@ func TestAxialSlope(t *testing.T) {
 			var w Weights
 			for a := range 2*la + 1 {
 				for b := range 2*lb + 1 {
-					w.Overlap[a][b], w.Density[a][b] = rng.NormFloat64(), rng.NormFloat64()
+					w.Overlap[WeightsRow*a+b], w.Density[WeightsRow*a+b] = rng.NormFloat64(), rng.NormFloat64()
 				}
 			}
-			for op := range w.Operator {
+			for op := range Operators {
 				w.Operator[op] = rng.NormFloat64()
 			}
 			for _, v := range bonds {
@@ -122,8 +124,11 @@ func TestAxialSlope(t *testing.T) {
 					gradcheck.Run(t, v[:], 1e-3, 1e-9, func(x, grad []float64) float64 {
 						f := NewFrame([3]float64(x))
 						if grad != nil {
-							scratch := w // Slope turns its weights
-							g := pair.Slope(&s, &f, &scratch)
+							scratch := w // is turned
+							scratch.ToBond(&f)
+							value, slope := make([]float64, pair.Size()), make([]float64, pair.Size())
+							pair.Integrals(&s, f.R, value, slope)
+							g := pair.Slope(&f, value, slope, &scratch)
 							copy(grad, g[:])
 						}
 						return weighted(pair, &s, &f, &w)
@@ -138,14 +143,16 @@ func TestAxialSlope(t *testing.T) {
 func weighted(p *AxialPair, s *Scratch, f *Frame, w *Weights) float64 {
 	stride := (2*p.lb + 1) * Operators
 	x := make([]float64, (2*p.la+1)*stride)
-	p.Block(s, f, x, stride)
+	value := make([]float64, p.Size())
+	p.Integrals(s, f.R, value, nil)
+	p.Block(s, f, value, x, stride)
 	var sum float64
 	for a := range 2*p.la + 1 {
 		for b := range 2*p.lb + 1 {
 			at := x[a*stride+b*Operators:]
-			sum += w.Overlap[a][b] * at[0]
+			sum += w.Overlap[WeightsRow*a+b] * at[0]
 			for op := 1; op < Operators; op++ {
-				sum += w.Density[a][b] * w.Operator[op] * at[op]
+				sum += w.Density[WeightsRow*a+b] * w.Operator[op] * at[op]
 			}
 		}
 	}
@@ -156,11 +163,10 @@ func weighted(p *AxialPair, s *Scratch, f *Frame, w *Weights) float64 {
 // Gaussian, <x^2> = 1/(4 alpha) for s, three times that along x for p_x.
 func TestAxialOneCentre(t *testing.T) {
 	const alpha = 0.7
-	var s Scratch
 	for l := range 2 {
 		norm := math.Pow(2*alpha/math.Pi, 0.75) * math.Pow(4*alpha, float64(l)/2)
 		shell := Shell{L: l, Exps: []float64{alpha}, Coefs: []float64{norm}}
-		x := OneCentre(&s, &shell, &shell)
+		x := OneCentre(&shell, &shell)
 		last := x[len(x)-Operators:] // s, or p_z with itself
 		if math.Abs(last[0]-1) > 1e-14 || last[3] != 0 {
 			t.Errorf("l %d: overlap %.15g, dipole %g", l, last[0], last[3])
@@ -186,9 +192,11 @@ func BenchmarkAxialBlock(b *testing.B) {
 			var s Scratch
 			dst := make([]float64, 9*Operators)
 			f := NewFrame(bonds[0])
+			value := make([]float64, pair.Size())
 			b.ReportAllocs()
 			for b.Loop() {
-				pair.Block(&s, &f, dst, (2*tc.b.L+1)*Operators)
+				pair.Integrals(&s, f.R, value, nil)
+				pair.Block(&s, &f, value, dst, (2*tc.b.L+1)*Operators)
 			}
 		})
 	}

@@ -1,31 +1,41 @@
 package gauss
 
 // Weights are the factors with which the integrals of two shells enter a
-// quantity: Overlap[a][b] of the overlap, and Density[a][b] times Operator[op]
-// of the other operators (Operator[0] is not used).
+// quantity: Overlap of the overlap, and Density times Operator[op] of the other
+// operators (Operator[0] is not used). Element (a, b) of both matrices stands
+// at WeightsRow a + b.
 type Weights struct {
-	Overlap, Density [maxAxial][maxAxial]float64
-	Operator         [Operators]float64
+	Overlap, Density [32]float64
+	Operator         [16]float64
+}
+
+// WeightsRow is the length of a row of Weights.
+const WeightsRow = maxAxial
+
+// ToBond takes the operators' weights into the axes of the bond, which Slope
+// expects of them.
+func (w *Weights) ToBond(f *Frame) {
+	turn3(f, w.Operator[1:4])
+	turn5(f, w.Operator[4:9])
 }
 
 // Slope returns the derivative of
 //
-//	sum_ab Overlap[a][b] S_ab + sum_ab sum_op Density[a][b] Operator[op] X_ab,op
+//	sum_ab Overlap[a,b] S_ab + sum_ab sum_op Density[a,b] Operator[op] X_ab,op
 //
 // with respect to the position of the first atom, the origin of the operators
-// riding on the second; with respect to the second it is the negative. The
-// weights are given in the molecule's axes and come back in the bond's.
+// riding on the second; with respect to the second it is the negative. value
+// and slope hold what Integrals gave. The matrices are given in the molecule's
+// axes and come back in the bond's; Operator is in the bond's.
 //
 // Along the bond it is the slope of the integrals with the distance; moving an
 // atom across the bond by dx turns the bond by dx/R, and the block turns with
 // it.
-func (p *AxialPair) Slope(s *Scratch, f *Frame, w *Weights) [3]float64 {
-	p.slopes(s, f.R)
-	w.turnDensities(f, p.la, p.lb)
-	w.turnOperator(f)
-	along := p.contract(p.places, s.slope[:], w)
-	x := p.contract(p.turned[0], s.value[:], w) / f.R
-	y := p.contract(p.turned[1], s.value[:], w) / f.R
+func (p *AxialPair) Slope(f *Frame, value, slope []float64, w *Weights) [3]float64 {
+	w.turn(f, p.la, p.lb)
+	along := p.places.contract(slope, w)
+	x := p.turned[0].contract(value, w) / f.R
+	y := p.turned[1].contract(value, w) / f.R
 	var g [3]float64
 	for k := range g {
 		g[k] = f.axes[0][k]*x + f.axes[1][k]*y + f.axes[2][k]*along
@@ -33,66 +43,67 @@ func (p *AxialPair) Slope(s *Scratch, f *Frame, w *Weights) [3]float64 {
 	return g
 }
 
-func (p *AxialPair) contract(places []axialPlace, numbers []float64, w *Weights) float64 {
-	var sum float64
-	for k := range places {
-		at := &places[k]
-		v := at.factor * numbers[at.integral]
-		if at.op == 0 {
-			sum += v * w.Overlap[at.a][at.b]
-		} else {
-			sum += v * w.Density[at.a][at.b] * w.Operator[at.op]
-		}
+func (p *axialPlaces) contract(numbers []float64, w *Weights) float64 {
+	var overlap, dipole, quadrupole float64
+	for _, at := range p.overlap {
+		overlap += at.factor * numbers[at.integral] * w.Overlap[at.ab&31]
 	}
-	return sum
-}
-
-// turnDensities takes both matrices into the bond's axes.
-func (w *Weights) turnDensities(f *Frame, la, lb int) {
-	for _, m := range []*[maxAxial][maxAxial]float64{&w.Overlap, &w.Density} {
-		if lb > 0 {
-			for a := range 2*la + 1 {
-				f.toBond(lb, &m[a])
-			}
-		}
-		if la > 0 {
-			for b := range 2*lb + 1 {
-				var column [maxAxial]float64
-				for a := range 2*la + 1 {
-					column[a] = m[a][b]
-				}
-				f.toBond(la, &column)
-				for a := range 2*la + 1 {
-					m[a][b] = column[a]
-				}
-			}
-		}
+	for _, at := range p.dipole {
+		dipole += at.factor * numbers[at.integral] * w.Density[at.ab&31] * w.Operator[at.op&15]
 	}
+	for _, at := range p.quadrupole {
+		quadrupole += at.factor * numbers[at.integral] * w.Density[at.ab&31] * w.Operator[at.op&15]
+	}
+	return overlap + dipole + quadrupole
 }
 
-func (w *Weights) turnOperator(f *Frame) {
-	var p, d [maxAxial]float64
-	copy(p[:], w.Operator[1:4])
-	copy(d[:], w.Operator[4:])
-	f.toBond(1, &p)
-	f.toBond(2, &d)
-	copy(w.Operator[1:4], p[:])
-	copy(w.Operator[4:], d[:])
+// turn takes both matrices into the bond's axes.
+func (w *Weights) turn(f *Frame, la, lb int) {
+	turnMatrix(&w.Overlap, f, la, lb)
+	turnMatrix(&w.Density, f, la, lb)
 }
 
-// toBond takes the weights of a shell's functions into the bond's axes.
-func (f *Frame) toBond(l int, w *[maxAxial]float64) {
-	in := *w
-	switch l {
+func turnMatrix(m *[32]float64, f *Frame, la, lb int) {
+	switch lb {
 	case 1:
-		for k := range 3 {
-			axis := &f.axes[k]
-			w[k] = axis[0]*in[0] + axis[1]*in[1] + axis[2]*in[2]
+		for a := range 2*la + 1 {
+			turn3(f, m[maxAxial*a:])
 		}
 	case 2:
-		for k := range 5 {
-			d := &f.d[k]
-			w[k] = d[0]*in[0] + d[1]*in[1] + d[2]*in[2] + d[3]*in[3] + d[4]*in[4]
+		for a := range 2*la + 1 {
+			turn5(f, m[maxAxial*a:])
 		}
+	}
+	if la == 0 {
+		return
+	}
+	for b := range 2*lb + 1 {
+		column := [maxAxial]float64{m[b], m[maxAxial+b], m[2*maxAxial+b], m[3*maxAxial+b], m[4*maxAxial+b]}
+		if la == 1 {
+			turn3(f, column[:])
+		} else {
+			turn5(f, column[:])
+		}
+		for a := range 2*la + 1 {
+			m[maxAxial*a+b] = column[a]
+		}
+	}
+}
+
+// turn3 takes the weights of x, y and z into the bond's axes.
+func turn3(f *Frame, w []float64) {
+	u, v, x := w[0], w[1], w[2]
+	for k := range 3 {
+		axis := &f.axes[k]
+		w[k] = axis[0]*u + axis[1]*v + axis[2]*x
+	}
+}
+
+// turn5 takes the weights of the five d harmonics into the bond's axes.
+func turn5(f *Frame, w []float64) {
+	in := [5]float64(w)
+	for k := range 5 {
+		d := &f.d[k]
+		w[k] = d[0]*in[0] + d[1]*in[1] + d[2]*in[2] + d[3]*in[3] + d[4]*in[4]
 	}
 }

@@ -45,6 +45,11 @@ func (b *batch) potentials(p *primitive, top int) {
 		b.highPotentials(p, top)
 		return
 	}
+	b.kernel(b, p, top)
+}
+
+// potentialsGo is the potentialKernel for every processor.
+func potentialsGo(b *batch, p *primitive, top int) {
 	n := b.lanes
 	q, x, y, z, c := b.q[:n], b.x[:n], b.y[:n], b.z[:n], b.c[:n]
 	dx, dy, dz := b.dx[:n], b.dy[:n], b.dz[:n]

@@ -179,9 +179,9 @@ func compareBlocks(t *testing.T, shells []Shell, x []float64, tol float64) {
 	r := NewRepulsion(shells)
 	r.Place(x, 1e-14)
 	for bra := range r.Pairs() {
-		spans, cols := r.Columns(nil, bra)
-		lo, hi := r.Rows(bra)
-		got := make([]float64, cols*(hi-lo))
+		spans, rows := r.Rows(nil, bra)
+		lo, hi := r.Columns(bra)
+		got := make([]float64, rows*(hi-lo))
 		for i := range got {
 			got[i] = math.NaN()
 		}
@@ -199,32 +199,32 @@ func compareBlocks(t *testing.T, shells []Shell, x []float64, tol float64) {
 						shells[k.i].L, shells[k.j].L, i, one[i], w)
 				}
 			}
-			checkScatter(t, r, got, cols, column(spans, k.first), b, k, want, tol)
+			checkScatter(t, r, got, rowOf(spans, k.first), b, k, want, tol)
 		}
 	}
 }
 
-func inside(spans []Span, at int) bool { return column(spans, at) >= 0 }
+func inside(spans []Span, at int) bool { return rowOf(spans, at) >= 0 }
 
-// column returns the column of a pair of functions in a block, -1 if it is not
+// rowOf returns the row of a pair of functions in a block, -1 if it is not
 // there.
-func column(spans []Span, at int) int {
-	col := 0
+func rowOf(spans []Span, at int) int {
+	row := 0
 	for _, s := range spans {
 		if at >= s.Begin && at < s.End {
-			return col + at - s.Begin
+			return row + at - s.Begin
 		}
-		col += s.End - s.Begin
+		row += s.End - s.Begin
 	}
 	return -1
 }
 
 // checkScatter compares one quartet's elements inside a block, factors and all.
-func checkScatter(t *testing.T, r *Repulsion, block []float64, cols, col int, b, k *shellPair, want []float64, tol float64) {
+func checkScatter(t *testing.T, r *Repulsion, block []float64, at int, b, k *shellPair, want []float64, tol float64) {
 	t.Helper()
-	for row := range b.unique {
+	for col := range b.unique {
 		for c := range k.unique {
-			f1, f2 := int(r.first[b.first+row]), int(r.second[b.first+row])
+			f1, f2 := int(r.first[b.first+col]), int(r.second[b.first+col])
 			f3, f4 := int(r.first[k.first+c]), int(r.second[k.first+c])
 			a, bb := f1-r.offsets[b.i], f2-r.offsets[b.j]
 			cc, d := f3-r.offsets[k.i], f4-r.offsets[k.j]
@@ -238,7 +238,7 @@ func checkScatter(t *testing.T, r *Repulsion, block []float64, cols, col int, b,
 			if b == k {
 				w /= 2
 			}
-			if got := block[row*cols+col+c]; !(math.Abs(got-w) <= tol) {
+			if got := block[(at+c)*b.unique+col]; !(math.Abs(got-w) <= tol) {
 				t.Fatalf("block (%d %d|%d %d) = %.15g, want %.15g", f1, f2, f3, f4, got, w)
 			}
 		}

@@ -3,6 +3,8 @@ package scf
 import (
 	"math"
 	"slices"
+
+	"gonum.org/v1/gonum/blas/gonum"
 )
 
 // A Broyden mixes a state by the modified Broyden method: all iterations so
@@ -124,10 +126,7 @@ func (b *Broyden) correct(residual []float64) {
 	}
 	solveSymmetric(matrix, right, n)
 	for k := range n {
-		factor := b.weights[k] * right[k]
-		for i, u := range b.steps[k] {
-			b.state[i] -= factor * u
-		}
+		gonum.Implementation{}.Daxpy(len(b.state), -b.weights[k]*right[k], b.steps[k], 1, b.state, 1)
 	}
 }
 
@@ -162,9 +161,5 @@ func solveSymmetric(a, x []float64, n int) {
 }
 
 func inner(x, y []float64) float64 {
-	var sum float64
-	for i, v := range x {
-		sum += v * y[i]
-	}
-	return sum
+	return gonum.Implementation{}.Ddot(len(x), x, 1, y, 1)
 }

@@ -1,0 +1,5 @@
+//go:build !amd64
+
+package gauss
+
+func potentialKernels() map[string]potentialKernel { return nil }
