@@ -22,6 +22,8 @@ type fockBuilder struct {
 
 	packed  []float64 // density by pairs of functions
 	coulomb []float64 // likewise
+	columns []float64 // of one bra
+	near    local
 	bounds  densityBounds
 }
 
@@ -56,11 +58,11 @@ func (f *fockBuilder) measure() (total, largest int) {
 	f.begin = f.begin[:0]
 	for bra := range f.rep.Pairs() {
 		f.begin = append(f.begin, total)
-		var cols int
-		f.spans, cols = f.rep.Columns(f.spans[:0], bra)
-		lo, hi := f.rep.Rows(bra)
-		total += cols * (hi - lo)
-		largest = max(largest, cols*(hi-lo))
+		var rows int
+		f.spans, rows = f.rep.Rows(f.spans[:0], bra)
+		lo, hi := f.rep.Columns(bra)
+		total += rows * (hi - lo)
+		largest = max(largest, rows*(hi-lo))
 	}
 	f.begin = append(f.begin, total)
 	return total, largest
@@ -115,50 +117,6 @@ func (f *fockBuilder) build(ctx context.Context, total []float64, spins [][]floa
 		addTranspose(k, f.n)
 	}
 	return nil
-}
-
-// digest adds the integrals of one block to the sums.
-func (f *fockBuilder) digest(bra int, v []float64, spins, ks [][]float64) {
-	first, second := f.rep.Functions()
-	f.spans, _ = f.rep.Columns(f.spans[:0], bra)
-	lo, hi := f.rep.Rows(bra)
-	for row := lo; row < hi; row++ {
-		a, b := int(first[row])*f.n, int(second[row])*f.n
-		sum, density := 0.0, f.packed[row]
-		for _, s := range f.spans {
-			w := v[:s.End-s.Begin]
-			v = v[s.End-s.Begin:]
-			sum += dotAndAdd(w, f.packed[s.Begin:s.End], f.coulomb[s.Begin:s.End], density)
-			for k, p := range spins {
-				exchange(w, first[s.Begin:s.End], second[s.Begin:s.End],
-					p[a:a+f.n], p[b:b+f.n], ks[k][a:a+f.n], ks[k][b:b+f.n])
-			}
-		}
-		f.coulomb[row] += sum
-	}
-}
-
-// dotAndAdd returns v.p and adds c v to j.
-func dotAndAdd(v, p, j []float64, c float64) float64 {
-	p, j = p[:len(v)], j[:len(v)]
-	sum := 0.0
-	for i, x := range v {
-		sum += x * p[i]
-		j[i] += x * c
-	}
-	return sum
-}
-
-// exchange adds integrals (ab|cd) of one a and b to the rows a and b of K.
-func exchange(v []float64, first, second []int32, pa, pb, ka, kb []float64) {
-	first, second = first[:len(v)], second[:len(v)]
-	for i, x := range v {
-		c, d := first[i], second[i]
-		ka[c] += pb[d] * x
-		ka[d] += pb[c] * x
-		kb[c] += pa[d] * x
-		kb[d] += pa[c] * x
-	}
 }
 
 // addTranspose makes m + m^T of m.
