@@ -11,8 +11,8 @@ import (
 // aromatic if each of its atoms can take part and their pi electrons number
 // 4n+2 (E. Hueckel, Z. Phys. 1931, 70, 204). Single rings are tried until
 // nothing changes, then pairs and triples with them, so that the answer does
-// not depend on the Kekule form. Where a ring of alternating bonds stays
-// without flags, its other Kekule form is tried too.
+// not depend on the Kekule form. In the few ring systems where it still does
+// (biphenylene), the form that gives most aromatic atoms counts (forms.go).
 //
 // Atoms and bonds that the input wrote as aromatic keep the flag even where
 // the rule does not confirm it; a warning names them.
@@ -25,6 +25,9 @@ func (g *graph) perceiveAromaticity(writtenAtoms, writtenBonds []bool) []string 
 	}
 	for k, is := range p.bond {
 		g.bonds[k].Aromatic = is
+	}
+	for i, a := range g.atoms[:len(writtenAtoms)] {
+		writtenAtoms[i] = writtenAtoms[i] && canBeAromatic(a.Number)
 	}
 	var kept []int
 	for k, is := range writtenBonds {
@@ -42,6 +45,15 @@ func (g *graph) perceiveAromaticity(writtenAtoms, writtenBonds []bool) []string 
 		return []string{fmt.Sprintf("written as aromatic, though the electron count does not confirm it: atoms %v", kept)}
 	}
 	return nil
+}
+
+// canBeAromatic says whether an element has a lower-case symbol in SMILES.
+func canBeAromatic(number int) bool {
+	switch number {
+	case 5, 6, 7, 8, 15, 16, 33, 34, 52:
+		return true
+	}
+	return false
 }
 
 // A hueckel holds one perception at work.
@@ -204,7 +216,7 @@ func (p *hueckel) test(u ringUnion) bool {
 func (p *hueckel) electrons(i int, bonds []int) (count int, ok bool) {
 	k := p.double[i]
 	switch {
-	case k == -2 || len(p.g.neighbours[i]) > 3:
+	case k == -2 || len(p.g.neighbours[i]) > 3 || !canBeAromatic(p.g.atoms[i].Number):
 		return 0, false
 	case k == -1:
 		return p.lonePair(i)
@@ -247,46 +259,6 @@ func (p *hueckel) lonePair(i int) (count int, ok bool) {
 		}
 	}
 	return 0, false
-}
-
-// tryOtherForms exchanges single and double bonds around rings of alternating
-// bonds that found no flags, and keeps the form that gives more aromatic atoms.
-func (p *hueckel) tryOtherForms() {
-	for r, ks := range p.g.ringBonds {
-		if len(ks)%2 != 0 || !p.alternates(r) {
-			continue
-		}
-		before := count(p.atom)
-		p.flip(ks)
-		q := newHueckel(p.g)
-		q.run()
-		if count(q.atom) > before {
-			*p = *q
-			continue
-		}
-		p.flip(ks)
-	}
-}
-
-// alternates says whether single and double bonds alternate around ring r and
-// not all of its bonds are aromatic.
-func (p *hueckel) alternates(r int) bool {
-	ks := p.g.ringBonds[r]
-	all := true
-	for at, k := range ks {
-		order, next := p.g.bonds[k].Order, p.g.bonds[ks[(at+1)%len(ks)]].Order
-		if order+next != 3 {
-			return false
-		}
-		all = all && p.bond[k]
-	}
-	return !all
-}
-
-func (p *hueckel) flip(ks []int) {
-	for _, k := range ks {
-		p.g.bonds[k].Order = 3 - p.g.bonds[k].Order
-	}
 }
 
 func count(flags []bool) int {

@@ -19,6 +19,10 @@ func (g *graph) threeBridges(a, b int) [][]int {
 	return f.paths(a, b)
 }
 
+// bridgeReach is the number of bonds from a within which bridges can lie: half
+// way along the longest, and back from b.
+const bridgeReach = maxTiedBridges/2 + 1
+
 // A bridgeFlow is a unit flow in the neighbourhood of an atom. Atom number n
 // has the entry 2n and the exit 2n+1.
 type bridgeFlow struct {
@@ -38,7 +42,7 @@ func newBridgeFlow(g *graph, a int) *bridgeFlow {
 	f := &bridgeFlow{g: g, index: map[int]int{a: 0}, atoms: []int{a}}
 	dist := []int{0}
 	for at := 0; at < len(f.atoms); at++ {
-		if dist[at] > maxTiedBridges {
+		if dist[at] == bridgeReach {
 			break
 		}
 		i := f.atoms[at]

@@ -86,6 +86,9 @@ func (g *graph) nearbyBridgeheads(i int) []int {
 // tieBetween returns the tie between two atoms of ring degree three or more,
 // if three short bridges join them.
 func (g *graph) tieBetween(a, b int) (tie, bool) {
+	if k, ok := g.bondBetween(a, b); ok && g.smallest[k] > 4 {
+		return tie{}, false // fused rings of five and more are free
+	}
 	paths := g.threeBridges(a, b)
 	if paths == nil {
 		return tie{}, false

@@ -12,14 +12,14 @@ func (m *Molecule) findChirality() bool {
 	for n := range mirrored {
 		mirrored[n].Parity = -mirrored[n].Parity
 	}
-	for _, atoms := range m.fragments {
-		v := m.view(atoms, true)
-		v.setStereo(m.graph, m.centres, m.stereoBonds)
+	for f := range m.fragments {
+		v := m.view(f, true)
+		v.setStereo(m.graph, f, m.centres, m.stereoBonds)
 		if len(v.centres) == 0 {
 			continue
 		}
-		image := m.view(atoms, true)
-		image.setStereo(m.graph, mirrored, m.stereoBonds)
+		image := m.view(f, true)
+		image.setStereo(m.graph, f, mirrored, m.stereoBonds)
 		if !slices.Equal(v.canonical().certificate, image.canonical().certificate) {
 			return true
 		}

@@ -79,16 +79,18 @@ func (d *draft) sigma(i int) int {
 }
 
 // normalise brings two ways of drawing one electron structure to one form:
-// nitrogen beyond its octet (nitro, azide, N-oxide) is drawn with charges,
-// and S+-O-, P+-O-, Se+-O- with a double bond.
+// nitrogen beyond its octet (nitro, azide, N-oxide) is drawn with charges, and
+// X+-O- with X of P, S, Se, Te, Cl, Br, I with a double bond.
 func (d *draft) normalise() {
 	for i := range d.atoms {
 		a := &d.atoms[i]
-		switch {
-		case a.Number == 7 && a.Charge == 0 && d.sigma(i) >= 4:
-			d.separateCharge(i)
-		case (a.Number == 15 || a.Number == 16 || a.Number == 34) && a.Charge == 1 && a.Radical == 0:
-			d.joinCharge(i)
+		switch a.Number {
+		case 7:
+			if a.Charge == 0 && d.sigma(i) >= 4 {
+				d.separateCharge(i)
+			}
+		case 15, 16, 34, 52, 17, 35, 53:
+			d.joinCharges(i)
 		}
 	}
 }
@@ -113,15 +115,17 @@ func (d *draft) separateCharge(i int) {
 	}
 }
 
-func (d *draft) joinCharge(i int) {
+func (d *draft) joinCharges(i int) {
 	for _, k := range d.incident[i] {
 		j := d.other(k, i)
 		o := &d.atoms[j]
+		if d.atoms[i].Charge <= 0 || d.atoms[i].Radical != 0 {
+			return
+		}
 		if o.Number == 8 && o.Charge == -1 && d.bonds[k].Order == 1 && len(d.incident[j]) == 1 && d.hydrogens[j] <= 0 {
 			d.bonds[k].Order = 2
 			d.atoms[i].Charge--
 			o.Charge++
-			return
 		}
 	}
 }

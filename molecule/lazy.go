@@ -5,6 +5,8 @@ import "sync"
 // shared is what the stereoisomers of a graph have in common and what is worked
 // out from the finished graph.
 type shared struct {
+	node        []int // by atom: number in the view of its fragment, -1 for plain hydrogens
+	fragment    []int // by atom
 	delocalised delocalised
 	classes     func() []int
 	distances   func() [][]int32
@@ -12,6 +14,7 @@ type shared struct {
 
 // settle prepares what depends on the aromatic flags.
 func (g *graph) settle() {
+	g.shared.node, g.shared.fragment = g.numberNodes()
 	g.shared.delocalised = g.findDelocalised()
 	g.shared.classes = sync.OnceValue(g.classes)
 	g.shared.distances = sync.OnceValue(g.allDistances)

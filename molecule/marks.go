@@ -46,7 +46,7 @@ func (w *writer) tryMarks(share bool) bool {
 func (w *writer) statedInOrder() []StereoBond {
 	var list []StereoBond
 	for _, s := range w.m.stereoBonds {
-		if s.Known && w.position[s.J] >= 0 {
+		if s.Known && w.m.shared.fragment[s.J] == w.f {
 			list = append(list, s)
 		}
 	}
@@ -201,6 +201,9 @@ func (w *writer) saysTooMuch() bool {
 		known[s.Bond] = s.Known
 	}
 	for k, b := range w.m.bonds {
+		if w.m.shared.fragment[b.A] != w.f {
+			continue
+		}
 		if b.Order != 2 || known[k] || !w.marked(b.A) || !w.marked(b.B) {
 			continue
 		}

@@ -64,13 +64,7 @@ func filter[E any](list []E, keep []bool) []E {
 func (s *stereoSearch) prepare() {
 	g := s.g
 	class := g.shared.classes()
-	s.fragment = make([]int, len(g.atoms))
 	s.views = make([]*view, len(g.fragments))
-	for f, atoms := range g.fragments {
-		for _, i := range atoms {
-			s.fragment[i] = f
-		}
-	}
 	s.sure[0] = make([]bool, len(s.centres))
 	for n, c := range s.centres {
 		s.sure[0][n] = allDifferent(class, c.Neighbours[:])
@@ -335,7 +329,8 @@ func scramble(a, b int) uint64 {
 // centreMatters says whether inverting centre n, and with it the centres that
 // its cage ties to it, gives something different while they stay in place.
 func (s *stereoSearch) centreMatters(n int, cs []Centre, bs []StereoBond) bool {
-	v := s.fragmentView(s.fragment[cs[n].Atom])
+	f := s.g.shared.fragment[cs[n].Atom]
+	v := s.fragmentView(f)
 	inverted := slices.Clone(cs)
 	var held []int
 	for m := range cs {
@@ -344,35 +339,37 @@ func (s *stereoSearch) centreMatters(n int, cs []Centre, bs []StereoBond) bool {
 			held = append(held, v.node[cs[m].Atom])
 		}
 	}
-	return s.differ(v, held, cs, bs, inverted, bs)
+	return s.differ(f, held, cs, bs, inverted, bs)
 }
 
 func (s *stereoSearch) bondMatters(n int, cs []Centre, bs []StereoBond) bool {
-	v := s.fragmentView(s.fragment[bs[n].J])
+	f := s.g.shared.fragment[bs[n].J]
+	v := s.fragmentView(f)
 	inverted := slices.Clone(bs)
 	inverted[n].Cis = !bs[n].Cis
-	return s.differ(v, []int{v.node[bs[n].J], v.node[bs[n].K]}, cs, bs, cs, inverted)
+	return s.differ(f, []int{v.node[bs[n].J], v.node[bs[n].K]}, cs, bs, cs, inverted)
 }
 
 func (s *stereoSearch) fragmentView(f int) *view {
 	if s.views[f] == nil {
-		s.views[f] = s.g.view(s.g.fragments[f], true)
+		s.views[f] = s.g.view(f, true)
 	}
 	return s.views[f]
 }
 
 // differ compares two sets of statements with some nodes held in place.
-func (s *stereoSearch) differ(v *view, held []int, c1 []Centre, b1 []StereoBond, c2 []Centre, b2 []StereoBond) bool {
+func (s *stereoSearch) differ(f int, held []int, c1 []Centre, b1 []StereoBond, c2 []Centre, b2 []StereoBond) bool {
 	if s.work > maxStereoWork {
 		return false
 	}
+	v := s.fragmentView(f)
 	s.work += 2 * len(v.atoms)
 	l := &view{labelled: labelled{colour: slices.Clone(v.colour), arcs: v.arcs}, atoms: v.atoms, node: v.node}
 	for _, n := range held {
 		l.colour[n] = len(v.atoms) // of a cage group only the whole stays in place
 	}
-	l.setStereo(s.g, c1, b1)
+	l.setStereo(s.g, f, c1, b1)
 	first := l.canonical()
-	l.setStereo(s.g, c2, b2)
+	l.setStereo(s.g, f, c2, b2)
 	return !slices.Equal(first.certificate, l.canonical().certificate)
 }

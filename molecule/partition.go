@@ -9,6 +9,7 @@ type labelled struct {
 	arcs    [][]arc
 	centres []labelledCentre
 	doubles []labelledDouble
+	index   []int // scratch of newKeys, -1 between calls
 }
 
 type arc struct{ to, code int }
@@ -34,7 +35,7 @@ type labelledDouble struct {
 }
 
 // A partition sorts the nodes into cells. The colour of a cell is the position
-// of its first node; refining never changes the colour of earlier cells.
+// of its first node.
 type partition struct {
 	order []int // nodes by cell
 	pos   []int // inverse of order
@@ -86,7 +87,8 @@ type keyed struct {
 }
 
 // split divides the cells of the keyed nodes by key; nodes without a key stay
-// in front. It returns the nodes whose colour changed.
+// in front. It returns the nodes of all new cells but the largest of each old
+// one: what its neighbours see follows from the others.
 func (p *partition) split(nodes []keyed) []int {
 	slices.SortFunc(nodes, func(a, b keyed) int {
 		if c := p.cell[a.node] - p.cell[b.node]; c != 0 {
@@ -116,19 +118,34 @@ func (p *partition) splitCell(start int, nodes []keyed, changed []int) []int {
 	for at := len(nodes) - 1; at >= 0; at-- {
 		p.swap(nodes[at].node, first+at)
 	}
-	current := start
+	starts := []int{start}
 	for at, n := range nodes {
-		fresh := at > 0 && !slices.Equal(n.key, nodes[at-1].key) || at == 0 && first > start
-		if fresh {
-			p.size[current] = first + at - current
-			current = first + at
-		}
-		if current != start {
-			p.cell[n.node] = current
-			changed = append(changed, n.node)
+		if at > 0 && !slices.Equal(n.key, nodes[at-1].key) || at == 0 && first > start {
+			starts = append(starts, first+at)
 		}
 	}
-	p.size[current] = start + size - current
+	if len(starts) == 1 {
+		return changed
+	}
+	largest := 0
+	for n, from := range starts {
+		to := start + size
+		if n+1 < len(starts) {
+			to = starts[n+1]
+		}
+		p.size[from] = to - from
+		if p.size[from] > p.size[starts[largest]] {
+			largest = n
+		}
+	}
+	for n, from := range starts {
+		for _, v := range p.order[from : from+p.size[from]] {
+			p.cell[v] = from
+			if n != largest {
+				changed = append(changed, v)
+			}
+		}
+	}
 	return changed
 }
 
@@ -149,60 +166,68 @@ func (g *labelled) refine(p *partition, changed []int) {
 // neighbourKeys gives each node in a cell of several that has changed
 // neighbours the sorted list of these.
 func (g *labelled) neighbourKeys(p *partition, changed []int) []keyed {
-	index := map[int]int{}
-	var nodes []keyed
+	k := g.newKeys(p)
 	for _, v := range changed {
 		for _, a := range g.arcs[v] {
-			if p.size[p.cell[a.to]] == 1 {
-				continue
-			}
-			at, ok := index[a.to]
-			if !ok {
-				at = len(nodes)
-				index[a.to] = at
-				nodes = append(nodes, keyed{node: a.to})
-			}
-			nodes[at].key = append(nodes[at].key, uint64(p.cell[v])<<8|uint64(a.code))
+			k.add(a.to, uint64(p.cell[v])<<8|uint64(a.code))
 		}
 	}
-	for _, n := range nodes {
-		slices.Sort(n.key)
-	}
-	return nodes
+	return k.sorted()
 }
 
 // stereoKeys gives the nodes of stereo elements in cells of several the
 // handedness that the colours of their neighbours define.
 func (g *labelled) stereoKeys(p *partition) []keyed {
-	index := map[int]int{}
-	var nodes []keyed
-	add := func(v int, key uint64) {
-		if p.size[p.cell[v]] == 1 {
-			return
-		}
-		at, ok := index[v]
-		if !ok {
-			at = len(nodes)
-			index[v] = at
-			nodes = append(nodes, keyed{node: v})
-		}
-		nodes[at].key = append(nodes[at].key, key)
-	}
+	k := g.newKeys(p)
 	for _, c := range g.centres {
 		if s := c.sense(p.cell); s != 0 {
-			add(c.node, uint64(2+s))
+			k.add(c.node, uint64(2+s))
 		}
 	}
 	for _, d := range g.doubles {
 		if s := d.sense(p.cell); s != 0 {
-			add(d.ends[0], uint64(6+s))
-			add(d.ends[1], uint64(6+s))
+			k.add(d.ends[0], uint64(6+s))
+			k.add(d.ends[1], uint64(6+s))
 		}
 	}
-	for _, n := range nodes {
-		slices.Sort(n.key)
+	return k.sorted()
+}
+
+// keys collects keys by node.
+type keys struct {
+	p     *partition
+	index []int // by node: position in nodes, -1 if it has no key
+	nodes []keyed
+}
+
+func (g *labelled) newKeys(p *partition) *keys {
+	if g.index == nil {
+		g.index = make([]int, len(g.arcs))
+		for i := range g.index {
+			g.index[i] = -1
+		}
 	}
-	return nodes
+	return &keys{p: p, index: g.index}
+}
+
+func (k *keys) add(v int, key uint64) {
+	if k.p.size[k.p.cell[v]] == 1 {
+		return // nothing to split
+	}
+	if k.index[v] < 0 {
+		k.index[v] = len(k.nodes)
+		k.nodes = append(k.nodes, keyed{node: v})
+	}
+	n := &k.nodes[k.index[v]]
+	n.key = append(n.key, key)
+}
+
+func (k *keys) sorted() []keyed {
+	for _, n := range k.nodes {
+		slices.Sort(n.key)
+		k.index[n.node] = -1
+	}
+	return k.nodes
 }
 
 // sense returns the parity with respect to neighbours in the order of their

@@ -1,6 +1,8 @@
 package molecule_test
 
 import (
+	"math"
+	"math/rand/v2"
 	"strconv"
 	"strings"
 	"testing"
@@ -84,6 +86,35 @@ func TestCoordinatesHaveThePublishedConfiguration(t *testing.T) {
 		}
 		if m.Formula() != rec.Mol.Formula() || m.Charge() != rec.Mol.Charge() {
 			t.Errorf("%s: SMILES has %s, the record %s", rec.ID, m.Formula(), rec.Mol.Formula())
+		}
+	}
+}
+
+// Neither the order of the atoms nor the place and direction of the molecule
+// matters; a mirror image has the other configuration.
+func TestPerceiveLaws(t *testing.T) {
+	rng := rand.New(rand.NewPCG(3, 4))
+	for n, rec := range published(t) {
+		if n%6 != 0 || rec.Mol.Charge() != 0 {
+			continue
+		}
+		order := rng.Perm(rec.Mol.NumAtoms())
+		var atoms []molecule.Atom
+		var x, mirrored []float64
+		sin, cos := math.Sincos(rng.Float64() * 6)
+		for _, i := range order {
+			a, b, c := rec.X[3*i], rec.X[3*i+1], rec.X[3*i+2]
+			atoms = append(atoms, rec.Mol.Atom(i))
+			x = append(x, cos*a-sin*c+11, sin*a+cos*c-5, -b+3)
+			mirrored = append(mirrored, -a, b, c)
+		}
+		m, _, err := molecule.Perceive(atoms, x, 0, 0)
+		if err != nil || m.SMILES() != rec.Mol.SMILES() {
+			t.Errorf("%s: moved and renumbered: error %v", rec.ID, err)
+		}
+		image, _, err := molecule.Perceive(atoms, mirrored, 0, 0)
+		if err != nil || (image.SMILES() != rec.Mol.SMILES()) != rec.Mol.Chiral() {
+			t.Errorf("%s: mirrored: error %v, %s", rec.ID, err, image.SMILES())
 		}
 	}
 }

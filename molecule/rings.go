@@ -14,12 +14,12 @@ var ringSearchDepths = [...]int{8, 20, 1 << 30}
 const maxRingCandidates = 100000
 
 // findRings finds the relevant rings: the cycles that are no sum of shorter
-// ones, one of each family of equal length that differ by such sums. They do
-// not depend on the order of atoms as a smallest set of rings would.
+// ones. They do not depend on the order of atoms as a smallest set of rings
+// would. Of large rings, one stands for the family of equally long ones that
+// differ by sums of shorter ones.
 //
-// Source: P. Vismara, Electron. J. Combin. 1997, 4, R9: prototypes by breadth
-// first search from each atom over lower-numbered ones, then elimination over
-// GF(2).
+// Source: P. Vismara, Electron. J. Combin. 1997, 4, R9: breadth first search
+// from each atom over lower-numbered ones, then elimination over GF(2).
 func (g *graph) findRings() {
 	g.smallest = make([]int, len(g.bonds))
 	want := len(g.bonds) - len(g.atoms) + len(g.fragments)
@@ -45,7 +45,7 @@ type ringSearch struct {
 	g          *graph
 	column     []int // by bond: position in the bit sets, -1 outside rings
 	words      int
-	dist, via  []int  // of the current search; via is the bond towards the root
+	dist       []int  // of the current search, -1 where it has not been
 	barred     []bool // reached, but by no shortest path through atoms below the root
 	reached    []int
 	candidates [][]int // cycles as atoms in ring order
@@ -54,7 +54,7 @@ type ringSearch struct {
 
 func newRingSearch(g *graph) *ringSearch {
 	n := len(g.atoms)
-	s := &ringSearch{g: g, column: make([]int, len(g.bonds)), dist: make([]int, n), via: make([]int, n), barred: make([]bool, n)}
+	s := &ringSearch{g: g, column: make([]int, len(g.bonds)), dist: make([]int, n), barred: make([]bool, n)}
 	columns := 0
 	for k := range g.bonds {
 		s.column[k] = -1
@@ -92,13 +92,13 @@ func (s *ringSearch) collect(longest int) {
 	slices.SortStableFunc(s.candidates, func(a, b []int) int { return len(a) - len(b) })
 }
 
-// breadthFirst fills dist and via over ring bonds for atoms up to depth from
+// breadthFirst fills dist over ring bonds for atoms up to depth from
 // the root along shortest paths through atoms below the root. Atoms with a
 // shorter path through higher atoms are left out, as they must be.
 func (s *ringSearch) breadthFirst(root, depth int) {
 	g := s.g
 	s.reached = append(s.reached[:0], root)
-	s.dist[root], s.via[root] = 0, -1
+	s.dist[root] = 0
 	for at := 0; at < len(s.reached); at++ {
 		i := s.reached[at]
 		if s.dist[i] == depth {
@@ -112,14 +112,13 @@ func (s *ringSearch) breadthFirst(root, depth int) {
 			allowed := !s.barred[i] && j < root
 			switch {
 			case s.dist[j] < 0:
-				s.dist[j], s.via[j] = s.dist[i]+1, k
+				s.dist[j] = s.dist[i] + 1
 				s.reached = append(s.reached, j)
 				if !allowed {
 					s.barred[j] = true
 				}
 			case s.dist[j] == s.dist[i]+1 && s.barred[j] && allowed:
 				s.barred[j] = false
-				s.via[j] = k
 			}
 		}
 	}
@@ -165,32 +164,58 @@ func (s *ringSearch) close(root, y, longest int) {
 	}
 }
 
-// addCycle joins the paths from p and q to the root if they meet only there.
-// top is the atom between p and q, or -1 if they are bonded.
+// addCycle joins the paths from p and q to the root that meet only there. top is
+// the atom between p and q, or -1 if they are bonded.
 func (s *ringSearch) addCycle(root, p, q, top int) {
-	left, right := s.path(p), s.path(q)
-	for i := range len(left) - 1 {
-		if left[i] == right[i] {
-			return
+	for _, left := range s.paths(p) {
+		for _, right := range s.paths(q) {
+			if meet(left, right) {
+				continue
+			}
+			cycle := slices.Clone(left) // p ... root
+			for i := len(right) - 2; i >= 0; i-- {
+				cycle = append(cycle, right[i])
+			}
+			if top >= 0 {
+				cycle = append(cycle, top)
+			}
+			s.candidates = append(s.candidates, cycle)
 		}
 	}
-	cycle := slices.Clone(left) // p ... root
-	for i := len(right) - 2; i >= 0; i-- {
-		cycle = append(cycle, right[i])
-	}
-	if top >= 0 {
-		cycle = append(cycle, top)
-	}
-	s.candidates = append(s.candidates, cycle)
 }
 
-func (s *ringSearch) path(i int) []int {
-	path := []int{i}
-	for s.via[i] >= 0 {
-		i = s.g.other(s.via[i], i)
-		path = append(path, i)
+// meet says whether two shortest paths to the root meet before it.
+func meet(left, right []int) bool {
+	for i := range len(left) - 1 {
+		if left[i] == right[i] {
+			return true
+		}
 	}
-	return path
+	return false
+}
+
+// allPathsUpTo is the length in bonds up to which all shortest paths are
+// followed; of longer ones, one stands for its family.
+const allPathsUpTo = 4
+
+// paths returns the shortest paths from atom i to the root.
+func (s *ringSearch) paths(i int) [][]int {
+	if s.dist[i] == 0 {
+		return [][]int{{i}}
+	}
+	var list [][]int
+	for n, j := range s.g.neighbours[i] {
+		if s.dist[j] != s.dist[i]-1 || !s.g.inRing[s.g.neighbourBonds[i][n]] {
+			continue
+		}
+		for _, rest := range s.paths(j) {
+			list = append(list, append([]int{i}, rest...))
+		}
+		if s.dist[i] > allPathsUpTo {
+			break
+		}
+	}
+	return list
 }
 
 func (s *ringSearch) bitSet(cycle []int) []uint64 {

@@ -137,9 +137,9 @@ func (m *Molecule) side(j, i int) []int {
 func (m *Molecule) stereoClasses() []int {
 	class := make([]int, len(m.atoms))
 	offset := 0
-	for _, atoms := range m.fragments {
-		v := m.view(atoms, true)
-		v.setStereo(m.graph, m.centres, m.stereoBonds)
+	for f, atoms := range m.fragments {
+		v := m.view(f, true)
+		v.setStereo(m.graph, f, m.centres, m.stereoBonds)
 		cells := v.cells()
 		for n, i := range v.atoms {
 			class[i] = offset + cells[n]

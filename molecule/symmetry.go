@@ -10,7 +10,7 @@ import (
 type view struct {
 	labelled
 	atoms []int // by node
-	node  []int // by atom, -1 for plain hydrogens
+	node  []int // by atom, -1 for plain hydrogens; of no meaning for atoms of other fragments
 }
 
 // Bond codes of a view beyond the orders 1 to 3.
@@ -19,20 +19,53 @@ const (
 	codeDelocalised = 5
 )
 
-// view makes the labelled graph of some atoms (a fragment), without stereo.
-// merged treats delocalised groups as alike, as symmetry wants it; otherwise
-// the drawing counts, as in a SMILES string.
-func (g *graph) view(atoms []int, merged bool) *view {
-	v := &view{node: make([]int, len(g.atoms))}
-	for i := range v.node {
-		v.node[i] = -1
+// numberNodes numbers the atoms but the plain hydrogens (-1), in each fragment
+// anew, and says which fragment an atom is of.
+func (g *graph) numberNodes() (node, fragment []int) {
+	node, fragment = make([]int, len(g.atoms)), make([]int, len(g.atoms))
+	for f, atoms := range g.fragments {
+		count := 0
+		for _, i := range atoms {
+			fragment[i], node[i] = f, -1
+			if !g.terminalH(i) {
+				node[i] = count
+				count++
+			}
+		}
 	}
-	for _, i := range atoms {
+	return node, fragment
+}
+
+// view makes the labelled graph of fragment f, without stereo. merged treats
+// delocalised groups as alike, as symmetry wants it; otherwise the drawing
+// counts, as in a SMILES string.
+func (g *graph) view(f int, merged bool) *view {
+	v := &view{node: g.shared.node}
+	for _, i := range g.fragments[f] {
+		if v.node[i] >= 0 {
+			v.atoms = append(v.atoms, i)
+		}
+	}
+	g.fill(v, merged)
+	return v
+}
+
+// wholeView is the view of all fragments together, merged.
+func (g *graph) wholeView() *view {
+	v := &view{node: make([]int, len(g.atoms))}
+	for i := range g.atoms {
+		v.node[i] = -1
 		if !g.terminalH(i) {
 			v.node[i] = len(v.atoms)
 			v.atoms = append(v.atoms, i)
 		}
 	}
+	g.fill(v, true)
+	return v
+}
+
+// fill gives a view the arcs and colours of its atoms.
+func (g *graph) fill(v *view, merged bool) {
 	d := g.shared.delocalised
 	v.arcs = make([][]arc, len(v.atoms))
 	for n, i := range v.atoms {
@@ -52,7 +85,6 @@ func (g *graph) view(atoms []int, merged bool) *view {
 		}
 	}
 	v.colour = g.nodeColours(v, merged)
-	return v
 }
 
 // nodeColours ranks the nodes by what they are, terminal atoms first.
@@ -94,16 +126,16 @@ func (g *graph) nodeColours(v *view, merged bool) []int {
 	return colour
 }
 
-// setStereo gives the view the stated stereo elements of its atoms.
-func (v *view) setStereo(g *graph, centres []Centre, bonds []StereoBond) {
+// setStereo gives the view of fragment f the stated stereo elements in it.
+func (v *view) setStereo(g *graph, f int, centres []Centre, bonds []StereoBond) {
 	v.centres, v.doubles = v.centres[:0], v.doubles[:0]
 	for _, c := range centres {
-		if c.Parity != 0 && v.node[c.Atom] >= 0 {
+		if c.Parity != 0 && g.shared.fragment[c.Atom] == f {
 			v.centres = append(v.centres, v.centre(c))
 		}
 	}
 	for _, b := range bonds {
-		if b.Known && v.node[b.J] >= 0 {
+		if b.Known && g.shared.fragment[b.J] == f {
 			v.doubles = append(v.doubles, v.double(g, b))
 		}
 	}
@@ -144,15 +176,11 @@ func (v *view) double(g *graph, b StereoBond) labelledDouble {
 // dense ranks: refinement over the graph with delocalised groups merged, the
 // plain hydrogens by the class of their atom.
 func (g *graph) classes() []int {
-	all := make([]int, len(g.atoms))
-	for i := range all {
-		all[i] = i
-	}
-	v := g.view(all, true)
+	v := g.wholeView()
 	cells := v.cells()
-	class := make([]int, len(g.atoms))
-	order := slices.Clone(all)
+	class, order := make([]int, len(g.atoms)), make([]int, len(g.atoms))
 	for i := range g.atoms {
+		order[i] = i
 		if n := v.node[i]; n >= 0 {
 			class[i] = cells[n]
 		} else {

@@ -18,27 +18,19 @@ func (m *Molecule) SMILES() string { return m.lazy.smiles() }
 
 func (m *Molecule) writeSMILES() string {
 	parts := make([]string, len(m.fragments))
-	for f, atoms := range m.fragments {
-		parts[f] = m.writeFragment(atoms)
+	w := newWriter(m)
+	for f := range m.fragments {
+		parts[f] = w.fragment(f)
 	}
 	slices.Sort(parts)
 	return strings.Join(parts, ".")
 }
 
-func (m *Molecule) writeFragment(atoms []int) string {
-	v := m.view(atoms, false)
-	v.setStereo(m.graph, m.centres, m.stereoBonds)
-	w := &writer{m: m, v: v, rank: v.canonical().rank}
-	w.plan()
-	w.markDoubleBonds()
-	w.write(v.atoms[w.start])
-	return w.text.String()
-}
-
-// A writer turns one fragment into text. All its indices are atoms of the
-// molecule, but for rank.
+// A writer turns one fragment after another into text. All its indices are
+// atoms of the molecule, but for rank.
 type writer struct {
 	m        *Molecule
+	f        int // the fragment at work
 	v        *view
 	rank     []int // by node
 	start    int   // node
@@ -50,22 +42,42 @@ type writer struct {
 	shownH   map[int]int // by atom: the hydrogen that is written to carry a mark
 	digits   map[int]int // by bond: ring number while it is open
 	used     [100]bool
+	next     []int   // scratch of plan, by atom
+	ordered  [][]int // likewise
+	size     []int   // by atom: atoms on the branch that begins there
 	text     strings.Builder
+}
+
+func newWriter(m *Molecule) *writer {
+	n := m.NumAtoms()
+	w := &writer{
+		m: m, position: make([]int, n), parent: make([]int, n),
+		children: make([][]int, n), closures: make([][]int, n),
+		next: make([]int, n), ordered: make([][]int, n), size: make([]int, n),
+	}
+	for i := range n {
+		w.position[i], w.parent[i] = -1, -1
+	}
+	return w
+}
+
+func (w *writer) fragment(f int) string {
+	w.f, w.v = f, w.m.view(f, false)
+	w.v.setStereo(w.m.graph, f, w.m.centres, w.m.stereoBonds)
+	w.rank = w.v.canonical().rank
+	w.digits, w.used = map[int]int{}, [100]bool{}
+	w.text.Reset()
+	w.plan()
+	w.markDoubleBonds()
+	w.write(w.v.atoms[w.start])
+	return w.text.String()
 }
 
 // plan walks the fragment depth first in the order of the ranks and decides
 // which bonds are chain and which are ring bonds.
 func (w *writer) plan() {
-	n := w.m.NumAtoms()
-	w.position, w.parent = make([]int, n), make([]int, n)
-	w.children, w.closures = make([][]int, n), make([][]int, n)
-	w.digits = map[int]int{}
-	for i := range w.position {
-		w.position[i], w.parent[i] = -1, -1
-	}
 	w.start = slices.Index(w.rank, 0)
-	next := make([]int, n)
-	ordered := make([][]int, n)
+	next, ordered := w.next, w.ordered
 	first := w.v.atoms[w.start]
 	stack := []int{first}
 	count := 0
@@ -92,9 +104,6 @@ func (w *writer) plan() {
 			w.closures[j] = append(w.closures[j], i)
 		}
 	}
-	for i := range w.closures {
-		slices.SortFunc(w.closures[i], func(a, b int) int { return w.position[a] - w.position[b] })
-	}
 	w.shortBranchesFirst()
 }
 
@@ -116,7 +125,7 @@ func (w *writer) byRank(i int) []int {
 func (w *writer) shortBranchesFirst() {
 	order := slices.Clone(w.v.atoms)
 	slices.SortFunc(order, func(a, b int) int { return w.position[b] - w.position[a] })
-	size := make([]int, len(w.position))
+	size := w.size
 	for _, i := range order { // children before their parents
 		size[i]++
 		if p := w.parent[i]; p >= 0 {
@@ -137,7 +146,7 @@ func (w *writer) shortBranchesFirst() {
 			stack = append(stack, j)
 		}
 	}
-	for i := range w.closures {
+	for _, i := range w.v.atoms {
 		slices.SortFunc(w.closures[i], func(a, b int) int { return w.position[a] - w.position[b] })
 	}
 }
