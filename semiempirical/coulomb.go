@@ -1,6 +1,10 @@
 package semiempirical
 
-import "math"
+import (
+	"math"
+
+	"gonum.org/v1/gonum/blas/gonum"
+)
 
 // A coulomb is the isotropic electrostatics of shell charges, 1/2 sum q_i q_j
 // gamma_ij with gamma = (R^2 + eta^-2)^(-1/2), eta the mean of the two shells'
@@ -9,13 +13,14 @@ type coulomb struct {
 	atomShell []int
 	hardness  []float64 // of each shell
 	gamma     []float64 // shells x shells
+	field     []float64 // gamma times charges
 }
 
 var _ contribution = (*coulomb)(nil)
 
 func newCoulomb(b *basis) *coulomb {
 	n := len(b.shells)
-	c := &coulomb{atomShell: b.atomShell, gamma: make([]float64, n*n)}
+	c := &coulomb{atomShell: b.atomShell, gamma: make([]float64, n*n), field: make([]float64, n)}
 	for i, s := range b.shells {
 		c.hardness = append(c.hardness, b.elements[b.shellAtom[i]].Hardness*(1+s.Kappa))
 	}
@@ -50,11 +55,12 @@ func (c *coulomb) update(g *geometry) {
 
 func (c *coulomb) energy(m *moments, v *potential) float64 {
 	n := len(c.hardness)
+	var blas gonum.Implementation
+	blas.Dgemv(noTrans, n, n, 1, c.gamma, n, m.shell, 1, 0, c.field, 1)
 	var sum float64
-	for i, q := range m.shell {
-		gq := dot(c.gamma[i*n:(i+1)*n], m.shell)
-		v.shell[i] += gq
-		sum += q * gq
+	for i, f := range c.field {
+		v.shell[i] += f
+		sum += f * m.shell[i]
 	}
 	return sum / 2
 }

@@ -9,13 +9,14 @@ import "torsieve/internal/gauss"
 //
 // so that one block serves both atoms. C below is gauss.QuadrupoleTensor.
 
+const sqrt3 = 1.7320508075688772935
+
 // A multipoleWeights says how much each operator of a link's block counts in
-// -2 F: of all functions of the block alike.
+// -2 F; the overlap counts by the potentials of the two functions beside.
 type multipoleWeights [gauss.Operators]float64
 
 // atomWeights is a potential in the components of the blocks.
 type atomWeights struct {
-	charge float64 // of the atom, beside that of the shells
 	dipole [3]float64
 	quad   [5]float64
 }
@@ -24,7 +25,6 @@ type atomWeights struct {
 func weightsOf(dst []atomWeights, v *potential) {
 	for a := range dst {
 		w := &dst[a]
-		w.charge = v.atom[a]
 		copy(w.dipole[:], v.dipole[3*a:])
 		w.quad = harmonics(v.quadrupole[6*a : 6*a+6])
 	}
@@ -32,13 +32,12 @@ func weightsOf(dst []atomWeights, v *potential) {
 
 // harmonics returns C_m : T of a packed tensor.
 func harmonics(t []float64) [5]float64 {
-	const sqrt3 = 1.7320508075688772935
 	return [5]float64{sqrt3 * t[1], sqrt3 * t[4], t[5] - (t[0]+t[2])/2, sqrt3 * t[3], sqrt3 / 2 * (t[0] - t[2])}
 }
 
 // timesVector returns C_m t for all m.
 func timesVector(t *[3]float64) [5][3]float64 {
-	const h = 1.7320508075688772935 / 2
+	const h = sqrt3 / 2
 	return [5][3]float64{
 		{h * t[1], h * t[0], 0},
 		{0, h * t[2], h * t[1]},
@@ -52,7 +51,7 @@ func timesVector(t *[3]float64) [5][3]float64 {
 func (w *multipoleWeights) set(a, b *atomWeights, v *[3]float64) {
 	t := [3]float64{-v[0], -v[1], -v[2]}
 	ct := timesVector(&t)
-	w[0] = a.charge + b.charge + dot3(&a.dipole, &t)
+	w[0] = dot3(&a.dipole, &t)
 	for k := range 3 {
 		w[1+k] = a.dipole[k] + b.dipole[k]
 	}
@@ -67,7 +66,7 @@ func (w *multipoleWeights) set(a, b *atomWeights, v *[3]float64) {
 
 // setOnsite is set for a link of an atom with itself.
 func (w *multipoleWeights) setOnsite(a *atomWeights) {
-	w[0] = 2 * a.charge
+	w[0] = 0
 	for k := range 3 {
 		w[1+k] = 2 * a.dipole[k]
 	}
@@ -80,8 +79,11 @@ func (w *multipoleWeights) setOnsite(a *atomWeights) {
 // Comput. 2019, 15, 1652, eq. 34).
 func (h *hamiltonian) fock(f []float64, v *potential, atoms []atomWeights, g *geometry) {
 	n := h.basis.functions()
-	copy(f, h.h)
 	weightsOf(atoms, v)
+	for mu, i := range h.basis.funcShell {
+		h.onFunction[mu] = v.shell[i] + v.atom[h.basis.shellAtom[i]]
+	}
+	copy(f, h.h)
 	var w multipoleWeights
 	for k := range h.links {
 		l := &h.links[k]
@@ -90,26 +92,31 @@ func (h *hamiltonian) fock(f []float64, v *potential, atoms []atomWeights, g *ge
 		} else {
 			w.set(&atoms[l.a], &atoms[l.b], &g.v[l.pair])
 		}
-		h.addLink(f, n, l, &w, v.shell)
+		h.addLink(f, l, &w)
+	}
+	for mu := range n {
+		for nu := range mu {
+			f[nu*n+mu] = f[mu*n+nu]
+		}
 	}
 }
 
-func (h *hamiltonian) addLink(f []float64, n int, l *link, w *multipoleWeights, shell []float64) {
-	b := h.basis
+// addLink enters a link into the Fock matrix, below the diagonal.
+func (h *hamiltonian) addLink(f []float64, l *link, w *multipoleWeights) {
+	b, n := h.basis, h.basis.functions()
 	fromB, toB := b.atomStart[l.b], b.atomStart[l.b+1]
+	w0, w1, w2, w3, w4, w5, w6, w7, w8 := w[0], w[1], w[2], w[3], w[4], w[5], w[6], w[7], w[8]
 	x := l.block
 	for mu := b.atomStart[l.a]; mu < b.atomStart[l.a+1]; mu++ {
-		ofMu := w[0] + shell[b.funcShell[mu]]
-		for nu := fromB; nu < toB; nu++ {
+		ofMu := w0 + h.onFunction[mu]
+		ofNu := h.onFunction[fromB:toB]
+		row := f[mu*n+fromB : mu*n+toB]
+		row = row[:len(ofNu)]
+		for nu, v := range ofNu {
 			y := (*[gauss.Operators]float64)(x)
 			x = x[gauss.Operators:]
-			e := y[0]*(ofMu+shell[b.funcShell[nu]]) +
-				(y[1]*w[1] + y[2]*w[2] + y[3]*w[3]) +
-				(y[4]*w[4] + y[5]*w[5] + y[6]*w[6] + y[7]*w[7] + y[8]*w[8])
-			f[mu*n+nu] -= e / 2
-			if l.a != l.b { // an atom's own block is whole as it is
-				f[nu*n+mu] = f[mu*n+nu]
-			}
+			row[nu] -= 0.5 * ((y[0]*(ofMu+v) + y[1]*w1 + y[2]*w2 + y[3]*w3) +
+				(y[4]*w4 + y[5]*w5 + y[6]*w6 + y[7]*w7 + y[8]*w8))
 		}
 	}
 }

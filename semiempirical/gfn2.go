@@ -53,13 +53,13 @@ func (m *model) contributions() []contribution {
 	return []contribution{m.coulomb, m.thirdOrder, m.anisotropic, m.onsite, d4{m.dispersion}}
 }
 
-// update takes in a new geometry.
-func (m *model) update(x []float64, contributions []contribution) error {
+// update takes in a new geometry; slopes says whether a gradient will be wanted.
+func (m *model) update(x []float64, contributions []contribution, slopes bool) error {
 	if err := m.geometry.set(x); err != nil {
 		return err
 	}
 	m.cn.update(m.geometry)
-	m.hamiltonian.update(m.geometry)
+	m.hamiltonian.update(m.geometry, slopes)
 	for _, c := range contributions {
 		c.update(m.geometry)
 	}

@@ -15,15 +15,22 @@ type hamiltonian struct {
 	links []link    // pairs of atoms that overlap, and each atom with itself
 	data  []float64 // integrals of all links
 	s, h  []float64 // overlap and core Hamiltonian, functions x functions
-	work  gauss.Scratch
+
+	onFunction []float64 // potential of each function in the last Fock matrix
+	byLevel    []float64 // derivative of the core energy by each shell's level
+	work       gauss.Scratch
 }
 
 // A link is two atoms a >= b whose functions overlap.
 type link struct {
-	a, b  int
-	pair  int // place in the geometry; -1 where a is b
-	block []float64
-	scale []float64 // of H0: the factor of the overlap, for each pair of shells
+	a, b   int
+	pair   int // place in the geometry; -1 where a is b
+	both   *diatomicKind
+	frame  gauss.Frame
+	value  []float64 // integrals in the bond's frame, of all pairs of shells
+	slope  []float64 // their derivatives by the distance, if wanted
+	block  []float64 // integrals in the molecule's axes
+	factor []float64 // of H0: the factor of the overlap, for each pair of shells
 }
 
 // Factors of H0 by angular momenta.
@@ -51,11 +58,12 @@ func polynomial(k, u float64) (f, slope float64) {
 
 func newHamiltonian(b *basis, cn *coordination) *hamiltonian {
 	n := b.functions()
-	return &hamiltonian{basis: b, cn: cn, level: make([]float64, len(b.shells)), s: make([]float64, n*n), h: make([]float64, n*n)}
+	return &hamiltonian{basis: b, cn: cn, level: make([]float64, len(b.shells)), s: make([]float64, n*n), h: make([]float64, n*n), onFunction: make([]float64, n), byLevel: make([]float64, len(b.shells))}
 }
 
-// update computes everything at a new geometry.
-func (h *hamiltonian) update(g *geometry) {
+// update computes everything at a new geometry; slopes says whether a gradient
+// will be wanted.
+func (h *hamiltonian) update(g *geometry, slopes bool) {
 	for i, s := range h.basis.shells {
 		h.level[i] = s.Level - s.CNShift*h.cn.numbers[h.basis.shellAtom[i]]
 	}
@@ -65,7 +73,7 @@ func (h *hamiltonian) update(g *geometry) {
 	for k := range h.links {
 		l := &h.links[k]
 		if l.a != l.b {
-			h.integrate(l, g)
+			h.integrate(l, g, slopes)
 		}
 		h.fill(l, g)
 	}
@@ -75,54 +83,70 @@ func (h *hamiltonian) update(g *geometry) {
 func (h *hamiltonian) findLinks(g *geometry) {
 	b := h.basis
 	h.links = h.links[:0]
-	total, scales := 0, 0
 	k := 0
 	for a := range b.atoms() {
 		ka := &b.kinds[b.kind[a]]
 		for other := range a {
-			kb := &b.kinds[b.kind[other]]
-			if g.r[k] < ka.with[b.kind[other]].reach {
-				h.links = append(h.links, link{a: a, b: other, pair: k})
-				total += ka.size * kb.size
-				scales += len(ka.shells) * len(kb.shells)
+			if both := ka.with[b.kind[other]]; g.r[k] < both.reach {
+				h.links = append(h.links, link{a: a, b: other, pair: k, both: both})
 			}
 			k++
 		}
-		h.links = append(h.links, link{a: a, b: a, pair: -1, block: ka.onsite})
-		scales += len(ka.shells) * len(ka.shells)
+		h.links = append(h.links, link{a: a, b: a, pair: -1, both: ka.with[b.kind[a]], block: ka.onsite})
 	}
-	h.allot(total*gauss.Operators, scales)
+	h.allot()
 }
 
 // allot divides the memory among the links.
-func (h *hamiltonian) allot(total, scales int) {
-	if need := total + scales; cap(h.data) < need {
-		h.data = make([]float64, need+need/8)
+func (h *hamiltonian) allot() {
+	total := 0
+	for k := range h.links {
+		total += h.blockSize(&h.links[k]) + 2*h.links[k].both.size() + len(h.links[k].both.h0)
+	}
+	if cap(h.data) < total {
+		h.data = make([]float64, total+total/8)
 	}
 	free := h.data[:cap(h.data)]
+	take := func(n int) []float64 {
+		var x []float64
+		x, free = free[:n:n], free[n:]
+		return x
+	}
 	for k := range h.links {
 		l := &h.links[k]
-		ka, kb := &h.basis.kinds[h.basis.kind[l.a]], &h.basis.kinds[h.basis.kind[l.b]]
+		l.factor = take(len(l.both.h0))
 		if l.a != l.b {
-			n := ka.size * kb.size * gauss.Operators
-			l.block, free = free[:n:n], free[n:]
+			l.block = take(h.blockSize(l))
+			l.value, l.slope = take(l.both.size()), take(l.both.size())
 		}
-		n := len(ka.shells) * len(kb.shells)
-		l.scale, free = free[:n:n], free[n:]
 	}
 }
 
+func (h *hamiltonian) blockSize(l *link) int {
+	b := h.basis
+	return b.kinds[b.kind[l.a]].size * b.kinds[b.kind[l.b]].size * gauss.Operators
+}
+
 // integrate fills a link's block.
-func (h *hamiltonian) integrate(l *link, g *geometry) {
+func (h *hamiltonian) integrate(l *link, g *geometry, slopes bool) {
 	ka, kb := &h.basis.kinds[h.basis.kind[l.a]], &h.basis.kinds[h.basis.kind[l.b]]
-	both := ka.with[h.basis.kind[l.b]]
-	frame := gauss.NewFrame(g.v[l.pair])
+	l.frame = gauss.NewFrame(g.v[l.pair])
 	stride := kb.size * gauss.Operators
-	for i := range ka.shells {
-		for j := range kb.shells {
-			both.integrals[i*len(kb.shells)+j].Block(&h.work, &frame, l.block[ka.first[i]*stride+kb.first[j]*gauss.Operators:], stride)
+	for place, pair := range l.both.integrals {
+		value, slope := l.numbers(place)
+		if !slopes {
+			slope = nil
 		}
+		pair.Integrals(&h.work, l.frame.R, value, slope)
+		i, j := place/len(kb.shells), place%len(kb.shells)
+		pair.Block(&h.work, &l.frame, value, l.block[ka.first[i]*stride+kb.first[j]*gauss.Operators:], stride)
 	}
+}
+
+// numbers returns a pair of shells' share of value and slope.
+func (l *link) numbers(place int) (value, slope []float64) {
+	from, to := l.both.first[place], l.both.first[place+1]
+	return l.value[from:to], l.slope[from:to]
 }
 
 // fill enters a link into overlap and core Hamiltonian.
@@ -134,9 +158,9 @@ func (h *hamiltonian) fill(l *link, g *geometry) {
 		for j := range kb.shells {
 			scale := 1.0
 			if l.a != l.b {
-				scale = ka.with[b.kind[l.b]].h0[i*len(kb.shells)+j] * distanceFactor(ka.element, kb.element, i, j, g.r[l.pair])
+				scale = l.both.h0[i*len(kb.shells)+j] * distanceFactor(ka.element, kb.element, i, j, g.r[l.pair])
 			}
-			l.scale[i*len(kb.shells)+j] = scale
+			l.factor[i*len(kb.shells)+j] = scale
 			scale *= (h.level[firstA+i] + h.level[firstB+j]) / 2
 			for mu := b.shellStart[firstA+i]; mu < b.shellStart[firstA+i+1]; mu++ {
 				row := l.block[(mu-b.atomStart[l.a])*kb.size*gauss.Operators:]

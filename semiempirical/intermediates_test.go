@@ -59,7 +59,7 @@ func atGeometry(t *testing.T, name string) (*Surface, *referenceMolecule) {
 	t.Helper()
 	m := named(t, name)
 	s := m.surface(t, 1e-4)
-	if err := s.model.update(m.coordinates(), s.parts); err != nil {
+	if err := s.model.update(m.coordinates(), s.parts, true); err != nil {
 		t.Fatal(err)
 	}
 	return s, m

@@ -1,10 +1,22 @@
 package semiempirical
 
-import "math"
+import (
+	"math"
+
+	"gonum.org/v1/gonum/blas"
+	"gonum.org/v1/gonum/blas/gonum"
+)
+
+const trans, noTrans = blas.Trans, blas.NoTrans
 
 // An anisotropic is the electrostatics between atomic charges, dipoles and
 // quadrupoles, damped at short range (J. Chem. Theory Comput. 2019, 15, 1652,
 // eqs. 24-29). Radii of the damping follow the coordination number.
+//
+// With v the vector from b to a, a charge on a and a dipole on b have the
+// energy f3 q v.mu, two dipoles f5 (R^2 mu.mu' - 3 v.mu v.mu'), a charge and a
+// quadrupole f5 q v.Theta.v. At fixed places all that is bilinear in the
+// moments, so it is kept as two matrices.
 type anisotropic struct {
 	elements []*element
 	cn       *coordination
@@ -12,6 +24,11 @@ type anisotropic struct {
 	slope    []float64 // d radius / d coordination number
 	g        *geometry // of the last update
 	f3, f5   []float64 // damping over R^3, of charge and dipole; over R^5, of the rest
+
+	charged []float64 // N x 9N: charge a with dipole b, and with quadrupole b
+	dipoles []float64 // 3N x 3N
+	higher  []float64 // dipoles, and quadrupoles times packedCount
+	field   []float64 // of the charges, where the higher moments are
 }
 
 var _ contribution = (*anisotropic)(nil)
@@ -29,6 +46,8 @@ func newAnisotropic(b *basis, cn *coordination) *anisotropic {
 		elements: b.elements, cn: cn,
 		radius: make([]float64, n), slope: make([]float64, n),
 		f3: make([]float64, pairs), f5: make([]float64, pairs),
+		charged: make([]float64, 9*n*n), dipoles: make([]float64, 9*n*n),
+		higher: make([]float64, 9*n), field: make([]float64, 9*n),
 	}
 }
 
@@ -49,7 +68,32 @@ func (p *anisotropic) update(g *geometry) {
 			d3, d5 := p.damping(a, b, r)
 			p.f3[k] = d3 / (r * r * r)
 			p.f5[k] = d5 / (r * r * r * r * r)
+			p.couple(a, b, k)
 			k++
+		}
+	}
+}
+
+// couple fills the matrices for a pair.
+func (p *anisotropic) couple(a, b, k int) {
+	n := len(p.radius)
+	v, f3, f5 := &p.g.v[k], p.f3[k], p.f5[k]
+	ab, ba := p.charged[9*n*a:9*n*(a+1)], p.charged[9*n*b:9*n*(b+1)]
+	for i := range 3 {
+		ab[3*b+i], ba[3*a+i] = f3*v[i], -f3*v[i]
+	}
+	square := p.g.r[k] * p.g.r[k]
+	outer := [6]float64{f5 * v[0] * v[0], f5 * v[0] * v[1], f5 * v[1] * v[1], f5 * v[0] * v[2], f5 * v[1] * v[2], f5 * v[2] * v[2]}
+	copy(ab[3*n+6*b:], outer[:])
+	copy(ba[3*n+6*a:], outer[:])
+	for i := range 3 {
+		for j := range 3 {
+			c := -3 * f5 * v[i] * v[j]
+			if i == j {
+				c += f5 * square
+			}
+			p.dipoles[3*n*(3*a+i)+3*b+j] = c
+			p.dipoles[3*n*(3*b+j)+3*a+i] = c
 		}
 	}
 }
@@ -59,6 +103,28 @@ func (p *anisotropic) damping(a, b int, r float64) (d3, d5 float64) {
 	x := (p.radius[a] + p.radius[b]) / (2 * r)
 	x3 := x * x * x
 	return 1 / (1 + 6*x3), 1 / (1 + 6*x3*x)
+}
+
+func (p *anisotropic) energy(m *moments, v *potential) float64 {
+	n := len(p.radius)
+	copy(p.higher, m.dipole)
+	for i, t := range m.quadrupole {
+		p.higher[3*n+i] = packedCount[i%6] * t
+	}
+	var blas gonum.Implementation
+	blas.Dgemv(trans, n, 9*n, 1, p.charged, 9*n, m.atom, 1, 0, p.field, 1)
+	energy := dot(p.field, p.higher)
+	for i, f := range p.field[3*n:] {
+		v.quadrupole[i] += f
+	}
+	blas.Dgemv(noTrans, n, 9*n, 1, p.charged, 9*n, p.higher, 1, 1, v.atom, 1)
+	mutual := p.field[3*n : 6*n]
+	blas.Dgemv(noTrans, 3*n, 3*n, 1, p.dipoles, 3*n, m.dipole, 1, 0, mutual, 1)
+	for i, f := range mutual {
+		v.dipole[i] += p.field[i] + f
+		energy += f * m.dipole[i] / 2
+	}
+	return energy
 }
 
 // A pairMoments is what the terms of a pair of atoms are made of.
@@ -80,32 +146,6 @@ func (p *pairMoments) set(m *moments, a, b int, v *[3]float64, r2 float64) {
 	p.vtav, p.vtbv = dot3(v, &p.tav), dot3(v, &p.tbv)
 	p.s1 = p.qa*p.mbv - p.qb*p.mav
 	p.s2 = r2*p.mamb - 3*p.mav*p.mbv + p.qa*p.vtbv + p.qb*p.vtav
-}
-
-func (p *anisotropic) energy(m *moments, v *potential) float64 {
-	var sum float64
-	var pm pairMoments
-	k := 0
-	for a := range p.radius {
-		for b := range a {
-			d := &p.g.v[k]
-			r2 := p.g.r[k] * p.g.r[k]
-			f3, f5 := p.f3[k], p.f5[k]
-			pm.set(m, a, b, d, r2)
-			sum += f3*pm.s1 + f5*pm.s2
-			v.atom[a] += f3*pm.mbv + f5*pm.vtbv
-			v.atom[b] += -f3*pm.mav + f5*pm.vtav
-			ca, cb := -f3*pm.qb-3*f5*pm.mbv, f3*pm.qa-3*f5*pm.mav
-			for i := range d {
-				v.dipole[3*a+i] += ca*d[i] + f5*r2*pm.mb[i]
-				v.dipole[3*b+i] += cb*d[i] + f5*r2*pm.ma[i]
-			}
-			addOuter(v.quadrupole[6*a:6*a+6], f5*pm.qb, d)
-			addOuter(v.quadrupole[6*b:6*b+6], f5*pm.qa, d)
-			k++
-		}
-	}
-	return sum
 }
 
 // addGradient adds the gradient at fixed moments to grad, but for the part
@@ -172,16 +212,6 @@ func timesPacked(dst *[3]float64, t []float64, v *[3]float64) {
 	dst[0] = t[0]*v[0] + t[1]*v[1] + t[3]*v[2]
 	dst[1] = t[1]*v[0] + t[2]*v[1] + t[4]*v[2]
 	dst[2] = t[3]*v[0] + t[4]*v[1] + t[5]*v[2]
-}
-
-// addOuter adds f v v^T to a packed tensor.
-func addOuter(t []float64, f float64, v *[3]float64) {
-	t[0] += f * v[0] * v[0]
-	t[1] += f * v[0] * v[1]
-	t[2] += f * v[1] * v[1]
-	t[3] += f * v[0] * v[2]
-	t[4] += f * v[1] * v[2]
-	t[5] += f * v[2] * v[2]
 }
 
 func dot3(a, b *[3]float64) float64 { return a[0]*b[0] + a[1]*b[1] + a[2]*b[2] }

@@ -1,57 +1,60 @@
 package semiempirical
 
-import "torsieve/internal/gauss"
+import (
+	"gonum.org/v1/gonum/blas/gonum"
+
+	"torsieve/internal/gauss"
+)
 
 // populate computes the moments that belong to a density matrix, and the
 // energy of the core Hamiltonian (J. Chem. Theory Comput. 2019, 15, 1652, eqs.
 // 17-19 in Mulliken's partition; the origin of an atom's moments is the atom).
 func (h *hamiltonian) populate(m *moments, p []float64, g *geometry) (core float64) {
+	n := h.basis.functions()
+	var blas gonum.Implementation
 	for i, s := range h.basis.shells {
 		m.shell[i] = s.Occupation
+	}
+	for mu, i := range h.basis.funcShell {
+		m.shell[i] -= blas.Ddot(n, p[mu*n:], 1, h.s[mu*n:], 1)
 	}
 	clear(m.dipole)
 	clear(m.quadrupole)
 	for k := range h.links {
-		core += h.populateLink(m, p, &h.links[k], g)
+		l := &h.links[k]
+		sum := h.linkSums(p, l)
+		takeOff(m, l.b, &sum)
+		if l.a != l.b {
+			toFirst(&sum, &g.v[l.pair])
+			takeOff(m, l.a, &sum)
+		}
 	}
 	m.sumShells()
-	return core
+	return blas.Ddot(n*n, p, 1, h.h, 1)
 }
 
-// populateLink takes one link's electrons off the moments and returns the
-// link's part of the core energy.
-func (h *hamiltonian) populateLink(m *moments, p []float64, l *link, g *geometry) (core float64) {
+// linkSums sums density times integral over a link's block, for each operator.
+func (h *hamiltonian) linkSums(p []float64, l *link) [gauss.Operators]float64 {
 	b, n := h.basis, h.basis.functions()
 	fromB, toB := b.atomStart[l.b], b.atomStart[l.b+1]
-	var sum [gauss.Operators]float64
+	var s0, s1, s2, s3, s4, s5, s6, s7, s8 float64
 	x := l.block
 	for mu := b.atomStart[l.a]; mu < b.atomStart[l.a+1]; mu++ {
-		var ofMu float64
-		row, core0 := p[mu*n:(mu+1)*n], h.h[mu*n:(mu+1)*n]
-		for nu := fromB; nu < toB; nu++ {
+		for _, d := range p[mu*n+fromB : mu*n+toB] {
 			y := (*[gauss.Operators]float64)(x)
 			x = x[gauss.Operators:]
-			d := row[nu]
-			core += d * core0[nu]
-			ps := d * y[0]
-			ofMu += ps
-			if l.a != l.b {
-				m.shell[b.funcShell[nu]] -= ps
-			}
-			for op := 1; op < gauss.Operators; op++ {
-				sum[op] += d * y[op]
-			}
+			s0 += d * y[0]
+			s1 += d * y[1]
+			s2 += d * y[2]
+			s3 += d * y[3]
+			s4 += d * y[4]
+			s5 += d * y[5]
+			s6 += d * y[6]
+			s7 += d * y[7]
+			s8 += d * y[8]
 		}
-		m.shell[b.funcShell[mu]] -= ofMu
-		sum[0] += ofMu
 	}
-	takeOff(m, l.b, &sum)
-	if l.a == l.b {
-		return core
-	}
-	toFirst(&sum, &g.v[l.pair])
-	takeOff(m, l.a, &sum)
-	return 2 * core
+	return [gauss.Operators]float64{s0, s1, s2, s3, s4, s5, s6, s7, s8}
 }
 
 // toFirst moves the origin of sums over a block from atom b to atom a.
@@ -69,18 +72,16 @@ func toFirst(sum *[gauss.Operators]float64, v *[3]float64) {
 
 // takeOff subtracts dipole and quadrupole of electrons from an atom's.
 func takeOff(m *moments, a int, sum *[gauss.Operators]float64) {
-	for k := range 3 {
-		m.dipole[3*a+k] -= sum[1+k]
-	}
+	d := (*[3]float64)(m.dipole[3*a:])
+	d[0] -= sum[1]
+	d[1] -= sum[2]
+	d[2] -= sum[3]
+	const h = sqrt3 / 2 // sum_m t_m C_m
 	q := (*[6]float64)(m.quadrupole[6*a:])
-	for c := range 5 {
-		t := &gauss.QuadrupoleTensor[c]
-		s := sum[4+c]
-		q[0] -= s * t[0][0]
-		q[1] -= s * t[0][1]
-		q[2] -= s * t[1][1]
-		q[3] -= s * t[0][2]
-		q[4] -= s * t[1][2]
-		q[5] -= s * t[2][2]
-	}
+	q[0] += sum[6]/2 - h*sum[8]
+	q[1] -= h * sum[4]
+	q[2] += sum[6]/2 + h*sum[8]
+	q[3] -= h * sum[7]
+	q[4] -= h * sum[5]
+	q[5] -= sum[6]
 }

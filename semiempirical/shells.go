@@ -36,6 +36,7 @@ type kind struct {
 // each shell of the first, for each of the second.
 type diatomicKind struct {
 	integrals []*gauss.AxialPair
+	first     []int     // of each pair of shells: its first number in a link's values; and how many there are
 	h0        []float64 // the part of H0's factor that does not depend on the distance
 	reach     float64   // bohr; no overlap beyond it
 }
@@ -108,10 +109,9 @@ func newKind(e *element) (kind, error) {
 		k.size += s.Size()
 	}
 	k.onsite = make([]float64, k.size*k.size*gauss.Operators)
-	var scratch gauss.Scratch
 	for i := range k.shells {
 		for j := range k.shells {
-			block := gauss.OneCentre(&scratch, &k.shells[i], &k.shells[j])
+			block := gauss.OneCentre(&k.shells[i], &k.shells[j])
 			width := k.shells[j].Size() * gauss.Operators
 			for a := range k.shells[i].Size() {
 				to := ((k.first[i]+a)*k.size + k.first[j]) * gauss.Operators
@@ -145,14 +145,18 @@ func slater(s *shell) (gauss.Shell, error) {
 }
 
 func newDiatomicKind(a, b *kind) *diatomicKind {
-	d := &diatomicKind{}
+	d := &diatomicKind{first: []int{0}}
 	for i := range a.shells {
 		for j := range b.shells {
 			pair := gauss.NewAxialPair(&a.shells[i], &b.shells[j])
 			d.integrals = append(d.integrals, pair)
+			d.first = append(d.first, d.first[len(d.first)-1]+pair.Size())
 			d.reach = max(d.reach, pair.Reach())
 			d.h0 = append(d.h0, h0Factor(a.element, b.element, i, j))
 		}
 	}
 	return d
 }
+
+// size is how many different integrals there are.
+func (d *diatomicKind) size() int { return d.first[len(d.integrals)] }

@@ -17,7 +17,6 @@ func TestSelfOverlaps(t *testing.T) {
 		}
 	}
 	readReference(t, "self-overlap.json.gz", &file)
-	var scratch gauss.Scratch
 	for _, v := range file.Values {
 		for _, zeta := range []float64{1, 1.83} { // it does not depend on zeta
 			s := shell{N: int(v.Shell[0] - '0'), L: map[byte]int{'s': 0, 'p': 1, 'd': 2}[v.Shell[1]], Gaussians: int(v.Fit[4] - '0'), Zeta: zeta}
@@ -26,7 +25,7 @@ func TestSelfOverlaps(t *testing.T) {
 				t.Errorf("%s: %v", v.Shell, err)
 				continue
 			}
-			block := gauss.OneCentre(&scratch, &g, &g)
+			block := gauss.OneCentre(&g, &g)
 			for m := range g.Size() {
 				if got := block[(m*g.Size()+m)*gauss.Operators]; math.Abs(got-v.Overlap) > 1e-11 {
 					t.Errorf("%s function %d: %.13f, want %.12f", v.Shell, m, got, v.Overlap)
