@@ -7,6 +7,8 @@
 package dedupe
 
 import (
+	"slices"
+
 	"torsieve/molecule"
 )
 
@@ -14,6 +16,7 @@ import (
 type Options struct {
 	PolarHydrogens bool // hydrogens on N, O and S too: their places make different minima
 	AllHydrogens   bool
+	Handed         bool // mirror images differ, even of a molecule that is its own mirror image
 }
 
 // Limits of the renumberings that are tried one by one.
@@ -30,6 +33,8 @@ type Comparer struct {
 	same     [][]int // renumberings that keep the stated stereo: atoms[k] of one shape lies on atoms[p[k]] of the other
 	inverse  [][]int // renumberings that turn all stated centres over; for mirror images
 	leaves   [][]int // sets of equivalent end atoms (indices into atoms), assigned after each renumbering
+	core     []int   // the rest of the indices, where there are leaves
+	shared   bool    // same and inverse are one list
 	complete bool
 }
 
@@ -49,13 +54,17 @@ func NewComparer(m *molecule.Molecule, o Options) *Comparer {
 	s := newSymmetry(m, c.atoms)
 	maps, all := s.renumberings(nil, exactLimit)
 	if !all {
-		if leaves := s.leaves(); s.coreSize(leaves) >= 3 {
-			c.leaves = leaves
+		if leaves := s.leaves(); len(s.core(leaves)) >= 3 {
+			c.leaves, c.core = leaves, s.core(leaves)
 		}
 		maps, all = s.renumberings(c.leaves, searchLimit)
 	}
 	c.complete = all
 	c.same, c.inverse = s.byStereo(maps)
+	if o.Handed {
+		c.inverse = nil
+	}
+	c.shared = len(c.inverse) == len(c.same) && slices.EqualFunc(c.same, c.inverse, slices.Equal[[]int])
 	return c
 }
 

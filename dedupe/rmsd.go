@@ -2,7 +2,6 @@ package dedupe
 
 import (
 	"math"
-	"slices"
 
 	"torsieve/internal/geom"
 )
@@ -11,12 +10,27 @@ import (
 // two shapes, and whether b had to be mirrored for it. Panics if a or b is not
 // a shape of the Comparer's molecule.
 func (c *Comparer) RMSD(a, b []float64) (rmsd float64, mirrored bool) {
-	best := c.best(c.take(a), c.take(b))
-	return best.rmsd, best.mirrored
+	f := c.best(c.take(a), c.take(b))
+	return f.rmsd, f.mirrored
+}
+
+// Distances is RMSD for many shapes at once: out[i][j] for all j < i, bohr.
+// What is asked of every pair of some hundred shapes is best asked here.
+func (c *Comparer) Distances(xs [][]float64) [][]float64 {
+	clouds := make([]cloud, len(xs))
+	out := make([][]float64, len(xs))
+	for i, x := range xs {
+		clouds[i] = c.take(x)
+		out[i] = make([]float64, i)
+		for j := range i {
+			out[i][j] = c.best(clouds[i], clouds[j]).rmsd
+		}
+	}
+	return out
 }
 
 // take picks the compared atoms out of a shape.
-func (c *Comparer) take(x []float64) []float64 {
+func (c *Comparer) take(x []float64) cloud {
 	if len(x) != 3*c.m.NumAtoms() {
 		panic("dedupe: shape of another molecule")
 	}
@@ -24,129 +38,72 @@ func (c *Comparer) take(x []float64) []float64 {
 	for _, i := range c.atoms {
 		out = append(out, x[3*i], x[3*i+1], x[3*i+2])
 	}
-	return out
+	return newCloud(out)
 }
 
 // A fit is the best way to lay one shape onto another.
 type fit struct {
 	rmsd     float64
 	mirrored bool
-	atoms    []int
+	lays     []int
 }
 
-// best tries all renumberings of compared atoms a and b.
-func (c *Comparer) best(a, b []float64) fit {
+// exactly is the RMSD in bohr below which the quick formula has lost digits.
+const exactly = 0.05
+
+// best tries all renumberings.
+func (c *Comparer) best(a, b cloud) fit {
 	best := fit{rmsd: math.Inf(1)}
-	moved := make([]float64, len(b))
-	shared := len(c.inverse) > 0 && len(c.same) == len(c.inverse) && &c.same[0][0] == &c.inverse[0][0]
 	for _, p := range c.same {
-		renumber(moved, b, p)
-		same, mirrored := geom.RMSD(a, moved)
-		c.offer(&best, a, b, moved, p, same, false)
-		if shared {
-			c.offer(&best, a, b, moved, p, mirrored, true)
+		same, mirrored := distances(a, b, p)
+		c.offer(&best, a, b, p, same, false)
+		if c.shared {
+			c.offer(&best, a, b, p, mirrored, true)
 		}
 	}
-	if !shared {
+	if !c.shared {
 		for _, p := range c.inverse {
-			renumber(moved, b, p)
-			_, mirrored := geom.RMSD(a, moved)
-			c.offer(&best, a, b, moved, p, mirrored, true)
+			_, mirrored := distances(a, b, p)
+			c.offer(&best, a, b, p, mirrored, true)
 		}
+	}
+	if best.rmsd < exactly {
+		best.rmsd = c.exact(a, b, best)
 	}
 	return best
 }
 
-// renumber writes the atoms of b in the order in which they lie on a.
-func renumber(dst, b []float64, p []int) {
-	for k, q := range p {
-		copy(dst[3*k:3*k+3], b[3*q:])
-	}
-}
-
-func (c *Comparer) offer(best *fit, a, b, moved []float64, p []int, rmsd float64, mirrored bool) {
+func (c *Comparer) offer(best *fit, a, b cloud, p []int, rmsd float64, mirrored bool) {
 	if len(c.leaves) > 0 {
-		p, rmsd = c.assign(a, b, moved, p, rmsd, mirrored)
+		p, rmsd = c.assign(a, b, p, rmsd, mirrored)
 	}
 	if rmsd < best.rmsd {
 		*best = fit{rmsd, mirrored, p}
 	}
 }
 
-// rounds of superposing and assigning; it seldom takes more than three.
-const rounds = 5
-
-// assign gives the equivalent end atoms to those that they lie next to, lays
-// the shapes onto each other again, and so on until nothing changes. The
-// result is an upper bound of the smallest RMSD.
-func (c *Comparer) assign(a, b, moved []float64, p []int, rmsd float64, mirrored bool) ([]int, float64) {
-	bestMap, bestRMSD := p, rmsd
-	p = slices.Clone(p)
-	source := b
-	if mirrored {
-		source = slices.Clone(b)
-		for i := 2; i < len(source); i += 3 {
-			source[i] = -source[i]
-		}
+// exact computes the RMSD of a fit point by point.
+func (c *Comparer) exact(a, b cloud, f fit) float64 {
+	moved := renumbered(b.x, f.lays)
+	if f.mirrored {
+		mirror(moved)
 	}
-	for range rounds {
-		renumber(moved, source, p)
-		geom.Align(a, moved).Apply(moved)
-		changed := false
-		for _, set := range c.leaves {
-			changed = reassign(a, moved, p, set) || changed
-		}
-		if !changed {
-			break
-		}
-		renumber(moved, source, p)
-		same, _ := geom.RMSD(a, moved)
-		if same >= bestRMSD {
-			break
-		}
-		bestMap, bestRMSD = slices.Clone(p), same
-	}
-	return bestMap, bestRMSD
+	return geom.Align(a.x, moved).RMSD
 }
 
-// reassign permutes the images of one set of end atoms (two to four) so that
-// the sum of squared distances is smallest.
-func reassign(a, moved []float64, p, set []int) bool {
-	n := len(set)
-	order := [4]int{0, 1, 2, 3}
-	best, bestSum := order, math.Inf(1)
-	var visit func(k int, sum float64)
-	visit = func(k int, sum float64) {
-		if sum >= bestSum-1e-12 {
-			return
-		}
-		if k == n {
-			best, bestSum = order, sum
-			return
-		}
-		for j := k; j < n; j++ {
-			order[k], order[j] = order[j], order[k]
-			visit(k+1, sum+squared(a, set[k], moved, set[order[k]]))
-			order[k], order[j] = order[j], order[k]
-		}
+// renumbered returns the atoms of b in the order in which p lays them on a.
+func renumbered(b []float64, p []int) []float64 {
+	out := make([]float64, len(b))
+	for k, q := range p {
+		copy(out[3*k:3*k+3], b[3*q:])
 	}
-	visit(0, 0)
-	if best == [4]int{0, 1, 2, 3} {
-		return false
-	}
-	var images [4]int
-	for k := range n {
-		images[k] = p[set[best[k]]]
-	}
-	for k := range n {
-		p[set[k]] = images[k]
-	}
-	return true
+	return out
 }
 
-func squared(a []float64, i int, b []float64, j int) float64 {
-	dx, dy, dz := a[3*i]-b[3*j], a[3*i+1]-b[3*j+1], a[3*i+2]-b[3*j+2]
-	return dx*dx + dy*dy + dz*dz
+func mirror(x []float64) {
+	for i := 2; i < len(x); i += 3 {
+		x[i] = -x[i]
+	}
 }
 
 // Superpose lays the shape x onto the shape onto, in place, all atoms of it:
@@ -155,14 +112,17 @@ func squared(a []float64, i int, b []float64, j int) float64 {
 func (c *Comparer) Superpose(onto, x []float64) {
 	a, b := c.take(onto), c.take(x)
 	best := fit{rmsd: math.Inf(1)}
-	moved := make([]float64, len(b))
 	for _, p := range c.same {
-		renumber(moved, b, p)
-		same, _ := geom.RMSD(a, moved)
-		c.offer(&best, a, b, moved, p, same, false)
+		same, _ := distances(a, b, p)
+		c.offer(&best, a, b, p, same, false)
 	}
-	renumber(moved, b, best.atoms)
-	geom.Align(a, moved).Apply(x)
+	var to, from []float64 // the compared atoms where they are
+	for k, i := range c.atoms {
+		j := c.atoms[best.lays[k]]
+		to = append(to, onto[3*i:3*i+3]...)
+		from = append(from, x[3*j:3*j+3]...)
+	}
+	geom.Align(to, from).Apply(x)
 }
 
 // SelfMirror returns the RMSD of a shape to its own mirror image, and false
@@ -174,11 +134,12 @@ func (c *Comparer) SelfMirror(x []float64) (rmsd float64, ok bool) {
 	}
 	a := c.take(x)
 	best := fit{rmsd: math.Inf(1)}
-	moved := make([]float64, len(a))
 	for _, p := range c.inverse {
-		renumber(moved, a, p)
-		_, mirrored := geom.RMSD(a, moved)
-		c.offer(&best, a, a, moved, p, mirrored, true)
+		_, mirrored := distances(a, a, p)
+		c.offer(&best, a, a, p, mirrored, true)
+	}
+	if best.rmsd < exactly {
+		return c.exact(a, a, best), true
 	}
 	return best.rmsd, true
 }

@@ -98,12 +98,15 @@ func (s *symmetry) leaves() [][]int {
 	return sets
 }
 
-func (s *symmetry) coreSize(leaves [][]int) int {
-	n := len(s.atoms)
-	for _, set := range leaves {
-		n -= len(set)
+// core lists the places that are in no set of leaves.
+func (s *symmetry) core(leaves [][]int) []int {
+	var core []int
+	for k := range s.atoms {
+		if !slices.ContainsFunc(leaves, func(set []int) bool { return slices.Contains(set, k) }) {
+			core = append(core, k)
+		}
 	}
-	return n
+	return core
 }
 
 // A backtrack is the search for renumberings: atoms in an order in which each

@@ -43,7 +43,7 @@ func Unique(c *Comparer, xs [][]float64, energies []float64, t Thresholds) []Gro
 	var leaders []leader
 	for _, i := range order {
 		s := leader{energy: energies[i], x: c.take(xs[i])}
-		s.print = fingerprintOf(s.x)
+		s.print = fingerprintOf(s.x.x)
 		k, mirrored := c.join(leaders, s, t)
 		if k < 0 {
 			s.group = Group{Keep: i}
@@ -62,7 +62,7 @@ func Unique(c *Comparer, xs [][]float64, energies []float64, t Thresholds) []Gro
 
 type leader struct {
 	energy float64
-	x      []float64 // compared atoms
+	x      cloud
 	print  fingerprint
 	group  Group
 }
