@@ -8,7 +8,7 @@ const closest2 = 1e-4
 
 // separate returns an error where a coordinate is not finite or two atoms have
 // the same place. It looks at all pairs: the bonded terms divide by distances.
-func (t *tables) separate(x []float64) error {
+func separate(x []float64) error {
 	var sum float64
 	for _, v := range x {
 		sum += v
@@ -32,22 +32,14 @@ func (t *tables) separate(x []float64) error {
 	return nil
 }
 
-// coulomb makes the electrostatic term of the given charges: atoms three bonds
-// apart count half (own choice), nearer ones not at all.
-func (t *tables) coulomb(q []float64) charges {
-	n := len(q)
-	out := make(charges, 0, len(t.hard))
-	for i := range n {
-		for j := i + 1; j < n; j++ {
-			share := 1.0
-			switch t.apart[i*n+j] {
-			case 0, 1, 2:
-				continue
-			case 3:
-				share = oneFourShare
-			}
-			out = append(out, charged{int32(i), int32(j), coulombEnergy * q[i] * q[j] * share})
-		}
+// finite returns an error where the energy or a gradient component is not.
+func finite(energy float64, grad []float64) error {
+	sum := energy
+	for _, g := range grad {
+		sum += math.Abs(g)
 	}
-	return out
+	if math.IsNaN(sum) || math.IsInf(sum, 0) {
+		return ErrNotFinite
+	}
+	return nil
 }

@@ -2,23 +2,14 @@ package forcefield
 
 import "torsieve/internal/units"
 
-// A charged is the screened Coulomb term of two atoms with a dielectric that
-// grows with the distance: qq / (e r^2 + delta).
+// The electrostatic term is the screened Coulomb energy of frozen charges with
+// a dielectric that grows with the distance: qq / (e r^2 + offset).
 //
 // The force field was fitted without charges, and with a dielectric of 1 those
 // in a vacuum would fold every ligand onto its own hydrogen bonds; the old
 // distance-dependent dielectric of 4 r (r in angstrom) stands for what screens
-// them. Own choices: the offset delta, and half strength between atoms three
-// bonds apart.
-type charged struct {
-	i, j int32
-	qq   float64 // product of the charges, scaled; hartree
-}
-
-type charges []charged
-
-func (charges) name() string { return "electrostatic" }
-
+// them. Own choices: the offset, and half strength between atoms three bonds
+// apart.
 const (
 	// coulombEnergy is 332.0637 kcal/mol: two unit charges 1 angstrom apart.
 	coulombEnergy   = 332.0637 * units.KcalPerMol
@@ -27,26 +18,18 @@ const (
 	oneFourShare    = 0.5
 )
 
-func (cs charges) addTo(grad, x []float64) float64 {
-	var energy float64
-	for n := range cs {
-		c := &cs[n]
-		a, b := x[3*c.i:3*c.i+3:3*c.i+3], x[3*c.j:3*c.j+3:3*c.j+3]
-		d0, d1, d2 := a[0]-b[0], a[1]-b[1], a[2]-b[2]
-		inv := 1 / (screening*(d0*d0+d1*d1+d2*d2) + screeningOffset)
-		e := c.qq * inv
-		energy += e
-		if grad == nil {
-			continue
+// withCharges returns a copy of the uncharged pairs of the tables with the
+// products of the charges q.
+func (t *tables) withCharges(q []float64) *nonbonded {
+	out := &nonbonded{rows: t.uncharged.rows, pairs: append([]pair(nil), t.uncharged.pairs...)}
+	for _, r := range out.rows {
+		for k := r.from; k < r.to; k++ {
+			p := &out.pairs[k]
+			p.qq = coulombEnergy * q[r.i] * q[p.j]
+			if t.apart[int(r.i)*len(q)+int(p.j)] == 3 {
+				p.qq *= oneFourShare
+			}
 		}
-		f := -2 * screening * e * inv
-		ga, gb := grad[3*c.i:3*c.i+3:3*c.i+3], grad[3*c.j:3*c.j+3:3*c.j+3]
-		ga[0] += f * d0
-		ga[1] += f * d1
-		ga[2] += f * d2
-		gb[0] -= f * d0
-		gb[1] -= f * d1
-		gb[2] -= f * d2
 	}
-	return energy
+	return out
 }

@@ -17,6 +17,10 @@ func (f slope) Gradient(ctx context.Context, grad, x []float64) (float64, error)
 // without the parts, and without allocating. It uses s and goes with it.
 func (s *Surface) Slope() relax.Surface { return slope{s} }
 
+// mostModelled is the number of atoms up to which a model Hessian is worth its
+// cubic cost.
+const mostModelled = 250
+
 // Minimise relaxes x (3N, bohr) in place; see relax.Minimise. It starts from a
 // model Hessian, and keeps its memory for the next call.
 func (s *Surface) Minimise(ctx context.Context, x []float64, set relax.Settings) (relax.Result, error) {
@@ -24,6 +28,8 @@ func (s *Surface) Minimise(ctx context.Context, x []float64, set relax.Settings)
 	if s.minimiser == nil {
 		s.minimiser = relax.NewMinimiser(len(x))
 	}
-	set.Numbers = s.tables.numbers
+	if set.Numbers = s.tables.numbers; len(set.Numbers) > mostModelled {
+		set.Numbers = nil
+	}
 	return s.minimiser.Minimise(ctx, slope{s}, x, set)
 }

@@ -61,7 +61,7 @@ func (m refMolecule) skeleton(t *testing.T) *skeleton {
 
 // reference returns the published terms.
 func (s *skeleton) reference() []term {
-	return append(s.bonded(Reference(), nil, false), s.pairs(s.bondsApart(), 1))
+	return append(s.bonded(Reference(), nil, false), whole{s.pairs(s.bondsApart(), 1)})
 }
 
 func flat(xyz [][3]float64, unit float64) []float64 {
@@ -91,7 +91,7 @@ func TestMoleculesTermByTerm(t *testing.T) {
 			near(t, "stretches", float64(len(s.stretches())), float64(m.Counts["bonds"]), 0)
 			near(t, "bends", float64(len(s.bends(nil, false))), float64(m.Counts["angles"]), 0)
 			near(t, "torsions", float64(len(s.torsions(nil))), float64(m.Counts["torsions"]), 0)
-			near(t, "pairs", float64(len(s.pairs(s.bondsApart(), 1))), float64(m.Counts["vdw"]), 0)
+			near(t, "pairs", float64(len(s.pairs(s.bondsApart(), 1).pairs)), float64(m.Counts["vdw"]), 0)
 		})
 	}
 }

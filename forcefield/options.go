@@ -8,7 +8,7 @@ type Options struct {
 	NitrogenInversion bool   // sp2 nitrogen is kept flat with 6 kcal/mol; the paper has 0
 	Ammonium          bool   // nitrogen with four neighbours is tetrahedral; the paper keeps 106.7 degrees
 	SmallRings        bool   // natural angles of rings of three and four
-	PolarHydrogens    bool   // hydrogen on N, O, S is smaller by 15 % when there are charges
+	PolarHydrogens    bool   // with charges: hydrogen on N, O, S is 15 % smaller towards atoms four or more bonds away
 	SoftCore          bool   // repulsion without violence, for starting structures
 }
 
@@ -24,7 +24,7 @@ type Options struct {
 //	with corrections       2.32  0.73  4.2
 //	with charges           2.29  0.75  4.1
 //	with both              2.28  0.72  3.9
-//	both, small polar H    1.36  0.70  3.8
+//	both, small polar H    1.37  0.71  3.9
 //
 // All are rough (conformers taken as equal deviate by 0.66): choose with a wide
 // window.

@@ -103,7 +103,7 @@ func TestPublishedBarriers(t *testing.T) {
 		top    hold
 	}{
 		"CH3-CH3":                  {"CC", hold{2, 0, 1, 5, 0}},
-		"CH3-NH2":                  {"CN", hold{2, 0, 1, 5, 180}},
+		"CH3-NH2":                  {"CN", hold{2, 0, 1, 5, 0}},
 		"CH3-PH2":                  {"CP", hold{2, 0, 1, 5, 0}},
 		"CH3-OH":                   {"CO", hold{2, 0, 1, 5, 0}},
 		"CH3-SH":                   {"CS", hold{2, 0, 1, 5, 0}},
@@ -125,7 +125,12 @@ func TestPublishedBarriers(t *testing.T) {
 			t.Fatalf("no rotor for %q", want.Bond)
 		}
 		seen++
-		got := newLab(t, c.smiles, Reference(), 6).above(c.top)
+		l, got := newLab(t, c.smiles, Reference(), 6), math.Inf(-1)
+		for off := -30.0; off <= 30; off += 5 { // pyramids put the top off centre
+			h := c.top
+			h.degrees += off
+			got = math.Max(got, l.above(h))
+		}
 		near(t, want.Bond, got, *want.Prototype, 0.03)
 		if math.Abs(*want.Prototype-want.Printed) < 0.05 {
 			near(t, want.Bond+", printed", got, want.Printed, 0.06)

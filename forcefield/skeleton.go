@@ -228,23 +228,25 @@ func (s *skeleton) bondsApart() []int8 {
 }
 
 // pairs are all atoms three or more bonds apart. polar, the share of x that a
-// hydrogen on nitrogen, oxygen or sulfur keeps, is 1 in the paper.
-func (s *skeleton) pairs(apart []int8, polar float64) pairs {
+// hydrogen on nitrogen, oxygen or sulfur keeps towards atoms more than three
+// bonds away, is 1 in the paper; nearer, barriers of rotors depend on it.
+func (s *skeleton) pairs(apart []int8, polar float64) *nonbonded {
 	n := len(s.types)
-	out := make(pairs, 0, n*n/2)
+	out := &nonbonded{pairs: make([]pair, 0, n*n/2)}
 	for i := range n {
 		for j := i + 1; j < n; j++ {
 			if apart[i*n+j] < 3 {
 				continue
 			}
 			x2, d := wellOf(s.types[i], s.types[j])
-			if s.polarHydrogen(i) {
-				x2 *= polar
+			if apart[i*n+j] > 3 {
+				for _, atom := range [2]int{i, j} {
+					if s.polarHydrogen(atom) {
+						x2 *= polar
+					}
+				}
 			}
-			if s.polarHydrogen(j) {
-				x2 *= polar
-			}
-			out = append(out, pair{int32(i), int32(j), x2, d})
+			out.add(i, pair{j: int32(j), x2: x2, d: d})
 		}
 	}
 	return out

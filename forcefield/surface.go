@@ -25,6 +25,8 @@ import (
 type Surface struct {
 	tables    *tables // shared by clones
 	terms     []term
+	nonbonded *nonbonded
+	soft      bool
 	charges   []float64 // frozen, e; nil before FreezeCharges
 	warnings  []string
 	minimiser *relax.Minimiser
@@ -60,9 +62,11 @@ func New(m *molecule.Molecule, o Options) (*Surface, error) {
 	tab.apart = tab.skeleton.bondsApart()
 	tab.bonded = tab.skeleton.bonded(o, t, false)
 	tab.open = tab.skeleton.bonded(o, t, true)
-	tab.hard = tab.skeleton.pairs(tab.apart, o.polarShare())
-	s := &Surface{tables: tab, warnings: t.warnings}
-	s.assemble(o.SoftCore)
+	tab.uncharged = tab.skeleton.pairs(tab.apart, o.polarShare())
+	s := &Surface{tables: tab, warnings: t.warnings, terms: tab.bonded, nonbonded: tab.uncharged}
+	if o.SoftCore {
+		s.soften()
+	}
 	return s, nil
 }
 
@@ -108,19 +112,6 @@ func (s *skeleton) bonded(o Options, t *typing, open bool) []term {
 	return terms
 }
 
-// assemble lists the terms that count now. Soft surfaces have no charges:
-// opposite ones would pull overlapping atoms together.
-func (s *Surface) assemble(soft bool) {
-	if soft {
-		s.terms = append(s.tables.open[:len(s.tables.open):len(s.tables.open)], softPairs(s.tables.hard))
-		return
-	}
-	s.terms = append(s.tables.bonded[:len(s.tables.bonded):len(s.tables.bonded)], s.tables.hard)
-	if s.charges != nil {
-		s.terms = append(s.terms, s.tables.coulomb(s.charges))
-	}
-}
-
 // Clone returns a surface that shares the tables and has scratch of its own.
 func (s *Surface) Clone() *Surface {
 	c := *s
@@ -133,8 +124,12 @@ func (s *Surface) Clone() *Surface {
 // charges.
 func (s *Surface) Softened() *Surface {
 	c := s.Clone()
-	c.assemble(true)
+	c.soften()
 	return c
+}
+
+func (s *Surface) soften() {
+	s.terms, s.nonbonded, s.soft = s.tables.open, s.tables.uncharged, true
 }
 
 // FreezeCharges computes charges at x (3N, bohr), makes symmetry-equivalent
@@ -169,7 +164,13 @@ func (s *Surface) SetCharges(q []float64) error {
 		}
 	}
 	s.charges = append([]float64(nil), q...)
-	s.assemble(s.tables.options.SoftCore)
+	switch {
+	case s.soft: // has no charges
+	case q == nil:
+		s.nonbonded = s.tables.uncharged
+	default:
+		s.nonbonded = s.tables.withCharges(q)
+	}
 	return nil
 }
 
@@ -208,39 +209,46 @@ func (s *Surface) Gradient(ctx context.Context, grad, x []float64) (molecule.Poi
 }
 
 func (s *Surface) point(ctx context.Context, grad, x []float64) (molecule.Point, error) {
-	p := molecule.Point{Charges: s.charges, Warnings: s.warnings, Parts: make([]molecule.Part, len(s.terms))}
+	p := molecule.Point{Charges: s.charges, Warnings: s.warnings, Parts: make([]molecule.Part, 0, len(s.terms)+2)}
 	var err error
-	p.Energy, err = s.sum(ctx, p.Parts, grad, x)
+	p.Energy, err = s.sum(ctx, &p.Parts, grad, x)
 	return p, err
 }
 
-// sum adds the terms up; parts may be nil. It allocates nothing.
-func (s *Surface) sum(ctx context.Context, parts []molecule.Part, grad, x []float64) (float64, error) {
+// sum adds the terms up, and appends them to parts unless that is nil. It
+// allocates nothing.
+func (s *Surface) sum(ctx context.Context, parts *[]molecule.Part, grad, x []float64) (float64, error) {
 	if err := ctx.Err(); err != nil {
 		return 0, err
 	}
 	s.check(x)
-	if err := s.tables.separate(x); err != nil {
+	if err := separate(x); err != nil {
 		return 0, err
 	}
 	clear(grad)
 	var energy float64
-	for n, t := range s.terms {
-		e := t.addTo(grad, x)
+	note := func(name string, e float64) {
 		energy += e
 		if parts != nil {
-			parts[n] = molecule.Part{Name: t.name(), Energy: e}
+			*parts = append(*parts, molecule.Part{Name: name, Energy: e})
 		}
 	}
-	all := energy
-	for _, g := range grad {
-		all += math.Abs(g)
+	for _, t := range s.terms {
+		note(t.name(), t.addTo(grad, x))
 	}
-	if math.IsNaN(all) || math.IsInf(all, 0) {
-		return 0, ErrNotFinite
+	if s.soft {
+		note(vanDerWaals, s.nonbonded.addSoftTo(grad, x))
+	} else {
+		vdw, electrostatic := s.nonbonded.addTo(grad, x)
+		note(vanDerWaals, vdw)
+		if s.charges != nil {
+			note("electrostatic", electrostatic)
+		}
 	}
-	return energy, nil
+	return energy, finite(energy, grad)
 }
+
+const vanDerWaals = "van der Waals"
 
 func (s *Surface) check(x []float64) {
 	if len(x) != 3*s.tables.m.NumAtoms() {

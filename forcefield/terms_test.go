@@ -159,10 +159,11 @@ func TestSinglePairs(t *testing.T) {
 		x2, d := wellOf(typeNamed(t, p.I), typeNamed(t, p.J))
 		near(t, p.I+" "+p.J+" x", math.Sqrt(x2)/ang, p.X, 6e-7)
 		near(t, p.I+" "+p.J+" D", d/kcal, p.D, 6e-7)
-		ps := pairs{{0, 1, x2, d}}
+		ps := only(0, pair{1, x2, d, 0})
 		for r, want := range p.E {
 			x := []float64{0, 0, 0, 0, number(t, r) * ang, 0}
-			near(t, p.I+" "+p.J+" at "+r, ps.addTo(nil, x)/kcal, want, 6e-7*math.Max(1, math.Abs(want)))
+			vdw, _ := ps.addTo(nil, x)
+			near(t, p.I+" "+p.J+" at "+r, vdw/kcal, want, 6e-7*math.Max(1, math.Abs(want)))
 		}
 	}
 }
@@ -196,8 +197,8 @@ func TestCoulombExample(t *testing.T) {
 	// same product of dielectric and distance.
 	e := loadSingleTerms(t).Coulomb.Example
 	r := math.Sqrt((e.Eps*e.R - screeningOffset) / screening)
-	cs := charges{{0, 1, coulombEnergy * e.Q1 * e.Q2}}
-	near(t, "energy", cs.addTo(nil, []float64{0, 0, 0, r, 0, 0})/kcal, e.E, 1e-6)
+	_, energy := only(0, pair{1, 1, 0, coulombEnergy * e.Q1 * e.Q2}).addTo(nil, []float64{0, 0, 0, r, 0, 0})
+	near(t, "energy", energy/kcal, e.E, 1e-6)
 }
 
 // bentFour is four bonded points of no symmetry.
@@ -222,9 +223,10 @@ func TestTermGradients(t *testing.T) {
 		{"fading torsion", torsions{{0, 1, 2, 3, 2, 1, 1}}, nearlyStraight},
 		{"planar", inversions{{0, 1, 2, 3, 1, 1, -1, 0}}, bentFour},
 		{"pyramid", inversions{{0, 1, 2, 3, 1, 1.02, -0.39, 1}}, bentFour},
-		{"pair", pairs{{0, 3, 20, 1}}, bentFour},
-		{"soft pair", softPairs{{0, 3, 200, 0.1}, {0, 1, 4, 1}}, bentFour},
-		{"charges", charges{{0, 3, 1}}, bentFour},
+		{"pair", whole{only(0, pair{3, 20, 1, 0})}, bentFour},
+		{"charges", whole{only(0, pair{3, 0, 0, 1})}, bentFour},
+		{"soft pair inside", soft{only(0, pair{3, 200, 0.1, 0})}, bentFour},
+		{"soft pair outside", soft{only(0, pair{1, 4, 1, 0})}, bentFour},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			x := append([]float64(nil), c.x...)
@@ -235,16 +237,40 @@ func TestTermGradients(t *testing.T) {
 	}
 }
 
+// only is a sum over one pair.
+func only(i int, p pair) *nonbonded {
+	n := &nonbonded{}
+	n.add(i, p)
+	return n
+}
+
+// whole and soft are the nonbonded sums as terms.
+type (
+	whole struct{ *nonbonded }
+	soft  struct{ *nonbonded }
+)
+
+func (whole) name() string { return vanDerWaals }
+func (soft) name() string  { return vanDerWaals }
+
+func (w whole) addTo(grad, x []float64) float64 {
+	vdw, electrostatic := w.nonbonded.addTo(grad, x)
+	return vdw + electrostatic
+}
+
+func (s soft) addTo(grad, x []float64) float64 { return s.addSoftTo(grad, x) }
+
 func TestSoftCoreTouchesThePair(t *testing.T) {
-	p := pair{0, 1, 36, 0.001}
+	p := only(0, pair{1, 36, 0.001, 0})
 	for _, share := range []float64{0.6, 0.600001, 1.5} {
 		x := []float64{0, 0, 0, 0, 0, 6 * share}
-		near(t, "energy", softPairs{p}.addTo(nil, x), pairs{p}.addTo(nil, x), 1e-12)
+		hard, _ := p.addTo(nil, x)
+		near(t, "energy", p.addSoftTo(nil, x), hard, 1e-12)
 	}
 	hard, soft := make([]float64, 6), make([]float64, 6)
 	x := []float64{0, 0, 0, 0, 0, 6 * (softCore - 1e-9)}
-	pairs{p}.addTo(hard, x)
-	softPairs{p}.addTo(soft, x)
+	p.addTo(hard, x)
+	p.addSoftTo(soft, x)
 	near(t, "slope", soft[5], hard[5], 1e-6*math.Abs(hard[5]))
 }
 
