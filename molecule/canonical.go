@@ -9,14 +9,14 @@ import (
 // whose cells are no orbits) gets an order that depends on the input.
 const (
 	maxCanonicalLeaves = 3000
-	maxCanonicalWork   = 20_000_000 // nodes visited
+	maxCanonicalWork   = 100_000_000 // nodes visited
 )
 
 // A ranking is the outcome of canonical ranking.
 type ranking struct {
 	rank        []int    // by node, 0..n-1
 	certificate []uint64 // equal for graphs that are equal up to the order of nodes
-	generators  [][]int  // automorphisms found on the way: node -> node
+	work        int      // nodes visited on the way
 }
 
 // canonical ranks the nodes so that equal graphs get equal certificates,
@@ -30,7 +30,7 @@ func (g *labelled) canonical() ranking {
 	p := newPartition(g.colour)
 	g.refine(p, slices.Clone(p.order))
 	s.descend(p, nil, 0)
-	return ranking{s.best.rank, s.best.certificate, s.generators}
+	return ranking{s.best.rank, s.best.certificate, s.work}
 }
 
 // cells returns the colour cells of plain refinement, without a search.
@@ -58,7 +58,7 @@ type leaf struct {
 // nodes is given, and returns the depth at which to go on: the depth of the
 // node itself, or less where all below it is known to be equivalent.
 func (s *canonicalSearch) descend(p *partition, path []int, depth int) int {
-	s.work += len(p.order)
+	s.work += 4 * len(p.order)
 	target := targetCell(p)
 	if target < 0 {
 		return s.atLeaf(p, path, depth)
@@ -163,7 +163,7 @@ func (s *canonicalSearch) equivalent(v int, tried, path []int) bool {
 			}
 		}
 	}
-	s.work += len(s.generators)
+	s.work += len(s.generators) * len(orbit) / 8
 	return slices.ContainsFunc(tried, func(w int) bool { return find(w) == find(v) })
 }
 

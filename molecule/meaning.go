@@ -22,13 +22,14 @@ type stereoSearch struct {
 	views    []*view   // by fragment
 	fragment []int     // by atom
 	sure     [2][]bool // by centre, by bond: different neighbours in any case
-	work     int       // nodes ranked so far
+	cells    [][]int   // by fragment: cells in the arrangement at work, nil if not needed yet
+	work     int       // nodes visited so far
 	warnings []string
 }
 
 // maxStereoWork bounds the time spent on elements whose neighbours are alike,
-// in nodes ranked; those beyond are taken for none.
-const maxStereoWork = 400_000
+// in nodes visited; those beyond are taken for none.
+const maxStereoWork = 20_000_000
 
 // stereoTrials is the number of arrangements of all candidates in which an
 // element that is not stated may show that it matters.
@@ -65,6 +66,7 @@ func (s *stereoSearch) prepare() {
 	g := s.g
 	class := g.shared.classes()
 	s.views = make([]*view, len(g.fragments))
+	s.cells = make([][]int, len(g.fragments))
 	s.sure[0] = make([]bool, len(s.centres))
 	for n, c := range s.centres {
 		s.sure[0][n] = allDifferent(class, c.Neighbours[:])
@@ -214,6 +216,7 @@ func (s *stereoSearch) checkTies() {
 func (s *stereoSearch) dropMeaningless() {
 	for changed := true; changed; {
 		changed = false
+		clear(s.cells)
 		var emptyC, emptyB []int
 		for n := range s.centres {
 			if s.group[n] == n && s.doubtful(n) && !s.centreMatters(n, s.centres, s.bonds) {
@@ -267,6 +270,7 @@ func (s *stereoSearch) findOpen() (centres, bonds []bool) {
 	}
 	for trial := range stereoTrials {
 		cs, bs := s.arrangement(trial)
+		clear(s.cells)
 		open := false
 		for n := range s.centres {
 			if first := s.group[n]; !centres[n] {
@@ -324,52 +328,4 @@ func scramble(a, b int) uint64 {
 	x = (x ^ x>>30) * 0xbf58476d1ce4e5b9
 	x = (x ^ x>>27) * 0x94d049bb133111eb
 	return (x ^ x>>31) >> 7
-}
-
-// centreMatters says whether inverting centre n, and with it the centres that
-// its cage ties to it, gives something different while they stay in place.
-func (s *stereoSearch) centreMatters(n int, cs []Centre, bs []StereoBond) bool {
-	f := s.g.shared.fragment[cs[n].Atom]
-	v := s.fragmentView(f)
-	inverted := slices.Clone(cs)
-	var held []int
-	for m := range cs {
-		if s.group[m] == s.group[n] {
-			inverted[m].Parity = -cs[m].Parity
-			held = append(held, v.node[cs[m].Atom])
-		}
-	}
-	return s.differ(f, held, cs, bs, inverted, bs)
-}
-
-func (s *stereoSearch) bondMatters(n int, cs []Centre, bs []StereoBond) bool {
-	f := s.g.shared.fragment[bs[n].J]
-	v := s.fragmentView(f)
-	inverted := slices.Clone(bs)
-	inverted[n].Cis = !bs[n].Cis
-	return s.differ(f, []int{v.node[bs[n].J], v.node[bs[n].K]}, cs, bs, cs, inverted)
-}
-
-func (s *stereoSearch) fragmentView(f int) *view {
-	if s.views[f] == nil {
-		s.views[f] = s.g.view(f, true)
-	}
-	return s.views[f]
-}
-
-// differ compares two sets of statements with some nodes held in place.
-func (s *stereoSearch) differ(f int, held []int, c1 []Centre, b1 []StereoBond, c2 []Centre, b2 []StereoBond) bool {
-	if s.work > maxStereoWork {
-		return false
-	}
-	v := s.fragmentView(f)
-	s.work += 2 * len(v.atoms)
-	l := &view{labelled: labelled{colour: slices.Clone(v.colour), arcs: v.arcs}, atoms: v.atoms, node: v.node}
-	for _, n := range held {
-		l.colour[n] = len(v.atoms) // of a cage group only the whole stays in place
-	}
-	l.setStereo(s.g, f, c1, b1)
-	first := l.canonical()
-	l.setStereo(s.g, f, c2, b2)
-	return !slices.Equal(first.certificate, l.canonical().certificate)
 }

@@ -28,17 +28,16 @@ func (m *Molecule) RotatableBonds() int {
 func (m *Molecule) findRotors() []Rotor {
 	var rotors []Rotor
 	cells := m.stereoClasses()
+	seen := make([]int, len(m.atoms))
 	for k, b := range m.bonds {
 		if m.inRing[k] || !m.turns(k) || !m.offAxis(b.A, b.B) || !m.offAxis(b.B, b.A) {
 			continue
 		}
 		r := Rotor{Bond: k, J: b.A, K: b.B, AmideLike: m.amideLike(b.A, b.B) || m.amideLike(b.B, b.A) || b.Order == 2}
-		onJ, onK := m.side(b.B, b.A), m.side(b.A, b.B)
-		if len(onJ) < len(onK) {
+		moving, ofB := m.smallerSide(b.A, b.B, seen, k+1)
+		if r.Moving = moving; !ofB {
 			r.J, r.K = r.K, r.J
-			onK = onJ
 		}
-		r.Moving = onK
 		r.PeriodJ, r.PeriodK = m.period(r.J, r.K, cells), m.period(r.K, r.J, cells)
 		r.Idle = m.idleEnd(r.J, r.K, r.PeriodJ) || m.idleEnd(r.K, r.J, r.PeriodK)
 		r.Counted = !r.AmideLike && m.branches(r.J, r.K) && m.branches(r.K, r.J)
@@ -113,23 +112,30 @@ func (m *Molecule) amideLike(c, n int) bool {
 	return false
 }
 
-// side returns the atoms that hang on i as seen from j over an acyclic bond, i
-// left out, ascending.
-func (m *Molecule) side(j, i int) []int {
-	seen := map[int]bool{i: true, j: true}
-	queue := []int{i}
-	var side []int
-	for at := 0; at < len(queue); at++ {
-		for _, n := range m.neighbours[queue[at]] {
-			if !seen[n] {
-				seen[n] = true
-				queue = append(queue, n)
-				side = append(side, n)
+// smallerSide returns the smaller of the two sides of acyclic bond i-j: the
+// atoms on it, its end left out, ascending, and whether it is the side of j. The
+// sides grow in turn until one is complete; of equal ones it is that of j.
+func (m *Molecule) smallerSide(i, j int, seen []int, stamp int) (atoms []int, ofJ bool) {
+	sides := [2][]int{{j}, {i}}
+	var at [2]int
+	seen[i], seen[j] = stamp, stamp
+	for {
+		for s := range sides {
+			if at[s] == len(sides[s]) {
+				atoms = sides[s][1:]
+				slices.Sort(atoms)
+				return atoms, s == 0
+			}
+			a := sides[s][at[s]]
+			at[s]++
+			for _, n := range m.neighbours[a] {
+				if seen[n] != stamp {
+					seen[n] = stamp
+					sides[s] = append(sides[s], n)
+				}
 			}
 		}
 	}
-	slices.Sort(side)
-	return side
 }
 
 // stereoClasses returns symmetry classes that tell branches of different
