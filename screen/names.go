@@ -18,16 +18,16 @@ type namer struct{ taken map[string]bool }
 func newNamer() *namer { return &namer{taken: map[string]bool{}} }
 
 // stem returns a file name without ending for id. An id that is safe as it
-// stands keeps its name; of any other the unsafe characters become "_" and a
-// hash of the id follows, so that the name depends on the id alone as long as
-// no two names collide.
+// stands keeps its name; of any other the unsafe characters become "_", "id_"
+// goes before and a hash of the id follows, so that the name depends on the id
+// alone as long as no two names collide.
 func (n *namer) stem(id string) string {
 	safe := strings.Map(safeRune, id)
 	if len(safe) > maxStem {
 		safe = safe[:maxStem]
 	}
 	if safe != id || strings.HasPrefix(id, "-") || strings.HasSuffix(id, ".") || reserved(id) || n.taken[strings.ToLower(safe)] {
-		safe = strings.Trim(safe, "._-~") + "_" + shortHash(id)
+		safe = "id_" + strings.Trim(safe, "._-~") + "_" + shortHash(id)
 	}
 	name := safe
 	for k := 2; n.taken[strings.ToLower(name)]; k++ {

@@ -85,14 +85,15 @@ const (
 
 // WindowFor is the energy window above the lowest conformer, in hartree, whose
 // conformers go from the semi-empirical tier to the next one: 5 kcal/mol, and
-// half a kcal/mol for each rotatable bond beyond three, but at most 10.
+// half a kcal/mol for each bond beyond three that can turn (Flexibility), but at
+// most 10.
 //
 // Of the conformers within 3 kcal/mol of the true minimum, GFN2-xTB has 99 %
 // within 2.8 kcal/mol of its own minimum for molecules with up to 3 rotatable
 // bonds, 3.2 with 4 or 5, 4.0 with 6 to 8 and 9.3 with 9 and more (684
 // molecules of Folmsbee, Hutchison, Int. J. Quantum Chem. 2021, e26381, doi
 // 10.1002/qua.26381, with DLPNO-CCSD(T) energies).
-func WindowFor(rotatable int) float64 {
-	kcal := 5 + 0.5*float64(max(0, rotatable-3))
+func WindowFor(flexibility int) float64 {
+	kcal := 5 + 0.5*float64(max(0, flexibility-3))
 	return math.Min(kcal, 10) * units.KcalPerMol
 }

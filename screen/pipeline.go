@@ -3,6 +3,7 @@ package screen
 import (
 	"cmp"
 	"context"
+	"errors"
 	"fmt"
 	"math"
 	"slices"
@@ -17,8 +18,8 @@ import (
 //	generate -> forcefield -> dedupe -> semiempirical -> dedupe -> hf -> ensemble
 //
 // Read run first: each line is a folder. The generator relaxes its shapes in
-// the force field and drops doubles itself, so tier 0 is done with it. How many
-// geometries go on from a line to the next is decided in promote.go.
+// the force field itself. How many geometries go on from a line to the next is
+// decided in promote.go.
 type ligandRun struct {
 	*machine
 	ligand     *Ligand
@@ -36,7 +37,7 @@ func (r *ligandRun) run(ctx context.Context) error {
 	}
 	for tier := 1; tier < len(r.tiers); tier++ {
 		if err := r.climb(ctx, tier); err != nil {
-			return fmt.Errorf("%s: %w", r.tiers[tier].Name(), err)
+			return TierError(r.tiers[tier], err)
 		}
 	}
 	r.weigh()
@@ -59,7 +60,7 @@ func (r *ligandRun) accept() error {
 			return err
 		})
 		if err != nil {
-			return fmt.Errorf("%s: %w", tier.Name(), err)
+			return TierError(tier, err)
 		}
 	}
 	return nil
@@ -92,6 +93,7 @@ func (r *ligandRun) generate(ctx context.Context) error {
 		r.conformers = append(r.conformers, Conformer{Number: i + 1, X: c.X, Family: c.Family, Energies: energies})
 	}
 	r.result.Entered[0] = len(found.Conformers)
+	r.dropDoubles(0, r.alive(0))
 	return nil
 }
 
@@ -106,41 +108,68 @@ func (r *ligandRun) climb(ctx context.Context, tier int) error {
 		return err
 	}
 	var reached []int
-	var first error
+	var lost losses
 	for k, i := range up {
 		r.result.Took[tier] += outcomes[k].took
 		if err := r.settle(tier, &r.conformers[i], outcomes[k]); err != nil {
-			if first == nil {
-				first = err
-			}
+			lost.add(err)
 			continue
 		}
 		reached = append(reached, i)
 	}
 	if len(reached) == 0 {
-		return fmt.Errorf("none of %d conformers could be computed, the first: %w", len(up), first)
+		return fmt.Errorf("none of %d conformers came through: %w", len(up), lost.first())
 	}
-	if failed := len(up) - len(reached); failed > 0 {
-		r.result.Status = Partial
-		r.result.Reason = fmt.Sprintf("%s: %d of %d conformers could not be computed, the first: %v",
-			r.tiers[tier].Name(), failed, len(up), first)
-	}
+	r.tellLosses(tier, len(up), lost)
 	r.dropDoubles(tier, reached)
 	return nil
 }
+
+// losses are the conformers that a tier could not bring back.
+type losses struct {
+	failed, changed []error
+}
+
+func (l *losses) add(err error) {
+	if errors.As(err, new(changed)) {
+		l.changed = append(l.changed, err)
+		return
+	}
+	l.failed = append(l.failed, err)
+}
+
+func (l *losses) first() error { return append(l.failed, l.changed...)[0] }
+
+// tellLosses: a conformer that became another molecule is no loss to the
+// ensemble, one without an energy is.
+func (r *ligandRun) tellLosses(tier, of int, l losses) {
+	if n := len(l.changed); n > 0 {
+		r.warnf("%s: %d of %d conformers became another molecule, the first: %v", r.tiers[tier].Name(), n, of, l.changed[0])
+	}
+	if n := len(l.failed); n > 0 {
+		r.result.Status = Partial
+		r.result.Reason = fmt.Sprintf("%s: %d of %d conformers could not be computed, the first: %v",
+			r.tiers[tier].Name(), n, of, l.failed[0])
+	}
+}
+
+// changed says that a relaxed geometry is no longer the ligand.
+type changed struct{ error }
 
 // settle writes a tier's answer into the conformer. A geometry that moved must
 // still be the same molecule.
 func (r *ligandRun) settle(tier int, c *Conformer, o outcome) error {
 	err := o.err
-	moved := err == nil && !slices.Equal(o.x, c.X)
-	if moved {
+	if err == nil && !slices.Equal(o.x, c.X) {
 		if err = sameBonds(r.ligand.Mol, o.x); err == nil {
 			err = r.ligand.Mol.StereoMatches(o.x)
 		}
+		if err != nil {
+			err = changed{err}
+		}
 	}
 	if err != nil {
-		c.Why = fmt.Sprintf("%s: %v", r.tiers[tier].Name(), err)
+		c.Why = TierError(r.tiers[tier], err).Error()
 		return fmt.Errorf("conformer %d: %w", c.Number, err)
 	}
 	c.X, c.Energies[tier], c.Last = o.x, o.energy, tier

@@ -6,6 +6,7 @@ import (
 	"slices"
 
 	"torsieve/internal/units"
+	"torsieve/molecule"
 )
 
 // promote returns the conformers, by index, that go up to a tier, in the order
@@ -47,7 +48,7 @@ func (r *ligandRun) capped(alive []int) []int {
 func (r *ligandRun) window(alive []int, tier int) []int {
 	window := r.options.Window
 	if window == 0 {
-		window = WindowFor(r.ligand.Mol.RotatableBonds())
+		window = WindowFor(Flexibility(r.ligand.Mol))
 	}
 	lowest := slices.MinFunc(alive, func(a, b int) int {
 		return cmp.Compare(r.conformers[a].Energies[tier], r.conformers[b].Energies[tier])
@@ -64,4 +65,25 @@ func (r *ligandRun) window(alive []int, tier int) []int {
 			above/units.KcalPerMol, window/units.KcalPerMol)
 	}
 	return up
+}
+
+// Flexibility counts the bonds that a molecule can turn about: the rotatable
+// ones, and of each ring of eight and more atoms the single bonds but for the
+// three that its closure costs.
+func Flexibility(m *molecule.Molecule) int {
+	n := m.RotatableBonds()
+	for _, ring := range m.Rings() {
+		if len(ring) < 8 {
+			continue
+		}
+		free := -3
+		for i, a := range ring {
+			k, _ := m.BondBetween(a, ring[(i+1)%len(ring)])
+			if b := m.Bond(k); b.Order == 1 && !b.Aromatic && m.SmallestRing(k) >= 8 {
+				free++
+			}
+		}
+		n += max(0, free)
+	}
+	return n
 }

@@ -27,7 +27,7 @@ func Refuse(m *molecule.Molecule) error {
 		return err
 	}
 	if f := m.Fragments(); len(f) > 1 {
-		return fmt.Errorf("%d fragments (%s), one molecule is wanted", len(f), strings.Join(formulas(m), " + "))
+		return &FragmentsError{Formulas: formulas(m)}
 	}
 	switch e := m.Electrons(); {
 	case e <= 0:
@@ -38,6 +38,13 @@ func Refuse(m *molecule.Molecule) error {
 		return fmt.Errorf("open shell: multiplicity %d, only closed shells make an ensemble here", m.Multiplicity())
 	}
 	return nil
+}
+
+// A FragmentsError says that a record holds several molecules.
+type FragmentsError struct{ Formulas []string }
+
+func (e *FragmentsError) Error() string {
+	return fmt.Sprintf("%d fragments (%s), one molecule is wanted", len(e.Formulas), strings.Join(e.Formulas, " + "))
 }
 
 // metals refuses metal complexes and bare metals. The alkali and alkaline earth

@@ -131,7 +131,7 @@ func (r *ligandRun) tellEntered(tier, total int) {
 func (r *ligandRun) tellComputed(tier int, c *Conformer, o outcome) {
 	e := Event{
 		Kind: Computed, Ligand: r.ligand.ID, Tier: r.tiers[tier].Name(),
-		Conformer: c.Number, Took: o.took, Energy: o.energy, Err: o.err,
+		Conformer: c.Number, Took: o.took, Energy: o.energy, Gradients: o.gradients, Err: o.err,
 	}
 	var fault *Fault
 	if errors.As(o.err, &fault) {

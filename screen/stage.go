@@ -23,6 +23,8 @@ type outcome struct {
 	doubts []string
 	err    error
 	took   time.Duration
+
+	gradients int // of a relaxation
 }
 
 // compute gives every conformer in which to a surface of the tier. out[i]
@@ -102,16 +104,16 @@ func (r *ligandRun) relaxed(ctx context.Context, surface Sloped, from []float64)
 	x := slices.Clone(from)
 	set := r.options.Relax
 	set.Numbers = r.ligand.Mol.Numbers()
-	p, err := Relax(ctx, surface, x, set)
+	p, res, err := Relax(ctx, surface, x, set)
 	if err != nil {
-		return outcome{err: err}
+		return outcome{err: err, gradients: res.Gradients}
 	}
-	return outcome{x: x, energy: p.Energy, doubts: p.Warnings}
+	return outcome{x: x, energy: p.Energy, doubts: p.Warnings, gradients: res.Gradients}
 }
 
 // Relax moves x downhill on the surface, in place, and returns the point that
-// was reached. A relaxation that did not converge is an error.
-func Relax(ctx context.Context, surface Sloped, x []float64, set relax.Settings) (molecule.Point, error) {
+// was reached, and how. A relaxation that did not converge is an error.
+func Relax(ctx context.Context, surface Sloped, x []float64, set relax.Settings) (molecule.Point, relax.Result, error) {
 	var last molecule.Point
 	slope := relax.Func(func(ctx context.Context, grad, x []float64) (float64, error) {
 		p, err := surface.Gradient(ctx, grad, x)
@@ -123,11 +125,11 @@ func Relax(ctx context.Context, surface Sloped, x []float64, set relax.Settings)
 		err = res.Status.Err()
 	}
 	if errors.Is(err, relax.ErrGradientLimit) {
-		return molecule.Point{}, fmt.Errorf("not relaxed after %d gradients (rms %.1e hartree/bohr)", res.Gradients, res.RMSGradient)
+		err = fmt.Errorf("not relaxed after %d gradients (rms %.1e hartree/bohr)", res.Gradients, res.RMSGradient)
 	}
 	if err != nil {
-		return molecule.Point{}, err
+		return molecule.Point{}, res, err
 	}
 	last.Energy = res.Energy
-	return last, nil
+	return last, res, nil
 }

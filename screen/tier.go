@@ -2,6 +2,8 @@ package screen
 
 import (
 	"context"
+	"fmt"
+	"strings"
 
 	"torsieve/molecule"
 	"torsieve/screen/ensemble"
@@ -44,4 +46,12 @@ type Surface interface {
 type Sloped interface {
 	Surface
 	Gradient(ctx context.Context, grad, x []float64) (molecule.Point, error)
+}
+
+// TierError puts the tier's name in front of an error that does not say it yet.
+func TierError(t Tier, err error) error {
+	if strings.HasPrefix(err.Error(), t.Name()+":") {
+		return err
+	}
+	return fmt.Errorf("%s: %w", t.Name(), err)
 }

@@ -20,7 +20,8 @@ type generateCommand struct {
 	Max     int           `help:"At most so many conformers per ligand; the first ones are the best choice of any smaller number (default: ${default})." default:"250" placeholder:"N"`
 	Input   inputOptions  `embed:""`
 	Intake  intakeOptions `embed:""`
-	Work    workOptions   `embed:""`
+	Cores   coreOptions   `embed:""`
+	Seed    seedOptions   `embed:""`
 }
 
 // Run generates ligand by ligand, on several cores, and writes in the order of
@@ -28,6 +29,9 @@ type generateCommand struct {
 func (c *generateCommand) Run(s *session) error {
 	if c.Max < 1 {
 		return nothing(fmt.Errorf("max: want at least 1, have %d", c.Max), "")
+	}
+	if err := c.Cores.check(); err != nil {
+		return err
 	}
 	ligands, _, err := s.ligands(c.Ligands, c.Input, c.Intake)
 	if err != nil {
@@ -58,7 +62,7 @@ type found struct {
 func (c *generateCommand) all(s *session, ligands []*screen.Ligand, w io.Writer, t *tally) error {
 	progress := newProgress(s.voice)
 	defer progress.close()
-	answers := parallel(s.ctx, len(ligands), c.Work.jobs(), func(i int) found { return c.one(s, ligands[i]) })
+	answers := parallel(s.ctx, len(ligands), c.Cores.jobs(), func(i int) found { return c.one(s, ligands[i]) })
 	for i, l := range ligands {
 		f, err := answers(i)
 		if err != nil {
@@ -91,7 +95,7 @@ func (c *generateCommand) one(s *session, l *screen.Ligand) (f found) {
 	}
 	f.err = screen.Guard(func() (err error) {
 		o := generate.Defaults()
-		o.Max, o.Seed = c.Max, c.Work.Seed
+		o.Max, o.Seed = c.Max, c.Seed.Seed
 		f.result, err = screen.Shapes(s.ctx, l, o)
 		return err
 	})

@@ -3,6 +3,7 @@ package main
 import (
 	"crypto/sha256"
 	"encoding/hex"
+	"errors"
 	"io"
 	"os"
 
@@ -31,13 +32,18 @@ func (s *session) ligands(files []string, in inputOptions, how intakeOptions) ([
 		}
 		inputs = append(inputs, input)
 	}
+	salt := false
 	for _, l := range ligands {
 		for _, w := range l.Warnings {
 			s.voice.warn("%s: %s", l.Name(), w)
 		}
 		if l.Err != nil {
 			s.voice.failed("%s", told(l))
+			salt = salt || errors.As(l.Err, new(*screen.FragmentsError))
 		}
+	}
+	if salt {
+		s.voice.note("hint: --salts strip keeps the largest organic fragment")
 	}
 	return ligands, inputs, nil
 }

@@ -28,44 +28,63 @@ type intakeOptions struct {
 	Salts  string `group:"Input" help:"Several fragments: refuse, or strip to the largest organic one." enum:"refuse,strip" default:"refuse"`
 }
 
-// methodOptions choose the theory of the quantum tiers.
-type methodOptions struct {
-	Final   string `group:"Methods" help:"Method of the last tier: hf-3c, hf-d3 or hf." enum:"hf-3c,hf-d3,hf" default:"hf-3c"`
-	Basis   string `group:"Methods" help:"Basis of the last tier (default: MINIX for hf-3c, def2-SVP for the others)." placeholder:"NAME"`
+// solventOptions choose what surrounds the molecule.
+type solventOptions struct {
 	Solvent string `group:"Methods" help:"Solvent; only none yet: the gas phase (default: ${default})." default:"none" placeholder:"NAME"`
 }
 
 // check refuses what is not built yet, by name.
-func (m methodOptions) check() error {
-	if !strings.EqualFold(m.Solvent, "none") {
-		return nothing(fmt.Errorf("solvent %q: solvation is not built yet, only the gas phase is", m.Solvent), "use --solvent none")
+func (o solventOptions) check() error {
+	if !strings.EqualFold(o.Solvent, "none") {
+		return nothing(fmt.Errorf("solvent %q: solvation is not built yet, only the gas phase is", o.Solvent), "use --solvent none")
 	}
 	return nil
 }
 
-// workOptions bound the work and make it repeatable.
-type workOptions struct {
-	Jobs   int    `group:"Work" help:"Units of work at a time (default: all cores)." placeholder:"N"`
-	Memory size   `group:"Work" help:"What all surfaces together may hold (default: ${default})." default:"4GB" placeholder:"SIZE"`
-	Seed   uint64 `group:"Work" help:"Start of the random numbers (default: ${default})." default:"0" placeholder:"N"`
+// finalOptions choose the theory of the last tier.
+type finalOptions struct {
+	Final string `group:"Methods" help:"Method of the last tier: hf-3c, hf-d3 or hf." enum:"hf-3c,hf-d3,hf" default:"hf-3c"`
+	Basis string `group:"Methods" help:"Basis of the last tier (default: MINIX for hf-3c, def2-SVP for the others)." placeholder:"NAME"`
+}
 
+// coreOptions bound the work on one machine.
+type coreOptions struct {
+	Jobs     int  `group:"Work" help:"Units of work at a time (default: all cores)." placeholder:"N"`
 	Portable bool `group:"Work" help:"Use the kernels that every processor has, for the same bytes elsewhere."`
 }
 
 // AfterApply is called by kong before the command runs.
-func (w workOptions) AfterApply() error {
-	if w.Portable {
+func (o coreOptions) AfterApply() error {
+	if o.Portable {
 		linalg.UsePortable()
 	}
 	return nil
 }
 
 // jobs is what was asked for, or all cores that this process may use.
-func (w workOptions) jobs() int {
-	if w.Jobs == 0 {
+func (o coreOptions) jobs() int {
+	if o.Jobs == 0 {
 		return runtime.GOMAXPROCS(0)
 	}
-	return w.Jobs
+	return o.Jobs
+}
+
+// check refuses a number of jobs that is none.
+func (o coreOptions) check() error {
+	if o.Jobs < 0 {
+		return nothing(fmt.Errorf("jobs: want at least 1, have %d", o.Jobs), "")
+	}
+	return nil
+}
+
+// memoryOptions bound the memory of the quantum tiers.
+type memoryOptions struct {
+	Memory size `group:"Work" help:"What all surfaces together may hold (default: ${default})." default:"4GB" placeholder:"SIZE"`
+}
+
+// seedOptions make random choices repeatable.
+type seedOptions struct {
+	Seed uint64 `group:"Work" help:"Start of the random numbers (default: ${default})." default:"0" placeholder:"N"`
 }
 
 // A size is a number of bytes, written with a unit: 512MB, 4GB, 4GiB.

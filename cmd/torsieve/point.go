@@ -14,21 +14,23 @@ import (
 
 // pointCommand computes every structure of a file as it stands.
 type pointCommand struct {
-	File     string        `arg:"" help:"Structures with 3D coordinates: .sdf, .mol or .xyz, also gzip'd, or - with --format."`
-	Tier     string        `help:"Level of theory: forcefield, semiempirical or hf." enum:"forcefield,semiempirical,hf" required:"" placeholder:"NAME"`
-	Gradient bool          `help:"Print the gradient as well."`
-	Accuracy float64       `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"0.1" placeholder:"X"`
-	Input    inputOptions  `embed:""`
-	Methods  methodOptions `embed:""`
-	Work     workOptions   `embed:""`
+	File     string         `arg:"" help:"Structures with 3D coordinates: .sdf, .mol or .xyz, also gzip'd, or - with --format."`
+	Tier     string         `help:"Level of theory: forcefield, semiempirical or hf." enum:"forcefield,semiempirical,hf" required:"" placeholder:"NAME"`
+	Gradient bool           `help:"Print the gradient as well."`
+	Accuracy float64        `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"0.1" placeholder:"X"`
+	Input    inputOptions   `embed:""`
+	Solvent  solventOptions `embed:""`
+	Final    finalOptions   `embed:""`
+	Cores    coreOptions    `embed:""`
+	Memory   memoryOptions  `embed:""`
 }
 
 // Run computes and prints a line a record, in the file's order.
 func (c *pointCommand) Run(s *session) error {
-	if err := c.Methods.check(); err != nil {
+	if err := errors.Join(c.Solvent.check(), c.Cores.check()); err != nil {
 		return err
 	}
-	tier, err := newTier(c.Tier, tierOptions{methodOptions: c.Methods, Accuracy: c.Accuracy, Memory: int64(c.Work.Memory)})
+	tier, err := newTier(c.Tier, tierOptions{finalOptions: c.Final, Accuracy: c.Accuracy, Memory: int64(c.Memory.Memory)})
 	if err != nil {
 		return err
 	}
@@ -36,7 +38,7 @@ func (c *pointCommand) Run(s *session) error {
 		return nothing(errors.New("the hf tier has no gradient"), "leave --gradient out")
 	}
 	var t tally
-	err = inOrder(s, c.File, c.Input, c.Work.jobs(), func(rec load.Record) any {
+	err = inOrder(s, c.File, c.Input, c.Cores.jobs(), func(rec load.Record) any {
 		return c.line(s.ctx, tier, rec)
 	}, func(rec load.Record, line any) error {
 		if f, failed := line.(failedLine); failed {
@@ -89,7 +91,7 @@ func (c *pointCommand) line(ctx context.Context, tier screen.Tier, rec load.Reco
 	begun := time.Now()
 	p, grad, err := c.compute(ctx, tier, rec)
 	if err != nil {
-		return failedAt(c.File, rec, fmt.Errorf("%s: %w", tier.Name(), err))
+		return failedAt(c.File, rec, screen.TierError(tier, err))
 	}
 	line := pointLine{
 		ID: id, Record: rec.Record, Tier: tier.Name(), Method: tier.Method(), Solvent: "none",

@@ -15,30 +15,30 @@ import (
 
 // relaxCommand optimises every structure of a file.
 type relaxCommand struct {
-	File     string        `arg:"" help:"Structures with 3D coordinates: .sdf, .mol or .xyz, also gzip'd, or - with --format."`
-	Tier     string        `help:"Level of theory: forcefield or semiempirical." enum:"forcefield,semiempirical,hf" required:"" placeholder:"NAME"`
-	Out      string        `help:"SD file for the relaxed structures." required:"" placeholder:"FILE.sdf"`
-	Accuracy float64       `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
-	Input    inputOptions  `embed:""`
-	Methods  methodOptions `embed:""`
-	Work     workOptions   `embed:""`
+	File     string         `arg:"" help:"Structures with 3D coordinates: .sdf, .mol or .xyz, also gzip'd, or - with --format."`
+	Tier     string         `help:"Level of theory: forcefield or semiempirical." enum:"forcefield,semiempirical,hf" required:"" placeholder:"NAME"`
+	Out      string         `help:"SD file for the relaxed structures." required:"" placeholder:"FILE.sdf"`
+	Accuracy float64        `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
+	Input    inputOptions   `embed:""`
+	Solvent  solventOptions `embed:""`
+	Cores    coreOptions    `embed:""`
 }
 
 // Run relaxes and writes the structures in the file's order.
 func (c *relaxCommand) Run(s *session) error {
-	if err := c.Methods.check(); err != nil {
+	if err := errors.Join(c.Solvent.check(), c.Cores.check()); err != nil {
 		return err
 	}
 	if c.Tier == tierHF {
 		return nothing(errors.New("the hf tier has no gradient yet: it cannot relax"), "use --tier semiempirical")
 	}
-	tier, err := newTier(c.Tier, tierOptions{methodOptions: c.Methods, Accuracy: c.Accuracy, Memory: int64(c.Work.Memory)})
+	tier, err := newTier(c.Tier, tierOptions{Accuracy: c.Accuracy})
 	if err != nil {
 		return err
 	}
 	var t tally
 	err = atomicfile.Write(c.Out, func(w io.Writer) error {
-		err := inOrder(s, c.File, c.Input, c.Work.jobs(), func(rec load.Record) relaxed {
+		err := inOrder(s, c.File, c.Input, c.Cores.jobs(), func(rec load.Record) relaxed {
 			return c.relax(s.ctx, tier, rec)
 		}, func(rec load.Record, r relaxed) error {
 			if r.err != nil {
@@ -81,7 +81,7 @@ func (c *relaxCommand) relax(ctx context.Context, tier screen.Tier, rec load.Rec
 		}
 		set := screen.RelaxDefaults()
 		set.Numbers = rec.Mol.Numbers()
-		p, err := screen.Relax(ctx, sloped, x, set)
+		p, _, err := screen.Relax(ctx, sloped, x, set)
 		if err != nil {
 			return err
 		}

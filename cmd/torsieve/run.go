@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"runtime"
 	"strconv"
 	"strings"
 
@@ -61,8 +62,10 @@ func run(ctx context.Context, args []string, stdin io.Reader, stdout, stderr io.
 	defer func() {
 		if v := recover(); v != nil {
 			status, ok := v.(exited)
-			if !ok {
-				panic(v)
+			if !ok { // no stack for a person, but the place of the fault
+				fault := &screen.Fault{Value: v}
+				newVoice(stderr).complain(fmt.Errorf("%w (at %s)", fault, faultPlace()), "")
+				status = exitNothing
 			}
 			code = int(status)
 		}
@@ -73,6 +76,7 @@ func run(ctx context.Context, args []string, stdin io.Reader, stdout, stderr io.
 		kong.Name("torsieve"), kong.Description(about),
 		kong.Writers(stdout, stderr), kong.Exit(func(code int) { panic(exited(code)) }),
 		kong.Vars{"max_conformers": strconv.Itoa(screen.Defaults().MaxConformers)},
+		kong.WithHyphenPrefixedParameters(true), // --charge -1
 		kong.Configuration(loadSettings), kong.ConfigureHelp(kong.HelpOptions{Compact: true, WrapUpperBound: 100}),
 	)
 	if err != nil {
@@ -117,4 +121,17 @@ func (v *voice) end(ctx context.Context, err error) int {
 		v.complain(f.err, f.hint)
 	}
 	return f.code
+}
+
+// faultPlace is the function of this program that panicked, called from the
+// function that recovers.
+func faultPlace() string {
+	callers := make([]uintptr, 32)
+	frames := runtime.CallersFrames(callers[:runtime.Callers(3, callers)])
+	for {
+		f, more := frames.Next()
+		if strings.HasPrefix(f.Function, "torsieve/") || !more {
+			return fmt.Sprintf("%s, line %d", f.Function, f.Line)
+		}
+	}
 }

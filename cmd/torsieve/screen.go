@@ -23,16 +23,19 @@ type screenCommand struct {
 
 	Through       string    `group:"Methods" help:"Last tier to run: forcefield, semiempirical or hf." enum:"forcefield,semiempirical,hf" default:"hf"`
 	MaxConformers int       `group:"Methods" help:"Cap on the conformers that enter the semi-empirical tier (default: ${default})." default:"${max_conformers}" placeholder:"N"`
-	Window        float64   `group:"Methods" help:"Energy window for the last tier (default: 5 to 10, by the rotatable bonds)." placeholder:"KCAL"`
+	Window        *float64  `group:"Methods" help:"Energy window for the last tier (default: 5 to 10, by the rotatable bonds)." placeholder:"KCAL"`
 	Temperature   []float64 `group:"Methods" help:"Temperature of the ensemble; may be repeated, the first one ranks (default: ${default})." default:"298.15" placeholder:"K"`
 	Accuracy      float64   `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
 
 	Log string `group:"Work" help:"Log of every step, JSON lines (default: log.jsonl in the run folder)." placeholder:"FILE"`
 
-	Input   inputOptions  `embed:""`
-	Intake  intakeOptions `embed:""`
-	Methods methodOptions `embed:""`
-	Work    workOptions   `embed:""`
+	Input   inputOptions   `embed:""`
+	Intake  intakeOptions  `embed:""`
+	Solvent solventOptions `embed:""`
+	Final   finalOptions   `embed:""`
+	Cores   coreOptions    `embed:""`
+	Memory  memoryOptions  `embed:""`
+	Seed    seedOptions    `embed:""`
 }
 
 // Run reads the ligands, computes them, and leaves a run folder.
@@ -95,15 +98,20 @@ func (c *screenCommand) settings() ([]screen.Tier, screen.Options, error) {
 	o := screen.Defaults()
 	o.Temperatures = c.Temperature
 	o.MaxConformers = c.MaxConformers
-	o.Window = c.Window * units.KcalPerMol
-	o.Seed, o.Jobs, o.Memory = c.Work.Seed, c.Work.jobs(), int64(c.Work.Memory)
-	if err := c.Methods.check(); err != nil {
+	if c.Window != nil {
+		if !(*c.Window > 0) {
+			return nil, o, nothing(fmt.Errorf("window: want more than 0 kcal/mol, have %g", *c.Window), "")
+		}
+		o.Window = *c.Window * units.KcalPerMol
+	}
+	o.Seed, o.Jobs, o.Memory = c.Seed.Seed, c.Cores.jobs(), int64(c.Memory.Memory)
+	if err := c.Solvent.check(); err != nil {
 		return nil, o, err
 	}
 	if err := o.Check(); err != nil {
 		return nil, o, nothing(err, "")
 	}
-	tiers, err := tiersThrough(c.Through, tierOptions{methodOptions: c.Methods, Accuracy: c.Accuracy, Memory: o.Memory})
+	tiers, err := tiersThrough(c.Through, tierOptions{finalOptions: c.Final, Accuracy: c.Accuracy, Memory: o.Memory})
 	return tiers, o, err
 }
 
@@ -114,7 +122,7 @@ func (c *screenCommand) describe(s *session, tiers []screen.Tier, inputs []repor
 		Command: s.command, Settings: c.values(), Methods: map[string]string{}, Inputs: inputs,
 		Machine: report.Machine{
 			System: runtime.GOOS + "/" + runtime.GOARCH, Processor: processor(), Kernel: linalg.Kernel(),
-			Cores: runtime.NumCPU(), Jobs: c.Work.jobs(), Memory: int64(c.Work.Memory),
+			Cores: runtime.NumCPU(), Jobs: c.Cores.jobs(), Memory: int64(c.Memory.Memory),
 		},
 		Begun: begun.Format(time.RFC3339),
 	}
@@ -129,8 +137,8 @@ func (c *screenCommand) values() map[string]any {
 	return map[string]any{
 		"through": c.Through, "max-conformers": c.MaxConformers, "window": c.Window,
 		"temperature": c.Temperature, "accuracy": c.Accuracy,
-		"final": c.Methods.Final, "basis": c.Methods.Basis, "solvent": c.Methods.Solvent,
-		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Work.Seed,
+		"final": c.Final.Final, "basis": c.Final.Basis, "solvent": c.Solvent.Solvent,
+		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Seed.Seed,
 		"format": c.Input.Format, "id-field": c.Input.IDField,
 		"smiles-column": c.Input.SmilesColumn, "id-column": c.Input.IDColumn,
 		"charge": c.Input.Charge, "multiplicity": c.Input.Multiplicity,

@@ -2,9 +2,11 @@ package main
 
 import (
 	"context"
+	"errors"
 	"io"
 
 	"torsieve/molecule/load"
+	"torsieve/screen"
 )
 
 // A session is what every command is given: the streams, the voice and the end.
@@ -29,8 +31,12 @@ func (s *session) records(file string, in inputOptions, use func(load.Record) er
 	}
 	defer r.Close()
 	for s.ctx.Err() == nil {
-		rec, err := r.Next()
-		if err == io.EOF {
+		var rec load.Record
+		err := screen.Guard(func() (err error) {
+			rec, err = r.Next()
+			return err
+		})
+		if errors.Is(err, io.EOF) {
 			return nil
 		}
 		if err != nil {

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"context"
 	"fmt"
 	"math"
 	"slices"
@@ -26,7 +27,7 @@ var tierNames = []string{tierForceField, tierSemiempirical, tierHF}
 
 // tierOptions are what the tiers are built from.
 type tierOptions struct {
-	methodOptions
+	finalOptions
 	Accuracy float64 // factor on the thresholds of self-consistency
 	Memory   int64   // bytes of the whole run
 }
@@ -67,7 +68,45 @@ func (forceField) Name() string   { return tierForceField }
 func (forceField) Method() string { return "UFF with organic corrections and EEQ charges" }
 
 func (forceField) Surface(m *molecule.Molecule) (screen.Surface, error) {
-	return forcefield.New(m, forcefield.Defaults())
+	s, err := forcefield.New(m, forcefield.Defaults())
+	if err != nil {
+		return nil, err
+	}
+	return &chargedField{Surface: s}, nil
+}
+
+// chargedField is a force field that takes its charges from the first geometry
+// that it is given, and again from the first one after Reset: a relaxation then
+// has one surface, and a single point depends on its geometry alone.
+type chargedField struct {
+	*forcefield.Surface
+	charged bool
+}
+
+var _ screen.Sloped = (*chargedField)(nil)
+
+func (f *chargedField) Energy(ctx context.Context, x []float64) (molecule.Point, error) {
+	if err := f.charge(x); err != nil {
+		return molecule.Point{}, err
+	}
+	return f.Surface.Energy(ctx, x)
+}
+
+func (f *chargedField) Gradient(ctx context.Context, grad, x []float64) (molecule.Point, error) {
+	if err := f.charge(x); err != nil {
+		return molecule.Point{}, err
+	}
+	return f.Surface.Gradient(ctx, grad, x)
+}
+
+func (f *chargedField) Reset() { f.charged = false }
+
+func (f *chargedField) charge(x []float64) error {
+	if f.charged {
+		return nil
+	}
+	f.charged = true
+	return f.FreezeCharges(x)
 }
 
 func (forceField) Memory(m *molecule.Molecule) int64 {
@@ -189,7 +228,7 @@ func (t hfTier) Scatter(m *molecule.Molecule) (ensemble.Scatter, bool) {
 // Chem. 2021, e26381, doi:10.1002/qua.26381 (UFF: against GFN2-xTB, 572).
 func scatter(m *molecule.Molecule, s0, a, b, freedom float64) ensemble.Scatter {
 	heavy := math.Max(1, float64(m.HeavyAtoms()))
-	rotors := float64(m.RotatableBonds())
+	rotors := float64(screen.Flexibility(m))
 	kcal := s0 * math.Pow(heavy/25, a) * math.Pow((rotors+1)/6, b)
 	return ensemble.Scatter{Scale: kcal * units.KcalPerMol, Freedom: freedom}
 }

@@ -165,7 +165,7 @@ func (c check) compute(ctx context.Context) (float64, error) {
 	if c.Tier == tierForceField {
 		return c.relaxed(ctx, m)
 	}
-	tier, err := newTier(c.Tier, tierOptions{methodOptions: methodOptions{Final: c.Final, Basis: c.Basis}, Accuracy: 0.1})
+	tier, err := newTier(c.Tier, tierOptions{finalOptions: finalOptions{Final: c.Final, Basis: c.Basis}, Accuracy: 0.1})
 	if err != nil {
 		return 0, err
 	}
@@ -195,7 +195,7 @@ func (c check) relaxed(ctx context.Context, m *molecule.Molecule) (float64, erro
 	x := slices.Clone(c.XBohr)
 	set := screen.RelaxDefaults()
 	set.RMSGradient, set.MaxGradient, set.EnergyChange, set.Noise = 1e-6, 4e-6, 0, 1e-12
-	if _, err := screen.Relax(ctx, surface, x, set); err != nil {
+	if _, _, err := screen.Relax(ctx, surface, x, set); err != nil {
 		return 0, err
 	}
 	switch a := c.Atoms; c.Measure {

@@ -94,7 +94,7 @@ func (w *watcher) tell(r *screen.Result) {
 		w.voice.failed("%s: %s", id, r.Reason)
 	}
 	best := r.Conformers[r.Kept[0]]
-	text := fmt.Sprintf("%d/%d %s: %s, best is %d with %s", w.ended, w.ligands, id,
+	text := fmt.Sprintf("%d/%d %s: %s, best is number %d with %s", w.ended, w.ligands, id,
 		count(len(r.Kept), "conformer"), best.Number, percent(r.Ensembles[0].Populations[0]))
 	if bars := r.Ensembles[0].Bars; bars != nil {
 		text += fmt.Sprintf(" (%s to %s)", percent(bars[0].Low), percent(bars[0].High))

@@ -11,25 +11,27 @@ import (
 	"torsieve/molecule/smiles"
 )
 
-// chain places a chain of atoms (1.53 angstrom, 112 degrees) with the given
-// torsions in degrees; hydrogens of m are left at the origin, which no degeneracy
-// looks at.
-func chain(m *molecule.Molecule, atoms int, torsions ...float64) []float64 {
-	const bond, angle = 1.53 * units.Angstrom, 112 * math.Pi / 180
+const (
+	bond  = 1.53 * units.Angstrom
+	angle = 112 * math.Pi / 180
+)
+
+// chain places the atoms in order, each with the usual distance and angle to the
+// ones before it and the given torsions in degrees. The molecule's other atoms
+// are left at the origin, where no degeneracy looks at hydrogens on carbon.
+func chain(m *molecule.Molecule, atoms []int, torsions ...float64) []float64 {
 	x := make([]float64, 3*m.NumAtoms())
-	set := func(i int, p [3]float64) { copy(x[3*i:], p[:]) }
-	set(1, [3]float64{bond, 0, 0})
-	set(2, [3]float64{bond - bond*math.Cos(angle), bond * math.Sin(angle), 0})
-	for i := 3; i < atoms; i++ {
-		set(i, next(x, i, bond, angle, torsions[i-3]*math.Pi/180))
+	x[3*atoms[1]] = bond
+	x[3*atoms[2]], x[3*atoms[2]+1] = bond-bond*math.Cos(angle), bond*math.Sin(angle)
+	for k, torsion := range torsions {
+		place(x, atoms[k], atoms[k+1], atoms[k+2], atoms[k+3], torsion)
 	}
 	return x
 }
 
-// next is the point with the given distance, angle and dihedral to the three
-// atoms before i.
-func next(x []float64, i int, bond, angle, torsion float64) [3]float64 {
-	at := func(k int) [3]float64 { return [3]float64(x[3*k : 3*k+3]) }
+// place puts atom l where the dihedral i-j-k-l is the given one, in degrees.
+func place(x []float64, i, j, k, l int, degrees float64) {
+	at := func(n int) [3]float64 { return [3]float64(x[3*n : 3*n+3]) }
 	sub := func(a, b [3]float64) [3]float64 { return [3]float64{a[0] - b[0], a[1] - b[1], a[2] - b[2]} }
 	unit := func(a [3]float64) [3]float64 {
 		n := math.Sqrt(a[0]*a[0] + a[1]*a[1] + a[2]*a[2])
@@ -38,15 +40,13 @@ func next(x []float64, i int, bond, angle, torsion float64) [3]float64 {
 	cross := func(a, b [3]float64) [3]float64 {
 		return [3]float64{a[1]*b[2] - a[2]*b[1], a[2]*b[0] - a[0]*b[2], a[0]*b[1] - a[1]*b[0]}
 	}
-	a, b, c := at(i-3), at(i-2), at(i-1)
-	axis := unit(sub(c, b))
-	normal := unit(cross(sub(b, a), axis))
+	axis := unit(sub(at(k), at(j)))
+	normal := unit(cross(sub(at(j), at(i)), axis))
 	side := cross(normal, axis)
-	var p [3]float64
-	for k := range p {
-		p[k] = c[k] + bond*(-math.Cos(angle)*axis[k]+math.Sin(angle)*(math.Cos(torsion)*side[k]+math.Sin(torsion)*normal[k]))
+	sin, cos := math.Sincos(degrees * math.Pi / 180)
+	for n := range 3 {
+		x[3*l+n] = x[3*k+n] + bond*(-math.Cos(angle)*axis[n]+math.Sin(angle)*(cos*side[n]+sin*normal[n]))
 	}
-	return p
 }
 
 func parse(t *testing.T, s string) *molecule.Molecule {
@@ -78,7 +78,7 @@ func TestCopiesOfAlkanes(t *testing.T) {
 		m := parse(t, tc.smiles)
 		var xs [][]float64
 		for _, torsions := range tc.shapes {
-			xs = append(xs, chain(m, len(torsions)+3, torsions...))
+			xs = append(xs, chain(m, identity(len(torsions)+3), torsions...))
 		}
 		copies, complete := Copies(m, xs)
 		if !slices.Equal(copies, tc.want) || !complete {
@@ -87,20 +87,36 @@ func TestCopiesOfAlkanes(t *testing.T) {
 	}
 }
 
-// A chiral molecule's shapes stand for themselves alone, whatever their form;
-// a meso form's mirror images count, unless the shape has a centre of inversion.
+// 2,3-Difluorobutane. Of the meso form, the shape with a centre of inversion is
+// its own mirror image, any other counts twice. Shapes of the chiral form stand
+// for themselves; both that are built here have a twofold axis.
 func TestCopiesOfStereoisomers(t *testing.T) {
-	chiral := parse(t, "C[C@H](F)[C@H](F)C")
-	meso := parse(t, "C[C@H](F)[C@@H](F)C")
-	if chiral.Chiral() == meso.Chiral() {
-		t.Skip("the two names are the other way round")
+	for _, s := range []string{"C[C@H](F)[C@H](F)C", "C[C@H](F)[C@@H](F)C"} {
+		m := parse(t, s)
+		// Chain C0-C1-C3-C5; fluorine 2 sits on C1, fluorine 4 on C3.
+		build := func(torsion, f2, f4 float64) []float64 {
+			x := chain(m, []int{0, 1, 3, 5}, torsion)
+			place(x, 5, 3, 1, 2, f2)
+			place(x, 0, 1, 3, 4, f4)
+			return x
+		}
+		var xs [][]float64
+		var want []int
+		if m.Chiral() {
+			xs, want = [][]float64{build(180, 60, 60), build(60, 180, 180)}, []int{1, 1}
+		} else {
+			xs, want = [][]float64{build(180, 60, -60), build(60, 180, -60)}, []int{1, 2}
+		}
+		if copies, _ := Copies(m, xs); !slices.Equal(copies, want) {
+			t.Errorf("%s: copies %v, want %v", s, copies, want)
+		}
 	}
 }
 
-func TestNextKeepsItsTorsion(t *testing.T) {
+func TestPlaceKeepsItsTorsion(t *testing.T) {
 	m := parse(t, "CCCC")
 	for _, want := range []float64{180, 65, -95} {
-		x := chain(m, 4, want)
+		x := chain(m, identity(4), want)
 		got := geom.Dihedral(x, 0, 1, 2, 3) * 180 / math.Pi
 		if d := math.Remainder(got-want, 360); math.Abs(d) > 1e-9 {
 			t.Errorf("dihedral %g, want %g", got, want)

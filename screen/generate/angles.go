@@ -21,9 +21,12 @@ func (g *bounder) usualAngle(i, j, k int) (middle, slack float64) {
 	case linear:
 		return 180 * degree, 0
 	case trigonal:
-		return g.trigonalAngle(i, j, k, ringBonds)
+		return g.trigonalAngle(i, j, k)
 	case other:
-		return 110 * degree, 70 * degree
+		if len(g.m.Neighbours(j)) > 6 {
+			return 120 * degree, 60 * degree
+		}
+		return 130 * degree, 50 * degree
 	}
 	if g.inSmallRing(j) {
 		return 116 * degree, 9 * degree
@@ -46,22 +49,26 @@ func (g *bounder) usualAngle(i, j, k int) (middle, slack float64) {
 
 // trigonalAngle shares the rest of the full turn where the third angle lies in
 // a ring.
-func (g *bounder) trigonalAngle(i, j, k, ringBonds int) (middle, slack float64) {
+func (g *bounder) trigonalAngle(i, j, k int) (middle, slack float64) {
 	near := g.m.Neighbours(j)
-	if len(near) != 3 || ringBonds < 2 {
+	if len(near) != 3 {
 		return 120 * degree, 4 * degree
 	}
 	third := near[0] + near[1] + near[2] - i - k
-	inside := 0.0
+	inside, rings := 0.0, 0
 	for _, other := range [2]int{i, k} {
 		if size := g.ringOf(other, j, third); size > 0 {
 			inside += g.ringAngle(j, size)
+			rings++
 		}
 	}
-	if ringBonds == 3 {
-		return 360*degree - inside, 5 * degree
+	switch rings {
+	case 0:
+		return 120 * degree, 4 * degree
+	case 1:
+		return (360*degree - inside) / 2, 5 * degree
 	}
-	return (360*degree - inside) / 2, 5 * degree
+	return 360*degree - inside, 5 * degree
 }
 
 // ringAngle is the usual angle at j inside a ring of some size.

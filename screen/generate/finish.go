@@ -18,9 +18,8 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	kept := s.distinct(s.pool, nil, rough)
 	kept = s.within(kept)
 	s.result.Found = len(kept)
-	chosen := s.order(kept)
-	if len(chosen) > s.o.Max {
-		chosen = chosen[:s.o.Max]
+	chosen := s.order(kept, s.o.Max)
+	if len(chosen) < len(kept) {
 		s.result.Complete = false
 	}
 	var final []entry
@@ -41,8 +40,15 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	if len(final) == 0 {
 		return Result{}, fmt.Errorf("no structure could be relaxed: %w", s.failure)
 	}
-	list := s.order(s.within(s.distinct(final, hits, dedupe.DefaultThresholds())))
-	s.conformers(list)
+	list := s.within(s.distinct(final, hits, dedupe.DefaultThresholds()))
+	if s.o.MirrorImages {
+		list = s.bothHands(list)
+	}
+	ordered := s.order(list, s.o.Max)
+	if len(ordered) < len(list) {
+		s.result.Complete = false
+	}
+	s.conformers(ordered)
 	return s.result, nil
 }
 
@@ -81,6 +87,25 @@ func (s *search) within(list []candidate) []candidate {
 		}
 	}
 	return list
+}
+
+// bothHands adds the mirror image of each shape that differs from it. Where the
+// molecule is not its own mirror image there is nothing to add.
+func (s *search) bothHands(list []candidate) []candidate {
+	var both []candidate
+	for _, c := range list {
+		both = append(both, c)
+		if rmsd, ok := s.comparer.SelfMirror(c.x); !ok || rmsd <= dedupe.DefaultThresholds().RMSD {
+			continue
+		}
+		image := c
+		image.x = slices.Clone(c.x)
+		for i := 2; i < len(image.x); i += 3 {
+			image.x[i] = -image.x[i]
+		}
+		both = append(both, image)
+	}
+	return both
 }
 
 // conformers writes the result. Families are numbered in the order of the list.

@@ -13,6 +13,11 @@ type Options struct {
 	Window float64     // hartree above the lowest conformer; 25 kcal/mol
 	Start  [][]float64 // geometries to begin with besides our own, 3N, bohr
 
+	// MirrorImages hands over both mirror images of a shape where the molecule
+	// is its own mirror image: right for comparing with a shape from elsewhere,
+	// wrong for an ensemble, where one of them stands for both; false.
+	MirrorImages bool
+
 	// Field is the force field that shapes are relaxed in; forcefield.Defaults.
 	Field forcefield.Options
 

@@ -2,67 +2,86 @@ package generate
 
 import (
 	"math"
-	"slices"
 
 	"torsieve/dedupe"
 	"torsieve/internal/units"
 )
 
-// orderScale is the energy over which a conformer's claim to a place falls to
-// 1/e of that of an equally distant low one.
-const orderScale = 10 * units.KcalPerMol
+// orderScale is the energy over which a shape's worth falls to 1/e. It is wide:
+// the force field is a poor judge of energies.
+var orderScale = 10 * units.KcalPerMol
 
-// order puts candidates, sorted by energy, so that each prefix is a good choice
-// of its size: the lowest first, then always the one with the largest product
-// of its distance from all before it and a factor that falls with energy.
-func (s *search) order(list []candidate) []candidate {
+// order picks at most limit candidates from a list that is sorted by energy, so
+// that each prefix is a good choice of its size: the lowest first, then always
+// the one that brings all shapes of the list, each by its worth, closest to the
+// nearest one picked, in the mean over their heavy atoms' RMSD.
+//
+// Source: the greedy algorithm for locating facilities, within 1 - 1/e of the
+// best choice of each size: G. L. Nemhauser, L. A. Wolsey, M. L. Fisher, Math.
+// Program. 1978, 14, 265.
+func (s *search) order(list []candidate, limit int) []candidate {
 	if len(list) == 0 {
 		return nil
 	}
-	c := dedupe.NewComparer(s.m, dedupe.Options{})
-	queue := make([]claimant, len(list))
+	xs := make([][]float64, len(list))
+	worth := make([]float64, len(list))
 	for k, e := range list {
-		queue[k] = claimant{k: k, share: math.Exp((list[0].energy - e.energy) / orderScale), distance: math.Inf(1)}
+		xs[k] = e.x
+		worth[k] = math.Exp((list[0].energy - e.energy) / orderScale)
 	}
-	out := make([]candidate, 0, len(list))
-	next := 0
-	for {
-		out = append(out, list[queue[next].k])
-		queue = slices.Delete(queue, next, next+1)
-		if len(queue) == 0 {
-			return out
+	c := dedupe.NewComparer(s.m, dedupe.Options{Handed: s.o.MirrorImages})
+	picks := cover(square(c.Distances(xs)), worth, min(limit, len(list)))
+	out := make([]candidate, len(picks))
+	for n, k := range picks {
+		out[n] = list[k]
+	}
+	return out
+}
+
+// square fills the upper half of a table of distances.
+func square(lower [][]float64) [][]float64 {
+	n := len(lower)
+	full := make([][]float64, n)
+	for i := range full {
+		full[i] = make([]float64, n)
+	}
+	for i, row := range lower {
+		for j, d := range row {
+			full[i][j], full[j][i] = d, d
 		}
-		next = largestClaim(c, queue, out, list)
 	}
+	return full
 }
 
-// A claimant is a candidate that waits for its place. Its distance is the
-// smallest to the first seen of those that have theirs: never less than to all.
-type claimant struct {
-	k        int
-	share    float64
-	distance float64 // bohr
-	seen     int
-}
-
-func (q claimant) claim() float64 { return q.share * q.distance }
-
-// largestClaim returns the position of the claimant with the largest claim. It
-// brings distances up to date only as far as the answer needs them.
-func largestClaim(c *dedupe.Comparer, queue []claimant, out, list []candidate) int {
-	for {
-		best := 0
-		for k := range queue {
-			if queue[k].claim() > queue[best].claim() {
-				best = k
+// cover picks points, the first one first and then always the one that lowers
+// the sum of worth times distance to the nearest pick most; ties by number.
+func cover(distance [][]float64, worth []float64, limit int) []int {
+	n := len(worth)
+	nearest := append([]float64(nil), distance[0]...)
+	taken := make([]bool, n)
+	taken[0] = true
+	picks := []int{0}
+	for len(picks) < limit {
+		best, most := -1, -1.0
+		for k := range n {
+			if taken[k] {
+				continue
+			}
+			var gain float64
+			for i, d := range distance[k] {
+				if d < nearest[i] {
+					gain += worth[i] * (nearest[i] - d)
+				}
+			}
+			if gain > most {
+				best, most = k, gain
 			}
 		}
-		q := &queue[best]
-		if q.seen == len(out) {
-			return best
+		taken[best] = true
+		picks = append(picks, best)
+		for i, d := range distance[best] {
+			nearest[i] = math.Min(nearest[i], d)
 		}
-		d, _ := c.RMSD(out[q.seen].x, list[q.k].x)
-		q.distance = math.Min(q.distance, d)
-		q.seen++
 	}
+	return picks
 }

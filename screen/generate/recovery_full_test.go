@@ -8,6 +8,7 @@ import (
 	"fmt"
 	"os"
 	"slices"
+	"strconv"
 	"strings"
 	"testing"
 	"time"
@@ -68,7 +69,29 @@ func recover1(w *bufio.Writer, text, id string, t *testing.T) error {
 	}
 	m = isomers[0]
 	begun := time.Now()
-	res, err := Conformers(context.Background(), m, id, Defaults())
+	if dir := os.Getenv("GENERATE_TRACE"); dir != "" {
+		trace = func(stage string, x []float64) {
+			f, err := os.OpenFile(dir+"/"+stage+".sdf", os.O_APPEND|os.O_CREATE|os.O_WRONLY, 0o644)
+			if err != nil {
+				t.Fatal(err)
+			}
+			sdf.Write(f, sdf.Out{Mol: m, X: x, Title: id})
+			f.Close()
+		}
+	}
+	o := Defaults()
+	o.MirrorImages = true
+	if v := os.Getenv("OSCALE"); v != "" {
+		f, _ := strconv.ParseFloat(v, 64)
+		orderScale = f * units.KcalPerMol
+	}
+	if v := os.Getenv("RELAX"); v != "" {
+		o.Relaxations, _ = strconv.Atoi(v)
+	}
+	if os.Getenv("NOCHARGE") != "" {
+		o.Field.Charges = "none"
+	}
+	res, err := Conformers(context.Background(), m, id, o)
 	if err != nil {
 		return err
 	}

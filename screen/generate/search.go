@@ -133,6 +133,10 @@ var (
 // add relaxes a start and keeps it if its stereo is still right. Only the end
 // of ctx is an error.
 func (s *search) add(ctx context.Context, x []float64, r recipe) error {
+	if trace != nil {
+		trace("start", x)
+		defer func() { trace("loose", x) }()
+	}
 	start := s.result.Starts
 	if err := s.charge(ctx, x); err != nil {
 		return err
@@ -210,3 +214,5 @@ func (s *search) charge(ctx context.Context, x []float64) error {
 	s.charged = true
 	return s.surface.FreezeCharges(y)
 }
+
+var trace func(stage string, x []float64)

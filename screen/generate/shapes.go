@@ -48,7 +48,7 @@ func (f *fragment) findShapes(ctx context.Context, m *molecule.Molecule, o Optio
 	if err != nil {
 		return err
 	}
-	compared := f.compared()
+	compared := f.compared(nameless(m))
 	quiet := 0
 	var failure error
 	for start := range f.starts() {
@@ -115,17 +115,35 @@ func (f *fragment) invertible() bool {
 	return false
 }
 
-// compared lists the points (as numbers within a shape) that make a shape:
-// all but the hydrogens on carbon, whose names could be swapped.
-func (f *fragment) compared() []int {
+// compared lists the points (as numbers within a shape) that make a shape: all
+// but the hydrogens on carbon and other atoms whose names could be swapped.
+func (f *fragment) compared(nameless []bool) []int {
 	var list []int
 	for k, i := range f.atoms[:len(f.core)+len(f.outside)] {
-		p := f.number[i]
-		if k >= len(f.core) || f.model.Atom(p).Number != 1 || polarHydrogen(f.model, p) && !f.freeHydrogen(p) {
-			list = append(list, k)
+		inside := k < len(f.core)
+		if inside && (nameless[i] || f.model.Atom(k).Number == 1 && !(polarHydrogen(f.model, k) && !f.freeHydrogen(k))) {
+			continue
 		}
+		list = append(list, k)
 	}
 	return list
+}
+
+// nameless marks the atoms that turning an idle rotor puts in each other's
+// places: the fluorines of CF3, the methyl groups of tert-butyl.
+func nameless(m *molecule.Molecule) []bool {
+	mark := make([]bool, m.NumAtoms())
+	for _, r := range m.Rotors() {
+		if !r.Idle {
+			continue
+		}
+		for _, end := range [2][3]int{{r.J, r.K, r.PeriodJ}, {r.K, r.J, r.PeriodK}} {
+			for _, i := range m.Neighbours(end[0]) {
+				mark[i] = mark[i] || end[2] == 3 && i != end[1]
+			}
+		}
+	}
+	return mark
 }
 
 // freeHydrogen says whether hydrogen p has a twin on the same atom.

@@ -127,10 +127,6 @@ func population(p float64) string   { return fixed(p, 6) }
 func fixed(v float64, n int) string { return strconv.FormatFloat(v, 'f', n, 64) }
 func plain(v float64) string        { return strconv.FormatFloat(v, 'f', -1, 64) }
 
-func writeTable(w io.Writer, header []string, rows [][]string) error {
-	c := csv.NewWriter(w)
-	if err := c.Write(header); err != nil {
-		return err
-	}
-	return c.WriteAll(rows) // flushes
+func writeRows(w io.Writer, rows [][]string) error {
+	return csv.NewWriter(w).WriteAll(rows) // flushes
 }

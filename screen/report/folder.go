@@ -4,6 +4,7 @@
 package report
 
 import (
+	"bytes"
 	"cmp"
 	"errors"
 	"fmt"
@@ -29,14 +30,14 @@ const (
 type Folder struct {
 	path  string
 	rows  []ligandRows
-	Times []LigandTime
+	times []LigandTime
 }
 
 // ligandRows is what of a ligand goes into the tables.
 type ligandRows struct {
 	order      int
 	ligand     []string
-	conformers [][]string
+	conformers []byte // as they stand in the table: there are many
 }
 
 // Why a folder is not taken.
@@ -85,26 +86,41 @@ func (f *Folder) Keep(r *screen.Result) error {
 			return err
 		}
 	}
-	f.rows = append(f.rows, ligandRows{order: r.Ligand.Order, ligand: ligandRow(r), conformers: conformerRows(r)})
-	f.Times = append(f.Times, timesOf(r))
+	var text bytes.Buffer
+	if err := writeRows(&text, conformerRows(r)); err != nil {
+		return err
+	}
+	f.rows = append(f.rows, ligandRows{order: r.Ligand.Order, ligand: ligandRow(r), conformers: text.Bytes()})
+	f.times = append(f.times, timesOf(r))
 	return nil
 }
 
 // Close writes the tables and the run file, ligands in the order of the run.
 func (f *Folder) Close(run *Run) error {
 	slices.SortFunc(f.rows, func(a, b ligandRows) int { return cmp.Compare(a.order, b.order) })
-	slices.SortFunc(f.Times, func(a, b LigandTime) int { return cmp.Compare(a.order, b.order) })
-	var ligands, conformers [][]string
+	slices.SortFunc(f.times, func(a, b LigandTime) int { return cmp.Compare(a.order, b.order) })
+	run.Ligands = f.times
+	return errors.Join(f.write(LigandTable, f.ligands), f.write(ConformerTable, f.conformers), f.write(RunFile, run.write))
+}
+
+func (f *Folder) ligands(w io.Writer) error {
+	rows := [][]string{ligandColumns}
 	for _, r := range f.rows {
-		ligands = append(ligands, r.ligand)
-		conformers = append(conformers, r.conformers...)
+		rows = append(rows, r.ligand)
 	}
-	run.Ligands = f.Times
-	return errors.Join(
-		f.write(LigandTable, func(w io.Writer) error { return writeTable(w, ligandColumns, ligands) }),
-		f.write(ConformerTable, func(w io.Writer) error { return writeTable(w, conformerColumns, conformers) }),
-		f.write(RunFile, run.write),
-	)
+	return writeRows(w, rows)
+}
+
+func (f *Folder) conformers(w io.Writer) error {
+	if err := writeRows(w, [][]string{conformerColumns}); err != nil {
+		return err
+	}
+	for _, r := range f.rows {
+		if _, err := w.Write(r.conformers); err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 func (f *Folder) write(name string, fill func(io.Writer) error) error {
