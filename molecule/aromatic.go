@@ -31,7 +31,7 @@ func (g *graph) perceiveAromaticity(writtenAtoms, writtenBonds []bool) []string 
 	}
 	var kept []int
 	for k, is := range writtenBonds {
-		if b := &g.bonds[k]; is && writtenAtoms[b.A] && writtenAtoms[b.B] && !(p.atom[b.A] && p.atom[b.B]) {
+		if b := &g.bonds[k]; is && writtenAtoms[b.A] && writtenAtoms[b.B] && (!p.atom[b.A] || !p.atom[b.B]) {
 			b.Aromatic = true
 		}
 	}

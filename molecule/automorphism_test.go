@@ -95,6 +95,38 @@ func TestAutomorphismLimit(t *testing.T) {
 	}
 }
 
+// Charges that a group shares make its ends alike, whatever the drawing.
+func TestDelocalisedEndsAreAlike(t *testing.T) {
+	for s, pair := range map[string][2]int{
+		"CC(=O)[O-]":       {2, 3},
+		"C[N+](=O)[O-]":    {2, 3},
+		"CP(=O)([O-])[O-]": {2, 3},
+		"CS(=O)[O-]":       {2, 3},
+		"CC(=S)[S-]":       {2, 3},
+		"NC(C)=[NH2+]":     {0, 3},
+		"[nH]1cc[nH+]c1":   {0, 3},
+		"[n-]1ccnc1":       {0, 3},
+		"C[n+]1ccn(C)c1":   {1, 4},
+		"CC1=[NH+]CCN1":    {2, 5},
+	} {
+		m := parse(t, s)
+		if class := m.Classes(); class[pair[0]] != class[pair[1]] {
+			t.Errorf("%s: classes %v", s, class)
+		}
+	}
+	for s, pair := range map[string][2]int{
+		"CC(=O)O":       {2, 3},
+		"CC(=O)[S-]":    {2, 3},
+		"NC(C)=N":       {0, 3},
+		"CNC(C)=[NH2+]": {1, 4},
+	} {
+		m := parse(t, s)
+		if class := m.Classes(); class[pair[0]] == class[pair[1]] {
+			t.Errorf("%s: classes %v", s, class)
+		}
+	}
+}
+
 // Atoms that a permutation exchanges have the same class.
 func TestClassesFollowSymmetry(t *testing.T) {
 	for _, l := range ligands(t) {

@@ -1,5 +1,7 @@
 package molecule
 
+import "slices"
+
 // centreCandidate returns the neighbours of atom i if it can hold a tetrahedral
 // configuration that does not invert by itself: four neighbours, or three and a
 // lone pair (last). Whether the neighbours differ is not looked at, but that
@@ -89,7 +91,7 @@ const minStereoRing = 8
 func (g *graph) doubleCandidate(k int) (StereoBond, bool) {
 	b := g.bonds[k]
 	s := StereoBond{Bond: k, J: b.A, K: b.B}
-	if b.Order != 2 || b.Aromatic || g.inRing[k] && g.smallest[k] < minStereoRing || g.flexibleImine(k) {
+	if b.Order != 2 || b.Aromatic || g.inRing[k] && g.ringHoldsCis(k) || g.flexibleImine(k) {
 		return s, false
 	}
 	for end, pair := range [2][2]int{{b.A, b.B}, {b.B, b.A}} {
@@ -104,6 +106,30 @@ func (g *graph) doubleCandidate(k int) (StereoBond, bool) {
 		}
 	}
 	return s, true
+}
+
+// ringHoldsCis says whether a ring is too tight for double bond k to be trans:
+// up to seven atoms, and eight with three or more unsaturated bonds
+// (cyclooctatetraene, dibenzocyclooctenes).
+func (g *graph) ringHoldsCis(k int) bool {
+	if g.smallest[k] != minStereoRing {
+		return g.smallest[k] < minStereoRing
+	}
+	for _, ring := range g.ringBonds {
+		if len(ring) != minStereoRing || !slices.Contains(ring, k) {
+			continue
+		}
+		unsaturated := 0
+		for _, j := range ring {
+			if g.bonds[j].Order > 1 || g.bonds[j].Aromatic {
+				unsaturated++
+			}
+		}
+		if unsaturated > 2 {
+			return true
+		}
+	}
+	return false
 }
 
 // planarEnd returns the reference substituent at end i of a double bond to j:

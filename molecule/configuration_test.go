@@ -3,6 +3,7 @@ package molecule_test
 import (
 	"math"
 	"math/rand/v2"
+	"slices"
 	"strings"
 	"testing"
 
@@ -117,11 +118,12 @@ func TestCisFromCoordinates(t *testing.T) {
 		if b.Cis != want {
 			t.Errorf("%s: cis %v", s, b.Cis)
 		}
-		x := append(cis[want], -0.7, -1.2, 0, 2.0, 0.1, 1)
+		hydrogens := []float64{-0.7, -1.2, 0, 2.0, 0.1, 1}
+		x := slices.Concat(cis[want], hydrogens)
 		if m.CisOf(b, x) != want || m.StereoMatches(x) != nil {
 			t.Errorf("%s: cis %v in space, %v", s, m.CisOf(b, x), m.StereoMatches(x))
 		}
-		x = append(cis[!want], -0.7, -1.2, 0, 2.0, 0.1, 1)
+		x = slices.Concat(cis[!want], hydrogens)
 		if err := m.StereoMatches(x); err == nil || err.Error() != "the double bond between atoms 2 and 3 has the opposite of the stated configuration" {
 			t.Errorf("%s in the other configuration: %v", s, err)
 		}

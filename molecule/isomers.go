@@ -74,12 +74,19 @@ func (m *Molecule) tooMany(max int) error {
 type choice struct {
 	centres  []int // indices of Centres
 	relative []Parity
-	bond     int // index of StereoBonds where there are no centres
+	fixed    Parity // what a stated centre of the same cage leaves, else 0
+	bond     int    // index of StereoBonds where there are no centres
 }
 
 func (m *Molecule) freeChoices() []choice {
 	s := &stereoSearch{g: m.graph, centres: m.centres}
 	s.findGroups()
+	stated := map[int]Parity{} // by group
+	for n, c := range m.centres {
+		if c.Parity != 0 {
+			stated[s.group[n]] = c.Parity * s.relative[n]
+		}
+	}
 	var choices []choice
 	at := map[int]int{}
 	for n, c := range m.centres {
@@ -91,7 +98,7 @@ func (m *Molecule) freeChoices() []choice {
 		if !ok {
 			i = len(choices)
 			at[first] = i
-			choices = append(choices, choice{})
+			choices = append(choices, choice{fixed: stated[first]})
 		}
 		choices[i].centres = append(choices[i].centres, n)
 		choices[i].relative = append(choices[i].relative, s.relative[n])
@@ -104,8 +111,7 @@ func (m *Molecule) freeChoices() []choice {
 	return choices
 }
 
-// choose states every open choice as the bits say, but where a stated centre of
-// the same cage leaves none.
+// choose states every open choice as the bits say.
 func (m *Molecule) choose(choices []choice, bits int) *Molecule {
 	parities, cis := make([]Parity, len(m.centres)), make([]bool, len(m.stereoBonds))
 	for n, c := range m.centres {
@@ -123,6 +129,9 @@ func (m *Molecule) choose(choices []choice, bits int) *Molecule {
 		sign := Parity(1)
 		if bit {
 			sign = -1
+		}
+		if c.fixed != 0 {
+			sign = c.fixed
 		}
 		for n, centre := range c.centres {
 			parities[centre] = sign * c.relative[n]

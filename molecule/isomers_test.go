@@ -1,6 +1,12 @@
 package molecule_test
 
-import "testing"
+import (
+	"slices"
+	"strings"
+	"testing"
+
+	"torsieve/molecule/smiles"
+)
 
 // Numbers of stereoisomers as textbooks give them. E. L. Eliel, S. H. Wilen,
 // Stereochemistry of Organic Compounds (Wiley, 1994) for the general cases;
@@ -28,6 +34,9 @@ func TestIsomerCounts(t *testing.T) {
 		{"camphor", "CC1(C)C2CCC1(C)C(=O)C2", 2},
 		{"borneol", "CC1(C)C2CCC1(C)C(O)C2", 4},
 		{"alpha-pinene", "CC1=CCC2CC1C2(C)C", 2},
+		{"camphor, one bridgehead stated", "CC1(C)C2CC[C@@]1(C)C(=O)C2", 1},
+		{"cyclooctatetraene", "C1=CC=CC=CC=C1", 1},
+		{"1,5-cyclooctadiene: cis,cis, cis,trans, trans,trans", "C1CC=CCCC=C1", 3},
 		{"norbornane", "C1CC2CCC1C2", 1},
 		{"2-norbornanol", "OC1CC2CCC1C2", 4},
 		{"cocaine", "COC(=O)C1C(OC(=O)c2ccccc2)CC2CCC1N2C", 8},
@@ -80,6 +89,49 @@ func TestChiral(t *testing.T) {
 	} {
 		if got := parse(t, s).Chiral(); got != want {
 			t.Errorf("%s: chiral %v, want %v", s, got, want)
+		}
+	}
+}
+
+// Bridgehead nitrogens do not invert: Troeger's base was resolved (V. Prelog, P.
+// Wieland, Helv. Chim. Acta 1944, 27, 1127). Of quinuclidine there is one form.
+func TestHeldNitrogen(t *testing.T) {
+	const base = "Cc1ccc2c(c1)C[N@]1C[N@@]2Cc2cc(C)ccc21"
+	if m, warnings, err := smiles.Parse(base); err != nil || len(m.Centres()) != 2 || !m.Chiral() || len(warnings) > 0 {
+		t.Errorf("Troeger's base: %v, %v", warnings, err)
+	}
+	impossible := strings.Replace(base, "[N@@]", "[N@]", 1)
+	const want = "the stated configurations of atom 9 (nitrogen) and atom 11 (nitrogen) do not fit into one small cage"
+	if _, warnings, err := smiles.Parse(impossible); err != nil || !slices.Contains(warnings, want) {
+		t.Errorf("one nitrogen inside out: %v, %v", warnings, err)
+	}
+	one, other := parse(t, "C[N@]1C[C@@H]1C"), parse(t, "C[N@@]1C[C@@H]1C")
+	if one.SMILES() == other.SMILES() {
+		t.Errorf("invertomers of an aziridine are both %s", one.SMILES())
+	}
+	if m := parse(t, "[N@]12CCC(CC1)CC2"); len(m.Centres()) != 0 {
+		t.Errorf("quinuclidine: %+v", m.Centres())
+	}
+}
+
+// The cages of natural products exist, so that none of their configurations may
+// be called impossible (isomeric SMILES as chemical databases list them).
+func TestNaturalProductsFitTheirCages(t *testing.T) {
+	for name, s := range map[string]string{
+		"(+)-camphor":      "C[C@@]12CC[C@@H](C1(C)C)CC2=O",
+		"cocaine":          "CN1[C@H]2CC[C@@H]1[C@H]([C@H](C2)OC(=O)C3=CC=CC=C3)C(=O)OC",
+		"morphine":         "CN1CC[C@]23[C@@H]4[C@H]1CC5=C2C(=C(C=C5)O)O[C@H]3[C@H](C=C4)O",
+		"alpha-pinene":     "CC1=CC[C@H]2C[C@@H]1C2(C)C",
+		"benzylpenicillin": "CC1([C@@H](N2[C@H](S1)[C@@H](C2=O)NC(=O)CC3=CC=CC=C3)C(=O)O)C",
+		"artemisinin":      "C[C@@H]1CC[C@H]2[C@H](C(=O)O[C@H]3[C@@]24[C@H]1CC[C@](O3)(OO4)C)C",
+		"strychnine":       "C1CN2CC3=CCO[C@H]4CC(=O)N5[C@H]6[C@H]4[C@H]3C[C@H]2[C@@]61C7=CC=CC=C75",
+		"quinine":          "COC1=CC2=C(C=CN=C2C=C1)[C@H]([C@@H]3C[C@@H]4CCN3C[C@@H]4C=C)O",
+		"paclitaxel": "CC1=C2[C@H](C(=O)[C@@]3([C@H](C[C@@H]4[C@]([C@H]3[C@@H]([C@@](C2(C)C)(C[C@@H]1OC(=O)[C@@H]([C@H](C5=CC=CC=C5)" +
+			"NC(=O)C6=CC=CC=C6)O)O)OC(=O)C7=CC=CC=C7)(CO4)OC(=O)C)O)C)OC(=O)C",
+	} {
+		m, warnings, err := smiles.Parse(s)
+		if err != nil || len(warnings) > 0 || m.UnspecifiedStereo() > 0 || !m.Chiral() {
+			t.Errorf("%s: %v, %v", name, warnings, err)
 		}
 	}
 }

@@ -50,7 +50,7 @@ func (s *stereoSearch) refined(f int, st statements) []int {
 	v := s.fragmentView(f)
 	s.work += 4 * len(v.atoms)
 	v.setStereo(s.g, f, st.centres, st.bonds)
-	return v.labelled.cells()
+	return v.cells()
 }
 
 // allApart says whether refinement alone tells the atoms apart: then no

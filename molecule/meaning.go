@@ -1,9 +1,6 @@
 package molecule
 
-import (
-	"fmt"
-	"slices"
-)
+import "slices"
 
 // A stereoSearch decides which candidates are stereo elements and which
 // statements about them mean anything.
@@ -20,7 +17,6 @@ type stereoSearch struct {
 	group    []int     // by centre: first centre of the cage group
 	relative []Parity  // by centre: parity where the group's first has +1
 	views    []*view   // by fragment
-	fragment []int     // by atom
 	sure     [2][]bool // by centre, by bond: different neighbours in any case
 	cells    [][]int   // by fragment: cells in the arrangement at work, nil if not needed yet
 	work     int       // nodes visited so far
@@ -158,58 +154,6 @@ func (s *stereoSearch) isPlainBranch(i, a int) bool {
 		}
 	}
 	return true
-}
-
-// findGroups couples the bridgeheads that small cages tie together.
-func (s *stereoSearch) findGroups() {
-	s.group, s.relative = make([]int, len(s.centres)), make([]Parity, len(s.centres))
-	index := map[int]int{}
-	for n, c := range s.centres {
-		s.group[n], s.relative[n] = n, 1
-		index[c.Atom] = n
-	}
-	for n, c := range s.centres {
-		if s.g.ringDegree(c.Atom) < 3 {
-			continue
-		}
-		for _, j := range s.g.nearbyBridgeheads(c.Atom) {
-			m, ok := index[j]
-			if !ok || m <= n {
-				continue
-			}
-			if t, ok := s.g.tieBetween(c.Atom, j); ok {
-				s.couple(n, m, t.relation(c.Neighbours, s.centres[m].Neighbours))
-			}
-		}
-	}
-	s.checkTies()
-}
-
-// couple joins the groups of two centres whose parities have a given product.
-func (s *stereoSearch) couple(n, m int, product Parity) {
-	if product == 0 || s.group[n] == s.group[m] {
-		return
-	}
-	turn := s.relative[n] * s.relative[m] * product
-	old, now := max(s.group[n], s.group[m]), min(s.group[n], s.group[m])
-	for i, g := range s.group {
-		if g == old {
-			s.group[i] = now
-			s.relative[i] *= turn
-		}
-	}
-}
-
-// checkTies warns of stated configurations that a cage cannot have.
-func (s *stereoSearch) checkTies() {
-	for n, c := range s.centres {
-		for m, d := range s.centres[:n] {
-			if s.group[n] == s.group[m] && c.Parity*d.Parity == -s.relative[n]*s.relative[m] {
-				s.warnings = append(s.warnings, fmt.Sprintf("the stated configurations of %s and %s do not fit into one small cage",
-					s.g.centreText(d), s.g.centreText(c)))
-			}
-		}
-	}
 }
 
 // dropMeaningless takes back statements that mean nothing beside the others.

@@ -79,7 +79,7 @@ func (s *ringSearch) collect(longest int) {
 		}
 		s.breadthFirst(root, longest/2)
 		for _, y := range s.reached {
-			s.close(root, y, longest)
+			s.close(y, longest)
 		}
 		for _, i := range s.reached {
 			s.dist[i] = -1
@@ -139,7 +139,7 @@ func (s *ringSearch) breadthFirst(root, depth int) {
 
 // close adds the cycles that end at y: the odd ones over an edge to an atom at
 // the same distance, the even ones over two neighbours nearer to the root.
-func (s *ringSearch) close(root, y, longest int) {
+func (s *ringSearch) close(y, longest int) {
 	g := s.g
 	var nearer []int
 	for n, z := range g.neighbours[y] {
@@ -151,14 +151,14 @@ func (s *ringSearch) close(root, y, longest int) {
 			nearer = append(nearer, z)
 		case s.dist[y]:
 			if z < y && 2*s.dist[y]+1 <= longest {
-				s.addCycle(root, y, z, -1)
+				s.addCycle(y, z, -1)
 			}
 		}
 	}
 	for a, p := range nearer {
 		for _, q := range nearer[:a] {
 			if 2*s.dist[y] <= longest {
-				s.addCycle(root, p, q, y)
+				s.addCycle(p, q, y)
 			}
 		}
 	}
@@ -166,7 +166,7 @@ func (s *ringSearch) close(root, y, longest int) {
 
 // addCycle joins the paths from p and q to the root that meet only there. top is
 // the atom between p and q, or -1 if they are bonded.
-func (s *ringSearch) addCycle(root, p, q, top int) {
+func (s *ringSearch) addCycle(p, q, top int) {
 	for _, left := range s.paths(p) {
 		for _, right := range s.paths(q) {
 			if meet(left, right) {

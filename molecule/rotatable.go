@@ -30,7 +30,7 @@ func (m *Molecule) findRotors() []Rotor {
 	cells := m.stereoClasses()
 	seen := make([]int, len(m.atoms))
 	for k, b := range m.bonds {
-		if m.inRing[k] || !m.turns(k) || !m.offAxis(b.A, b.B) || !m.offAxis(b.B, b.A) {
+		if m.inRing[k] || !m.turns(k) || !m.offAxis(b.A) || !m.offAxis(b.B) {
 			continue
 		}
 		r := Rotor{Bond: k, J: b.A, K: b.B, AmideLike: m.amideLike(b.A, b.B) || m.amideLike(b.B, b.A) || b.Order == 2}
@@ -63,9 +63,9 @@ func (m *Molecule) turns(k int) bool {
 	return m.atoms[c].Number == 6 && m.atoms[n].Number == 7 && m.flexibleImine(k)
 }
 
-// offAxis says whether atom i has neighbours beside j that are off the axis
-// through both.
-func (m *Molecule) offAxis(i, j int) bool { return len(m.neighbours[i]) > 1 && !m.linear(i) }
+// offAxis says whether atom i, an end of a bond, has further neighbours that are
+// off its axis.
+func (m *Molecule) offAxis(i int) bool { return len(m.neighbours[i]) > 1 && !m.linear(i) }
 
 // linear says whether the bonds of atom i lie on a line.
 func (g *graph) linear(i int) bool {
