@@ -67,7 +67,11 @@ func newton(c2, c1, c0, l float64) float64 {
 		if slope <= 0 {
 			break
 		}
-		d := (l2*l2 + c2*l2 + c1*l + c0) / slope
+		value := l2*l2 + c2*l2 + c1*l + c0
+		if value <= 1e-14*l2*l2 {
+			break // all that is left is noise, and of a twofold root so is the slope
+		}
+		d := value / slope
 		if l -= d; math.Abs(d) <= 1e-12*math.Abs(l) {
 			break
 		}

@@ -113,7 +113,7 @@ func TestGaucheForms(t *testing.T) {
 
 // A meso compound's mirror image is itself with the halves exchanged.
 func TestMesoMirror(t *testing.T) {
-	m := parse(t, "F[C@H](Cl)[C@H](F)Cl")
+	m := parse(t, "F[C@H](Cl)[C@@H](F)Cl")
 	x := randomPoints(m.NumAtoms(), 8)
 	y := slices.Clone(x)
 	mirror(y)

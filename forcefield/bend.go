@@ -66,3 +66,66 @@ func generalBend(k, c0 float64) [5]float64 {
 func crowdedBend(k float64) [5]float64 {
 	return [5]float64{k / 16, k / 4, 3 * k / 8, k / 4, k / 16}
 }
+
+// trigonalAngle is the 120 degrees of the table. Tabulated whole fractions of a
+// turn are exact after conversion, see atomType.
+const trigonalAngle = 2 * math.Pi / 3
+
+// An angleRule replaces the natural angle of one bend, or returns 0.
+type angleRule func(i, j, k int) float64
+
+// With open set, trigonal centres take the general form: theirs vanishes at 0
+// degrees too, where starting structures would collapse.
+func (s *skeleton) bends(special angleRule, open bool) bends {
+	var out bends
+	for j, arms := range s.arms {
+		for n, a := range arms {
+			for _, b := range arms[n+1:] {
+				angle := 0.0
+				if special != nil {
+					angle = special(a.atom, j, b.atom)
+				}
+				if t := s.types[j]; open && angle == 0 && t.Angle == trigonalAngle {
+					angle = trigonalAngle
+				}
+				out = append(out, bend{int32(a.atom), int32(j), int32(b.atom), s.bendShape(a, j, b, angle)})
+			}
+		}
+	}
+	return out
+}
+
+// bendShape chooses the form by the centre's natural angle and its number of
+// neighbours; angle, where not 0, replaces the natural one.
+func (s *skeleton) bendShape(a arm, j int, b arm, angle float64) [5]float64 {
+	t, neighbours := s.types[j], len(s.arms[j])
+	crowded := t.MainGroup && t.digit() == '3' && neighbours > 4
+	natural := t.Angle
+	switch {
+	case angle != 0:
+		natural = angle
+	case crowded:
+		natural = math.Pi / 2
+	}
+	c0 := math.Cos(natural)
+	k := bendConstant(s.types[a.atom], s.types[b.atom], s.links[a.link].length, s.links[b.link].length, c0)
+	switch {
+	case angle != 0:
+		return generalBend(k, c0)
+	case crowded && neighbours != 6:
+		return crowdedBend(k)
+	case crowded:
+		return squareBend(k)
+	}
+	switch {
+	case natural == math.Pi:
+		return linearBend(k)
+	case natural == trigonalAngle:
+		return trigonalBend(k)
+	case natural == math.Pi/2 && (t.digit() == '4' || t.digit() == '6'):
+		return squareBend(k)
+	case natural == math.Pi/2:
+		return rightBend(k)
+	}
+	return generalBend(k, c0)
+}

@@ -110,6 +110,20 @@ func TestModelHexane(t *testing.T) {
 	}
 }
 
+// TestModelMethylcyclohexane: the axial chair above the equatorial one.
+func TestModelMethylcyclohexane(t *testing.T) {
+	l := newLab(t, "CC1CCCCC1", Reference(), 6)
+	near(t, "axial - equatorial", axial(0, 1, 2, 3, 4, 5, 6)(l), 1.8707, 2e-3)
+}
+
+func TestModelBarriers(t *testing.T) {
+	l := newLab(t, "O=CC", Reference(), 6)
+	near(t, "acetaldehyde eclipsed - staggered", between(hold{0, 1, 2, 4, 60}, hold{0, 1, 2, 4, 0})(l), 0.17, 5e-3)
+	l = newLab(t, "c1ccccc1-c1ccccc1", Reference(), 6)
+	twist := math.Abs(geom.Dihedral(l.x, 4, 5, 6, 7) / degree)
+	near(t, "biphenyl twist", math.Min(twist, 180-twist), 40.3, 0.1)
+}
+
 func TestModelSulfonamide(t *testing.T) {
 	l := newLab(t, "CS(=O)(=O)N", Reference(), 6)
 	near(t, "S=O", geom.Distance(l.x, 1, 2)/ang, 1.5025, 2e-4)

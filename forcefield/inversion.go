@@ -1,6 +1,10 @@
 package forcefield
 
-import "math"
+import (
+	"math"
+
+	"torsieve/internal/units"
+)
 
 // An inversion is k (C0 + C1 cos w + C2 cos 2w), w the angle between the bond
 // c-l and the plane c, i, j. A centre has three of them.
@@ -53,4 +57,48 @@ func pyramidInversion(barrier, w0 float64) inversion {
 	c := math.Cos(w0)
 	k := barrier / (2 * (1 - c) * (1 - c))
 	return inversion{k: k / 3, c0: 2*c*c + 1, c1: -4 * c, c2: 1}
+}
+
+// inversions adds the three terms of each centre with three neighbours that
+// has a rule; nitrogen is the barrier of sp2 nitrogen, 0 in the paper.
+func (s *skeleton) inversions(nitrogen float64) inversions {
+	var out inversions
+	for c, arms := range s.arms {
+		if len(arms) != 3 {
+			continue
+		}
+		v, ok := s.inversionRule(c, nitrogen)
+		if !ok {
+			continue
+		}
+		for n := range 3 {
+			v.c, v.i, v.j, v.l = int32(c), int32(arms[(n+1)%3].atom), int32(arms[(n+2)%3].atom), int32(arms[n].atom)
+			out = append(out, v)
+		}
+	}
+	return out
+}
+
+func (s *skeleton) inversionRule(c int, nitrogen float64) (inversion, bool) {
+	const degree = math.Pi / 180
+	switch s.types[c].Name {
+	case "C_2", "C_R":
+		for _, a := range s.arms[c] {
+			if s.types[a.atom].Name == "O_2" {
+				return planarInversion(50 * units.KcalPerMol), true
+			}
+		}
+		return planarInversion(6 * units.KcalPerMol), true
+	case "N_2", "N_R":
+		return planarInversion(nitrogen), nitrogen != 0
+	case "P_3+3":
+		return pyramidInversion(22*units.KcalPerMol, 84.4339*degree), true
+	case "As3+3":
+		return pyramidInversion(22*units.KcalPerMol, 86.9735*degree), true
+	case "Sb3+3":
+		return pyramidInversion(22*units.KcalPerMol, 87.7047*degree), true
+	case "Bi3+3":
+		return pyramidInversion(22*units.KcalPerMol, 90*degree), true
+	}
+	return inversion{}, false
 }

@@ -28,3 +28,12 @@ func (ss stretches) addTo(grad, x []float64) float64 {
 	}
 	return energy
 }
+
+func (s *skeleton) stretches() stretches {
+	var out stretches
+	for _, l := range s.links {
+		k := stretchConstant(s.types[l.i], s.types[l.j], l.length)
+		out = append(out, stretch{int32(l.i), int32(l.j), k, l.length})
+	}
+	return out
+}

@@ -203,6 +203,25 @@ func TestSoftStart(t *testing.T) {
 	}
 }
 
+// TestModelHessianSavesGradients: the optimiser's model is worth at least half
+// of the gradients of a ligand.
+func TestModelHessianSavesGradients(t *testing.T) {
+	for _, rec := range records(t, "uff", "ligands.sdf.gz")[:3] {
+		s := defaultSurface(t, rec.Mol, rec.X)
+		with, err := s.Minimise(t.Context(), slices.Clone(rec.X), loose)
+		if err != nil {
+			t.Fatal(err)
+		}
+		without, err := relax.Minimise(t.Context(), s.Slope(), slices.Clone(rec.X), loose)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if with.Status != relax.Converged || without.Status != relax.Converged || 2*with.Gradients > without.Gradients {
+			t.Errorf("%s: %+v with the model, %+v without", rec.Title, with, without)
+		}
+	}
+}
+
 func TestNoAllocationInTheSlope(t *testing.T) {
 	rec := records(t, "uff", "ligands.sdf.gz")[0]
 	slope := defaultSurface(t, rec.Mol, rec.X).Slope()

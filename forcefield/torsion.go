@@ -112,3 +112,26 @@ func fade(c float64) (s, ds float64) {
 	}
 	return q * q * (3 - 2*q), -6 * q * (1 - q) / width * math.Copysign(1, c)
 }
+
+// torsions adds one term a path about every bond that has a rule; scale, where
+// not nil, multiplies the barrier of a bond.
+func (s *skeleton) torsions(scale func(n int) float64) torsions {
+	var out torsions
+	for n, l := range s.links {
+		r := torsionRule(s.types[l.i], s.types[l.j], l.order, s.flatNeighbour(l.i, l.j), s.flatNeighbour(l.j, l.i))
+		if r.barrier == 0 {
+			continue
+		}
+		if scale != nil {
+			r.barrier *= scale(n)
+		}
+		first := len(out)
+		s.paths(l.i, l.j, func(i, k int) {
+			out = append(out, torsion{int32(i), int32(l.i), int32(l.j), int32(k), r.n, 0, r.sign})
+		})
+		for m := first; m < len(out); m++ {
+			out[m].v = r.barrier / 2 / float64(len(out)-first)
+		}
+	}
+	return out
+}

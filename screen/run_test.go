@@ -26,7 +26,7 @@ func TestRunDoesNotDependOnJobs(t *testing.T) {
 	run := func(jobs int, memory int64) []*Result {
 		o := quick()
 		o.Jobs, o.Memory = jobs, memory
-		res, err := results(t, t.Context(), ligandsOf(t, NewIntake(), texts...), threeTiers(), o)
+		res, err := results(t.Context(), t, ligandsOf(t, NewIntake(), texts...), threeTiers(), o)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -47,7 +47,7 @@ func TestRunDoesNotDependOnJobs(t *testing.T) {
 // the last tier's energies are the first one's; populations follow from them,
 // with two gauche forms to one anti.
 func TestRunButane(t *testing.T) {
-	res, err := results(t, t.Context(), ligandsOf(t, NewIntake(), "CCCC"), threeTiers(), quick())
+	res, err := results(t.Context(), t, ligandsOf(t, NewIntake(), "CCCC"), threeTiers(), quick())
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -82,7 +82,7 @@ func TestRunSharesStructures(t *testing.T) {
 			computed++
 		}
 	}
-	res, err := results(t, t.Context(), ligandsOf(t, NewIntake(), "OCC", "CCO"), tiers, o)
+	res, err := results(t.Context(), t, ligandsOf(t, NewIntake(), "OCC", "CCO"), tiers, o)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -126,7 +126,7 @@ func TestRunContainsFaults(t *testing.T) {
 					stacks++
 				}
 			}
-			res, err := results(t, t.Context(), ligandsOf(t, NewIntake(), "CCCC", "CCO", "CCCCO"), tiers, o)
+			res, err := results(t.Context(), t, ligandsOf(t, NewIntake(), "CCCC", "CCO", "CCCCO"), tiers, o)
 			if err != nil {
 				t.Fatal(err)
 			}
@@ -196,7 +196,7 @@ func TestRunEndsWithKeep(t *testing.T) {
 // A tier that cannot take an element says so before any work.
 func TestRunRefusesBeforeWork(t *testing.T) {
 	tiers := []Tier{fieldTier{name: "forcefield"}, refusingTier{fieldTier{name: "semiempirical"}}}
-	res, err := results(t, t.Context(), ligandsOf(t, NewIntake(), "CCBr", "CCO"), tiers, quick())
+	res, err := results(t.Context(), t, ligandsOf(t, NewIntake(), "CCBr", "CCO"), tiers, quick())
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -73,7 +73,7 @@ func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomi
 			begun := r.options.Clock()
 			defer func() { took = r.options.Clock().Sub(begun) }()
 			surface.Reset() // or the answer would depend on who went before
-			out[i] = r.one(ctx, tier, surface, c)
+			out[i] = r.one(ctx, surface, c)
 			return out[i].err
 		})
 		if ctx.Err() != nil {
@@ -89,7 +89,7 @@ func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomi
 
 // one computes one conformer: relaxed where the surface has a gradient, as it
 // stands where not.
-func (r *ligandRun) one(ctx context.Context, tier int, surface Surface, c *Conformer) outcome {
+func (r *ligandRun) one(ctx context.Context, surface Surface, c *Conformer) outcome {
 	if err := load.CheckGeometry(r.ligand.Mol.Numbers(), c.X); err != nil {
 		return outcome{err: err}
 	}

@@ -110,7 +110,7 @@ func quick() Options {
 }
 
 // results runs the ligands and returns what became of each, in their order.
-func results(t *testing.T, ctx context.Context, ligands []*Ligand, tiers []Tier, o Options) ([]*Result, error) {
+func results(ctx context.Context, t *testing.T, ligands []*Ligand, tiers []Tier, o Options) ([]*Result, error) {
 	t.Helper()
 	out := make([]*Result, len(ligands))
 	err := Run(ctx, ligands, tiers, o, func(r *Result) error {

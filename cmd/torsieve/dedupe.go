@@ -59,9 +59,7 @@ func (c *dedupeCommand) Run(s *session) error {
 			}
 			left++
 			out := sdf.Out{Mol: one.rec.Mol, X: one.rec.X, Title: recordID(one.rec)}
-			for _, f := range one.rec.Fields {
-				out.Fields = append(out.Fields, sdf.Field(f))
-			}
+			out.Fields = one.rec.Fields
 			if err := sdf.Write(w, out); err != nil {
 				return err
 			}

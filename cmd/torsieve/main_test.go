@@ -79,7 +79,7 @@ func TestVerifyNotices(t *testing.T) {
 		t.Fatal(err)
 	}
 	c := checks[0]
-	c.Value += 1
+	c.Value++
 	got, err := c.compute(t.Context())
 	if err != nil {
 		t.Fatal(err)

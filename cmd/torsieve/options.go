@@ -54,7 +54,7 @@ type coreOptions struct {
 }
 
 // AfterApply is called by kong before the command runs.
-func (o coreOptions) AfterApply() error {
+func (o coreOptions) AfterApply() error { //nolint:unparam // the signature is kong's
 	if o.Portable {
 		linalg.UsePortable()
 	}
@@ -94,9 +94,19 @@ var sizeUnits = []struct {
 	name  string
 	bytes float64
 }{
-	{"KiB", 1 << 10}, {"MiB", 1 << 20}, {"GiB", 1 << 30}, {"TiB", 1 << 40},
-	{"KB", 1e3}, {"MB", 1e6}, {"GB", 1e9}, {"TB", 1e12},
-	{"K", 1e3}, {"M", 1e6}, {"G", 1e9}, {"T", 1e12}, {"B", 1},
+	{"KiB", 1 << 10},
+	{"MiB", 1 << 20},
+	{"GiB", 1 << 30},
+	{"TiB", 1 << 40},
+	{"KB", 1e3},
+	{"MB", 1e6},
+	{"GB", 1e9},
+	{"TB", 1e12},
+	{"K", 1e3},
+	{"M", 1e6},
+	{"G", 1e9},
+	{"T", 1e12},
+	{"B", 1},
 }
 
 // UnmarshalText reads a size.

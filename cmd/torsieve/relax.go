@@ -41,13 +41,13 @@ func (c *relaxCommand) Run(s *session) error {
 		err := inOrder(s, c.File, c.Input, c.Cores.jobs(), func(rec load.Record) relaxed {
 			return c.relax(s.ctx, tier, rec)
 		}, func(rec load.Record, r relaxed) error {
-			if r.err != nil {
-				t.failed++
-				s.voice.failed("%s", failedAt(c.File, rec, r.err).said)
-				return nil
+			if r.err == nil {
+				t.done++
+				return sdf.Write(w, r.out)
 			}
-			t.done++
-			return sdf.Write(w, r.out)
+			t.failed++
+			s.voice.failed("%s", failedAt(c.File, rec, r.err).said)
+			return nil
 		})
 		if err == nil && t.done == 0 {
 			return t.status() // no empty file where nothing could be done
@@ -101,7 +101,7 @@ func relaxedFields(rec load.Record, tier screen.Tier, energy float64) []sdf.Fiel
 	var fields []sdf.Field
 	for _, f := range rec.Fields {
 		if !slices.ContainsFunc(fresh, func(n sdf.Field) bool { return n.Name == f.Name }) {
-			fields = append(fields, sdf.Field(f))
+			fields = append(fields, f)
 		}
 	}
 	return append(fields, fresh...)

@@ -138,8 +138,9 @@ func (c *screenCommand) values() map[string]any {
 		"through": c.Through, "max-conformers": c.MaxConformers, "window": c.Window,
 		"temperature": c.Temperature, "accuracy": c.Accuracy,
 		"final": c.Final.Final, "basis": c.Final.Basis, "solvent": c.Solvent.Solvent,
-		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Seed.Seed,
-		"format": c.Input.Format, "id-field": c.Input.IDField,
+		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Seed.Seed, "memory": int64(c.Memory.Memory),
+		"portable": c.Cores.Portable,
+		"format":   c.Input.Format, "id-field": c.Input.IDField,
 		"smiles-column": c.Input.SmilesColumn, "id-column": c.Input.IDColumn,
 		"charge": c.Input.Charge, "multiplicity": c.Input.Multiplicity,
 	}
@@ -185,8 +186,11 @@ func summary(c report.Counts, dir string) string {
 		n    int
 		what string
 	}{
-		{c.Partial, "partial"}, {c.Refused, "refused"}, {c.Failed, "failed"},
-		{c.Unreadable, "unreadable"}, {c.Stopped, "stopped"},
+		{c.Partial, "partial"},
+		{c.Refused, "refused"},
+		{c.Failed, "failed"},
+		{c.Unreadable, "unreadable"},
+		{c.Stopped, "stopped"},
 	} {
 		if part.n > 0 {
 			text += fmt.Sprintf(", %d %s", part.n, part.what)

@@ -16,7 +16,6 @@ type watcher struct {
 	perTier  float64            // share of a ligand that a tier stands for
 	share    map[string]float64 // of each ligand under way, 0 to 1
 	inTier   map[string]*stage
-	done     float64 // ligands ended
 }
 
 // A stage is where a ligand is.

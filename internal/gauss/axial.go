@@ -1,7 +1,6 @@
 package gauss
 
 import (
-	"cmp"
 	"math"
 	"slices"
 )
@@ -94,10 +93,15 @@ func NewAxialPair(a, b *Shell) *AxialPair {
 	for _, pr := range prims {
 		p.mu = append(p.mu, pr.mu)
 	}
+	poly := make([][]float64, axialPowers)
+	for t := range poly {
+		poly[t] = make([]float64, len(prims))
+	}
 	for i, ha := range axialHarmonics[a.L] {
 		for j, hb := range axialHarmonics[b.L] {
 			for op, ho := range axialOperators {
-				p.place(i, j, op, axialPolynomials(prims, ha, ho, hb))
+				axialPolynomials(poly, prims, ha, ho, hb)
+				p.place(i, j, op, poly)
 			}
 		}
 	}
@@ -142,36 +146,29 @@ func (p *AxialPair) place(i, j, op int, poly [][]float64) {
 // turn lists how the block changes when the bond is turned about local axis
 // n (0: x, 1: y), times sign.
 func (p *AxialPair) turn(axis int, sign float64) axialPlaces {
-	sum := make(map[axialPlace]float64) // by element and integral
+	sums := make([]float64, maxAxial*maxAxial*Operators*len(p.integrals))
+	place := func(a, b, op, integral int) int {
+		return ((maxAxial*a+b)*Operators+op)*len(p.integrals) + integral
+	}
 	for _, at := range p.places.all() {
-		a, b, op := int(at.ab)/maxAxial, int(at.ab)%maxAxial, int(at.op)
-		add := func(a, b, op int, g float64) {
-			sum[axialPlace{0, at.integral, uint8(maxAxial*a + b), uint8(op)}] += sign * g * at.factor
-		}
+		a, b, op, k := int(at.ab)/maxAxial, int(at.ab)%maxAxial, int(at.op), int(at.integral)
 		for m := range 2*p.la + 1 {
-			add(m, b, op, generator(p.la, axis, m, a))
+			sums[place(m, b, op, k)] += sign * generator(p.la, axis, m, a) * at.factor
 		}
 		for m := range 2*p.lb + 1 {
-			add(a, m, op, generator(p.lb, axis, m, b))
+			sums[place(a, m, op, k)] += sign * generator(p.lb, axis, m, b) * at.factor
 		}
 		l := operatorL(op)
 		for m := range 2*l + 1 {
-			add(a, b, l*l+m, generator(l, axis, m, op-l*l))
+			sums[place(a, b, l*l+m, k)] += sign * generator(l, axis, m, op-l*l) * at.factor
 		}
 	}
-	var found []axialPlace
-	for at, factor := range sum {
-		if math.Abs(factor) > 1e-14 {
-			at.factor = factor
-			found = append(found, at)
-		}
-	}
-	slices.SortFunc(found, func(s, t axialPlace) int {
-		return cmp.Or(cmp.Compare(s.ab, t.ab), cmp.Compare(s.op, t.op), cmp.Compare(s.integral, t.integral))
-	})
 	var places axialPlaces
-	for _, at := range found {
-		places.add(at)
+	for at, factor := range sums {
+		if math.Abs(factor) > 1e-14 {
+			element := at / len(p.integrals)
+			places.add(axialPlace{factor, uint8(at % len(p.integrals)), uint8(element / Operators), uint8(element % Operators)})
+		}
 	}
 	return places
 }

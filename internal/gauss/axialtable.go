@@ -51,14 +51,16 @@ func primitivePairs(a, b *Shell) []primitivePair {
 	return prims
 }
 
-// axialPolynomials returns, for powers 0, 1, ... of R and for each primitive
+// axialPowers is the number of powers of R, 0 to 6 for two d functions and a
+// quadrupole.
+const axialPowers = 7
+
+// axialPolynomials writes, for powers 0, 1, ... of R and for each primitive
 // pair, the coefficient of R^power exp(-mu R^2) in <ha| ho |hb>, a standing at
 // R on the z axis and b at the origin.
-func axialPolynomials(prims []primitivePair, ha, ho, hb []monomial) [][]float64 {
-	const powers = 7 // two d functions and a quadrupole
-	poly := make([][]float64, powers)
+func axialPolynomials(poly [][]float64, prims []primitivePair, ha, ho, hb []monomial) {
 	for t := range poly {
-		poly[t] = make([]float64, len(prims))
+		clear(poly[t])
 	}
 	for k, pr := range prims {
 		for _, ma := range ha {
@@ -71,7 +73,6 @@ func axialPolynomials(prims []primitivePair, ha, ho, hb []monomial) [][]float64 
 			}
 		}
 	}
-	return poly
 }
 
 // addAxial adds c times the one-dimensional integral of (z-R)^a z^b along the
@@ -82,12 +83,16 @@ func addAxial(poly [][]float64, k int, c float64, pr primitivePair, a, b int) {
 		return
 	}
 	toA, toB := -pr.beta/pr.p, pr.alpha/pr.p // centre minus a, minus b, over R
-	for u := range a + 1 {
-		for v := range b + 1 {
-			power := a - u + b - v
-			poly[power][k] += c * pascal[a][u] * pascal[b][v] *
-				math.Pow(toA, float64(a-u)) * math.Pow(toB, float64(b-v)) * gaussMoment(u+v, pr.p)
+	powerA := 1.0
+	for u := a; u >= 0; u-- {
+		power := powerA
+		for v := b; v >= 0; v-- {
+			if (u+v)%2 == 0 {
+				poly[a-u+b-v][k] += c * pascal[a][u] * pascal[b][v] * power * gaussMoment(u+v, pr.p)
+			}
+			power *= toB
 		}
+		powerA *= toA
 	}
 }
 

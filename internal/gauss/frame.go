@@ -96,18 +96,29 @@ func generator(l, axis, to, from int) float64 {
 	case 1:
 		return spin(axis, to, from)
 	}
-	var sum float64
-	for i := range 3 {
-		for j := range 3 {
-			var turned float64 // (G C + C G^T)_ij
-			for k := range 3 {
-				turned += spin(axis, i, k)*QuadrupoleTensor[from][k][j] + QuadrupoleTensor[from][i][k]*spin(axis, j, k)
+	return spinD[axis][to][from]
+}
+
+// spinD is the generator for d harmonics: (2/3) C[to] : (G C[from] + C[from] G^T).
+var spinD = func() (spins [3][5][5]float64) {
+	for axis := range 3 {
+		for to := range 5 {
+			for from := range 5 {
+				var sum float64
+				for i := range 3 {
+					for j := range 3 {
+						for k := range 3 {
+							sum += QuadrupoleTensor[to][i][j] *
+								(spin(axis, i, k)*QuadrupoleTensor[from][k][j] + QuadrupoleTensor[from][i][k]*spin(axis, j, k))
+						}
+					}
+				}
+				spins[axis][to][from] = sum / 1.5
 			}
-			sum += QuadrupoleTensor[to][i][j] * turned
 		}
 	}
-	return sum / 1.5
-}
+	return spins
+}()
 
 // spin is the generator of turns of vectors: axis cross e_from, component to.
 func spin(axis, to, from int) float64 {

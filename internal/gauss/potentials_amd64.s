@@ -201,3 +201,166 @@ next:
 	JNZ  group
 	VZEROUPPER
 	RET
+
+// Column number of the rows of the table that X10 points to, into a register.
+#define GATHER4(offset, to) \
+	VPCMPEQD   Y8, Y8, Y8              \
+	VGATHERDPD Y8, offset(SI)(X10*1), to
+
+// One step of Horner's rule in Y11 with column number offset/8 of the rows.
+#define HORNER4(offset) \
+	GATHER4(offset, Y1)        \
+	VFMADD213PD Y1, Y11, Y0
+
+// One step of Horner's rule in Y11 with a number, in Y9.
+#define SERIES4(offset) \
+	VBROADCASTSD offset(DI), Y1 \
+	VFMADD213PD  Y1, Y11, Y9
+
+// One step down the orders: F = (2T F' + e) f, with F' = from, 2T = Y12, e = Y9.
+#define DOWN4(from, to, offset) \
+	VBROADCASTSD offset(DI), Y8  \
+	VMOVAPD      from, to        \
+	VFMADD213PD  Y9, Y12, to     \
+	VMULPD       Y8, to, to
+
+// Order m where t >= 32, with the factor of its order.
+#define STORE4(offset, f, place) \
+	VBROADCASTSD offset(DI), Y8   \
+	VBLENDVPD    Y15, Y8, f, f    \
+	VMULPD       Y14, f, f        \
+	VMOVUPD      f, place(AX)(CX*1)
+
+// func potentials256(b *batch, p *primitive, table *fastRow, top, groups int)
+//
+// potentials512 with four lanes at a time.
+TEXT ·potentials256(SB), NOSPLIT, $0-40
+	MOVQ b+0(FP), AX
+	MOVQ p+8(FP), BX
+	MOVQ table+16(FP), SI
+	MOVQ top+24(FP), R8
+	MOVQ groups+32(FP), DX
+	LEAQ potentialNumbers<>(SB), DI
+	XORQ CX, CX
+
+group4:
+	VBROADCASTSD primitive_x(BX), Y0
+	VBROADCASTSD primitive_y(BX), Y1
+	VBROADCASTSD primitive_z(BX), Y2
+	VSUBPD       batch_x(AX)(CX*1), Y0, Y0
+	VSUBPD       batch_y(AX)(CX*1), Y1, Y1
+	VSUBPD       batch_z(AX)(CX*1), Y2, Y2
+	VMOVUPD      Y0, batch_dx(AX)(CX*1)
+	VMOVUPD      Y1, batch_dy(AX)(CX*1)
+	VMOVUPD      Y2, batch_dz(AX)(CX*1)
+	VMULPD       Y0, Y0, Y3
+	VFMADD231PD  Y1, Y1, Y3
+	VFMADD231PD  Y2, Y2, Y3
+
+	// Y5 = p q, Y6 = v, Y7 = u, Y15: t >= 32, Y6 = u there
+	VBROADCASTSD primitive_p(BX), Y0
+	VMOVUPD      batch_q(AX)(CX*1), Y4
+	VMULPD       Y0, Y4, Y5
+	VADDPD       Y0, Y4, Y6
+	VMULPD       Y5, Y3, Y7
+	VBROADCASTSD 0(DI), Y1
+	VMULPD       Y1, Y6, Y8
+	VCMPPD       $0x1D, Y8, Y7, Y15
+	VBLENDVPD    Y15, Y7, Y6, Y6
+
+	// Y9 = 1/sqrt, Y2 = its square
+	VSQRTPD      Y6, Y9
+	VBROADCASTSD 88(DI), Y10
+	VDIVPD       Y9, Y10, Y9
+	VMULPD       Y9, Y9, Y2
+
+	// Y12 = t (1 where Y15), Y13 = -2 rho, or -rho/t; Y14 = factor of all
+	VMULPD       Y7, Y2, Y12
+	VMULPD       Y5, Y2, Y13
+	VBROADCASTSD 24(DI), Y3
+	VBROADCASTSD 32(DI), Y4
+	VBLENDVPD    Y15, Y4, Y3, Y3
+	VMULPD       Y3, Y13, Y13
+	VBROADCASTSD primitive_c(BX), Y14
+	VMULPD       batch_c(AX)(CX*1), Y14, Y14
+	VMULPD       Y9, Y14, Y14
+	VBROADCASTSD 40(DI), Y3
+	VBLENDVPD    Y15, Y3, Y10, Y3
+	VMULPD       Y3, Y14, Y14
+
+	// X10 = place of the row in the table, Y11 = distance to its t
+	VMULPD       Y1, Y12, Y11
+	VROUNDPD     $0, Y11, Y11
+	VCVTPD2DQY   Y11, X10
+	VPSLLD       $6, X10, X10
+	VBROADCASTSD 48(DI), Y1
+	VFMSUB213PD  Y12, Y1, Y11
+
+	// Y0 = F_top
+	GATHER4(40, Y0)
+	HORNER4(32)
+	HORNER4(24)
+	HORNER4(16)
+	HORNER4(8)
+	HORNER4(0)
+	TESTQ R8, R8
+	JZ    zero4
+
+	// Y9 = exp(-t), Y12 = 2t
+	VBROADCASTSD 56(DI), Y9
+	SERIES4(64)
+	SERIES4(72)
+	SERIES4(80)
+	SERIES4(16)
+	SERIES4(88)
+	SERIES4(88)
+	GATHER4(48, Y1)
+	VMULPD Y1, Y9, Y9
+	VADDPD Y12, Y12, Y12
+
+	CMPQ R8, $2
+	JLT  one4
+	JEQ  two4
+	CMPQ R8, $3
+	JEQ  three4
+
+	VMOVAPD Y0, Y4
+	DOWN4(Y4, Y0, 112)
+
+three4:
+	VMOVAPD Y0, Y3
+	DOWN4(Y3, Y0, 104)
+
+two4:
+	VMOVAPD Y0, Y2
+	DOWN4(Y2, Y0, 96)
+
+one4:
+	VMOVAPD     Y0, Y1
+	VFMADD213PD Y9, Y12, Y0
+
+zero4:
+	STORE4(88, Y0, batch_g)
+	TESTQ  R8, R8
+	JZ     next4
+	VMULPD Y13, Y14, Y14
+	STORE4(88, Y1, (batch_g+8*const_maxLanes))
+	CMPQ   R8, $2
+	JLT    next4
+	VMULPD Y13, Y14, Y14
+	STORE4(120, Y2, (batch_g+16*const_maxLanes))
+	CMPQ   R8, $3
+	JLT    next4
+	VMULPD Y13, Y14, Y14
+	STORE4(128, Y3, (batch_g+24*const_maxLanes))
+	CMPQ   R8, $4
+	JLT    next4
+	VMULPD Y13, Y14, Y14
+	STORE4(136, Y4, (batch_g+32*const_maxLanes))
+
+next4:
+	ADDQ $32, CX
+	DECQ DX
+	JNZ  group4
+	VZEROUPPER
+	RET

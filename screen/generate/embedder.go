@@ -80,22 +80,33 @@ func (e *embedder) next(ctx context.Context, r *rand.Rand) ([]float64, error) {
 		if p == nil {
 			continue
 		}
-		for range attempts {
-			tried++
-			x, err := p.Once(ctx, r)
-			if ctx.Err() != nil {
-				return nil, ctx.Err()
-			}
-			if err == nil {
-				err = e.stereo(x)
-			}
-			if err == nil {
-				return x, nil
-			}
-			e.reason = e.explain(err)
+		x, n, err := e.solve(ctx, p, r, attempts)
+		tried += n
+		if x != nil || err != nil {
+			return x, err
 		}
 	}
 	return nil, &EmbedError{Attempts: tried, Reason: e.reason}
+}
+
+// solve makes up to limit attempts at a problem. It returns nil where all come
+// to nothing; only the end of ctx is an error.
+func (e *embedder) solve(ctx context.Context, p *embed.Problem, r *rand.Rand, limit int) (x []float64, tried int, err error) {
+	for tried < limit {
+		tried++
+		x, err := p.Once(ctx, r)
+		if ctx.Err() != nil {
+			return nil, tried, ctx.Err()
+		}
+		if err == nil {
+			err = e.stereo(x)
+		}
+		if err == nil {
+			return x, tried, nil
+		}
+		e.reason = e.explain(err)
+	}
+	return nil, tried, nil
 }
 
 // stereo says which stated element came out wrong at x, if one did.

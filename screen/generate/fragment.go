@@ -184,9 +184,8 @@ func (f *fragment) takeStereo(m *molecule.Molecule, held []handedness, bonds map
 func flexibleRingBonds(m *molecule.Molecule) int {
 	h := hybrids(m)
 	count := 0
-	for k, b := range m.Bonds() {
-		stiff := b.Aromatic || h[b.A] == trigonal && h[b.B] == trigonal
-		if size := m.SmallestRing(k); size > 3 && !(stiff && size <= 7) {
+	for k := range m.Bonds() {
+		if size := m.SmallestRing(k); size > 3 && !(stiffBond(m, h, k) && size <= 7) {
 			count++
 		}
 	}

@@ -230,7 +230,7 @@ func readAll(t *testing.T, path string) []load.Record {
 	var recs []load.Record
 	for {
 		rec, err := r.Next()
-		if err == io.EOF {
+		if errors.Is(err, io.EOF) {
 			return recs
 		}
 		if err != nil {

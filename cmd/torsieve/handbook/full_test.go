@@ -7,6 +7,7 @@ import (
 	"testing"
 )
 
+// TestHandbook asks everything and compares the misses with the known ones.
 func TestHandbook(t *testing.T) {
 	all := facts(t)
 	specimens := slices.Concat([]specimen{butane, pentane, hexane}, rotors, chains, carbonyls, rings, aValues)
@@ -19,5 +20,11 @@ func TestHandbook(t *testing.T) {
 			})
 		}
 	})
-	t.Log("\n" + markdown(slices.Concat(answers...)))
+	rows := slices.Concat(answers...)
+	t.Log("\n" + markdown(rows) + "\n" + tally(rows))
+	checkMisses(t, rows)
+	checkUFF(t, rows)
+	if len(rows) != len(all) {
+		t.Errorf("%d rows for %d facts", len(rows), len(all))
+	}
 }

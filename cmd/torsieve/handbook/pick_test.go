@@ -115,7 +115,7 @@ func either(a, b pick, reduce func(*subject, []*point, []float64) float64) pick 
 func crest(d dihedral, degrees ...float64) pick {
 	var shapes []shape
 	for _, v := range degrees {
-		shapes = append(shapes, shape{turn{d, v}})
+		shapes = append(shapes, shape{turn{d, v, usual}})
 	}
 	return pick{func(ctx context.Context, sub *subject) ([]*point, error) {
 		var points []*point
@@ -129,4 +129,3 @@ func crest(d dihedral, degrees ...float64) pick {
 		return points, nil
 	}, most, shapes}
 }
-

@@ -3,7 +3,6 @@ package handbook
 import (
 	"context"
 	"math"
-
 )
 
 // A question is how a fact is measured on a subject: a value from the tier that
@@ -101,12 +100,13 @@ func isomer(fact string, c class, other string) question {
 	}}
 }
 
-// count asks for the number of distinct minima within kcal/mol of the lowest.
+// count asks how many distinct minima the search leads to, up to so many kcal/mol
+// above the lowest.
 func count(fact string, within float64) question {
 	return question{fact, counts, nil, func(_ context.Context, sub *subject) (answer, error) {
 		n := 0.0
 		for _, p := range sub.minima {
-			if p.energy < sub.minima[0].energy+within {
+			if !p.led && p.energy < sub.minima[0].energy+within {
 				n++
 			}
 		}
@@ -135,4 +135,3 @@ func (s specimen) hydrogens(numbers []int) bool {
 	}
 	return false
 }
-

@@ -24,10 +24,12 @@ var chains = []specimen{
 	{"1,2-dichloroethane", "ClCCCl", []question{turned("dichloroethane", 180, 67)}},
 	{"1-fluoropropane", "FCCC", []question{turned("fluoropropane", 180, 64)}},
 	{"1,2-dimethoxyethane", "COCCOC", []question{
-		gap("dimethoxyethane", minima, minimum(along(0, 180, 180, 180)...), minimum(along(0, 180, 72, 180)...))}},
+		gap("dimethoxyethane", minima, minimum(along(0, 180, 180, 180)...), minimum(along(0, 180, 72, 180)...)),
+	}},
 	{"methyl ethyl ether", "COCC", []question{turned("methyl ethyl ether", 180, 75)}},
 	{"dimethoxymethane", "COCOC", []question{
-		gap("dimethoxymethane", minima, minimum(along(0, 67, 67)...), minimum(along(0, 180, 67)...))}},
+		gap("dimethoxymethane", minima, minimum(along(0, 67, 67)...), minimum(along(0, 180, 67)...)),
+	}},
 	{"ethanol", "[H]OCC", []question{turned("ethanol", 180, 62)}},
 	{"propanal", "O=CCC", []question{turned("propanal", 0, 125)}},
 	{"1-propanol", "[H]OCCC", []question{
@@ -35,14 +37,16 @@ var chains = []specimen{
 		count("propanol minima", 20),
 	}},
 	{"ethylene glycol", "[H]OCCO[H]", []question{
-		gap("ethylene glycol", diols, minimum(at(1, 2, 3, 4, 180)), minimum(at(0, 1, 2, 3, 180), at(1, 2, 3, 4, 60), at(2, 3, 4, 5, -55)))}},
+		gap("ethylene glycol", diols, minimum(at(1, 2, 3, 4, 180)), minimum(at(0, 1, 2, 3, 180), at(1, 2, 3, 4, 60), at(2, 3, 4, 5, -55))),
+	}},
 	{"1,4-butanediol", "[H]OCCCCO[H]", butanediol},
 	{"glycine", "[H]OC(=O)CN", []question{
 		gap("glycine", minima, minimum(at(0, 1, 2, 3, 0), at(5, 4, 2, 3, 0)), minimum(at(0, 1, 2, 3, 180), at(5, 4, 2, 3, 180))),
 		count("glycine minima", 20),
 	}},
 	{"methanesulfonamide", "CS(=O)(=O)N[H]", []question{
-		angle("methanesulfonamide angle", dihedral{0, 1, 4, 5}, at(0, 1, 4, 5, 65))}},
+		angle("methanesulfonamide angle", dihedral{0, 1, 4, 5}, at(0, 1, 4, 5, 65)),
+	}},
 	{"methyl nitrite", "CON=O", []question{turned("methyl nitrite", 0, 180)}},
 	{"nitrous acid", "[H]ON=O", []question{turned("nitrous acid", 180, 0)}},
 }

@@ -44,7 +44,8 @@ var rotors = []specimen{
 	{"phenol", "[H]Oc1ccccc1", methyl("phenol barrier", 90)},
 	{"benzaldehyde", "O=Cc1ccccc1", methyl("benzaldehyde barrier", 90)},
 	{"nitrobenzene", "[O-][N+](=O)c1ccccc1", []question{
-		gap("nitrobenzene barrier", barriers, minimum(), held(at(0, 1, 3, 4, 90)))}},
+		gap("nitrobenzene barrier", barriers, minimum(), held(at(0, 1, 3, 4, 90))),
+	}},
 	{"aniline", "[H]N([H])c1ccccc1", []question{
 		gap("aniline inversion", barriers, minimum(), held(at(0, 1, 3, 4, 0), at(2, 1, 3, 4, 180))),
 		gap("aniline torsion", barriers, minimum(), saddle(shape{at(0, 1, 3, 4, 60), at(2, 1, 3, 4, -60)},

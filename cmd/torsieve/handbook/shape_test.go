@@ -15,21 +15,21 @@ type dihedral [4]int
 
 func (d dihedral) of(x []float64) float64 { return geom.Dihedral(x, d[0], d[1], d[2], d[3]) / degree }
 
-// A turn is a dihedral and the degrees that it has, or is to have.
+// A turn is a dihedral, the degrees that it has or is to have, and how far a
+// minimum may be from them and still count.
 type turn struct {
 	dihedral
-	degrees float64
+	degrees, slack float64
 }
 
-func at(i, j, k, l int, degrees float64) turn { return turn{dihedral{i, j, k, l}, degrees} }
+// usual slack: the neighbouring minimum of a three-fold rotor is 120 degrees
+// away, and methods differ by some ten.
+const usual = 35
+
+func at(i, j, k, l int, degrees float64) turn { return turn{dihedral{i, j, k, l}, degrees, usual} }
 
 // A shape is what some dihedrals of a molecule are. An empty one is any shape.
 type shape []turn
-
-// slack is how far, in degrees, a dihedral may be from what its shape says: the
-// neighbouring minimum of a three-fold rotor is 120 degrees away, and methods
-// differ by some ten.
-const slack = 35
 
 // along returns the turns of a chain whose atoms are numbered from first on.
 func along(first int, degrees ...float64) shape {
@@ -69,7 +69,7 @@ func (sub *subject) has(x []float64, s shape) bool {
 
 func (s shape) fits(x []float64, perm []int, hand float64) bool {
 	for _, t := range s {
-		if math.Abs(math.Remainder(hand*t.under(perm).of(x)-t.degrees, 360)) > slack {
+		if math.Abs(math.Remainder(hand*t.under(perm).of(x)-t.degrees, 360)) > t.slack {
 			return false
 		}
 	}

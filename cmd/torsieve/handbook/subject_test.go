@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math/rand/v2"
 	"slices"
 
 	"torsieve/dedupe"
@@ -21,7 +22,7 @@ type subject struct {
 	surface      screen.Sloped
 	same, mirror [][]int // the symmetries of the graph; those that turn all centres over
 	minima       []*point
-	top          screen.Surface // HF-3c; nil on the levels of the force field
+	top          screen.Surface // HF-3c; nil on the levels of the force field, and for iodine
 }
 
 // A point is a geometry with its energies in kcal/mol.
@@ -44,9 +45,7 @@ func searchFor(ctx context.Context, code string) (search, error) {
 	if err != nil {
 		return search{}, err
 	}
-	o := generate.Defaults()
-	o.Max = 60
-	found, err := generate.Conformers(ctx, m, code, o)
+	found, err := generate.Conformers(ctx, m, code, generate.Defaults())
 	if err != nil {
 		return search{}, err
 	}
@@ -91,11 +90,24 @@ func (sub *subject) relaxAll(ctx context.Context, shapes [][]float64) error {
 	return nil
 }
 
+// relaxed settles start under holds. Without any it is first shaken, so that
+// no symmetry keeps it on a saddle.
 func (sub *subject) relaxed(ctx context.Context, start []float64, holds []hold) (*point, error) {
 	p := &point{x: slices.Clone(start)}
+	if len(holds) == 0 {
+		shake(p.x)
+	}
 	var err error
 	p.energy, err = settle(ctx, sub.m, sub.surface, p.x, holds)
 	return p, err
+}
+
+// shake moves each coordinate by up to 0.02 angstrom, always in the same way.
+func shake(x []float64) {
+	random := rand.New(rand.NewPCG(1, 2))
+	for i := range x {
+		x[i] += (2*random.Float64() - 1) * 0.02 * units.Angstrom
+	}
 }
 
 // errNoMinimum: the level has no minimum of the shape asked for.

@@ -1,113 +1,73 @@
 package handbook
 
 import (
-	"context"
 	"fmt"
 	"math"
 	"strings"
-	"testing"
 )
 
-// A row is a fact beside what the tiers say.
-type row struct {
-	specimen    string
-	fact        fact
-	class       class
-	uff, field  float64
-	gfn2, hf    float64
-	led         bool
-	uffE, gfn2E error
-}
-
-// A verdict compares a tier's value with a fact.
-type verdict string
-
-const (
-	within  verdict = "within"  // the fact's uncertainty and the tier's known error
-	beyond  verdict = "beyond"  // that, but not twice the known error
-	outside verdict = "outside" // twice the known error
-	silent  verdict = "-"       // no value, or no known error
-)
-
-func judge(value, known float64, f fact) verdict {
-	off := math.Abs(value-f.Value) - f.Uncertainty
-	switch {
-	case math.IsNaN(off) || math.IsNaN(known):
-		return silent
-	case off <= known:
-		return within
-	case off <= 2*known:
-		return beyond
-	}
-	return outside
-}
-
-// examine asks all questions about a specimen.
-func examine(t *testing.T, s specimen, all []fact, levels ...level) []row {
-	t.Helper()
-	ctx := t.Context()
-	from, err := searchFor(ctx, s.smiles)
-	if err != nil {
-		t.Fatal(err)
-	}
-	rows := make([]row, len(s.questions))
-	for n, q := range s.questions {
-		rows[n] = row{specimen: s.name, fact: factNamed(t, all, q.fact), class: q.class, uff: none, field: none, gfn2: none, hf: none}
-	}
-	for _, l := range levels {
-		sub, err := subjectAt(ctx, from, l, s.hydrogens(from.m.Numbers()))
-		if err != nil {
-			t.Fatal(err)
-		}
-		for n, q := range s.questions {
-			rows[n].record(t, l, ask(ctx, t, sub, q))
-		}
-	}
-	return rows
-}
-
-// ask allows a force field to have no minimum of a shape; GFN2-xTB must say
-// something about each.
-func ask(ctx context.Context, t *testing.T, sub *subject, q question) answer {
-	t.Helper()
-	a, err := q.ask(ctx, sub)
-	if err == nil {
-		return a
-	}
-	if sub.level.name == gfn2.name {
-		t.Errorf("%s: %s: %v", q.fact, sub.level.name, err)
-	}
-	return answer{value: none, hf: none}
-}
-
-func (r *row) record(_ *testing.T, l level, a answer) {
-	switch l.name {
-	case uff.name:
-		r.uff = a.value
-	case field.name:
-		r.field = a.value
-	default:
-		r.gfn2, r.hf, r.led = a.value, a.hf, a.led
-	}
-}
-
-// markdown is the table of all rows.
+// markdown is the table of all rows, with what is known of the tiers' errors.
 func markdown(rows []row) string {
 	var b strings.Builder
-	fmt.Fprintln(&b, "| molecule | quantity | handbook | UFF | force field | GFN2-xTB | HF-3c | known errors | verdict |")
+	fmt.Fprintln(&b, "| molecule | quantity | handbook | UFF as published | force field | GFN2-xTB | HF-3c | class | verdict: force field, GFN2-xTB, HF-3c |")
 	fmt.Fprintln(&b, "|---|---|---:|---:|---:|---:|---:|---|---|")
 	for _, r := range rows {
-		fmt.Fprintf(&b, "| %s | %s | %s ± %s %s | %s | %s | %s | %s | %s | %s |\n",
-			r.specimen, r.fact.Quantity, number(r.fact.Value), number(r.fact.Uncertainty), r.fact.Unit,
-			number(r.uff), number(r.field), number(r.gfn2), number(r.hf), r.class.name,
-			fmt.Sprintf("%s, %s, %s", judge(r.field, r.class.field, r.fact), judge(r.gfn2, r.class.gfn2, r.fact), judge(r.hf, r.class.hf, r.fact)))
+		f, g, h := r.verdicts()
+		fmt.Fprintf(&b, "| %s | %s | %s | %s | %s | %s%s | %s | %s | %s, %s, %s |\n",
+			r.fact.Molecule, r.fact.Quantity, r.handbook(), r.show(r.uff.value), r.show(r.field.value),
+			r.show(r.quantum.value), map[bool]string{true: "†"}[r.quantum.led], r.show(r.quantum.hf), r.class.name, f, g, h)
+	}
+	fmt.Fprintln(&b, "\nKnown errors (mean absolute deviation, kcal/mol; degrees for angles):")
+	fmt.Fprintln(&b, "\n| class | force field | GFN2-xTB | HF-3c | from |")
+	fmt.Fprintln(&b, "|---|---:|---:|---:|---|")
+	for _, c := range classes {
+		fmt.Fprintf(&b, "| %s | %s | %s | %s | %s |\n", c.name, number(c.field, 2), number(c.gfn2, 2), number(c.hf, 2), c.from)
 	}
 	return b.String()
 }
 
-func number(v float64) string {
+// handbook is the fact's value; an m marks one from memory.
+func (r row) handbook() string {
+	s := r.show(r.fact.Value)
+	if r.fact.Uncertainty > 0 {
+		s += " ± " + r.show(r.fact.Uncertainty)
+	}
+	if strings.HasPrefix(r.fact.Check, "from memory") {
+		s += " m"
+	}
+	return s
+}
+
+// show writes energies with two digits, angles with one, counts with none.
+func (r row) show(v float64) string {
+	return number(v, map[string]int{"kcal/mol": 2, "deg": 1}[r.fact.Unit])
+}
+
+func number(v float64, digits int) string {
 	if math.IsNaN(v) {
 		return "-"
 	}
-	return fmt.Sprintf("%.2f", v)
+	if v == 0 || math.Abs(v) < 0.5*math.Pow10(-digits) {
+		v = 0 // not -0
+	}
+	return fmt.Sprintf("%.*f", digits, v)
+}
+
+// tally counts the verdicts of each tier.
+func tally(rows []row) string {
+	counts := map[string]map[verdict]int{field.name: {}, gfn2.name: {}, "HF-3c": {}}
+	for _, r := range rows {
+		f, g, h := r.verdicts()
+		counts[field.name][f]++
+		counts[gfn2.name][g]++
+		counts["HF-3c"][h]++
+	}
+	var b strings.Builder
+	fmt.Fprintln(&b, "| tier | within | beyond | outside | absent | not judged |")
+	fmt.Fprintln(&b, "|---|---:|---:|---:|---:|---:|")
+	for _, tier := range []string{field.name, gfn2.name, "HF-3c"} {
+		c := counts[tier]
+		fmt.Fprintf(&b, "| %s | %d | %d | %d | %d | %d |\n", tier, c[within], c[beyond], c[outside], c[absent], c[silent])
+	}
+	return b.String()
 }

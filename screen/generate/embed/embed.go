@@ -14,6 +14,7 @@ type Problem struct {
 	Bounds *Bounds
 	Chiral []Volume // handedness, held from the start
 	Planar []Volume // four points in one plane, asked for at the end
+	Twist  []Volume // wished for, as the shape of a ring; not checked
 }
 
 // accuracy that is asked of an embedding; the force field does the rest.

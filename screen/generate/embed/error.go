@@ -34,6 +34,7 @@ type errorFunction struct {
 	pairs   []pair
 	chiral  []Volume
 	planar  []Volume
+	twist   []Volume
 	weights weights
 }
 
@@ -43,7 +44,7 @@ type pair struct {
 }
 
 func newErrorFunction(p *Problem) *errorFunction {
-	f := &errorFunction{n: p.Bounds.n, chiral: p.Chiral, planar: p.Planar}
+	f := &errorFunction{n: p.Bounds.n, chiral: p.Chiral, planar: p.Planar, twist: p.Twist}
 	for i := range f.n {
 		for j := i + 1; j < f.n; j++ {
 			l, u := p.Bounds.At(i, j)
@@ -61,6 +62,9 @@ func newErrorFunction(p *Problem) *errorFunction {
 func (f *errorFunction) value(grad, x []float64) float64 {
 	sum := f.distances(grad, x)
 	for _, v := range f.chiral {
+		sum += v.penalty(grad, x, f.weights.chiral)
+	}
+	for _, v := range f.twist {
 		sum += v.penalty(grad, x, f.weights.chiral)
 	}
 	if f.weights.planar > 0 {
