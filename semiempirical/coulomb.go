@@ -55,8 +55,8 @@ func (c *coulomb) update(g *geometry) {
 
 func (c *coulomb) energy(m *moments, v *potential) float64 {
 	n := len(c.hardness)
-	var blas gonum.Implementation
-	blas.Dgemv(noTrans, n, n, 1, c.gamma, n, m.shell, 1, 0, c.field, 1)
+	var lin gonum.Implementation
+	lin.Dgemv(noTrans, n, n, 1, c.gamma, n, m.shell, 1, 0, c.field, 1)
 	var sum float64
 	for i, f := range c.field {
 		v.shell[i] += f

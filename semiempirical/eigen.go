@@ -21,19 +21,28 @@ type orbitals struct {
 	occAlpha, occBeta []float64 // 0 to 1
 	weights           []float64
 	entropy           float64 // -T S, hartree
+
+	near   *subspace // for Fock matrices close to the one that was solved last; nil where spins differ
+	solved bool      // near may be used
+	isNear bool      // near, not c, holds the occupied orbitals
 }
 
 func newOrbitals(n int, alpha, beta, kT float64) *orbitals {
-	return &orbitals{
+	o := &orbitals{
 		n: n, solver: linalg.NewGeneralised(n),
 		energy: make([]float64, n), c: make([]float64, n*n),
 		alpha: alpha, beta: beta, kT: kT,
 		occAlpha: make([]float64, n), occBeta: make([]float64, n), weights: make([]float64, n),
 	}
+	if occ := int(alpha); alpha == beta && occ < n {
+		o.near = newSubspace(n, occ)
+	}
+	return o
 }
 
 // overlap takes in the overlap matrix of a new geometry.
 func (o *orbitals) overlap(s []float64) error {
+	o.solved = false
 	if err := o.solver.Factor(s); err != nil {
 		return fmt.Errorf("%w (%w)", ErrSingular, err)
 	}
@@ -47,33 +56,69 @@ func (o *orbitals) overlap(s []float64) error {
 // below it rounding is enlarged to what would be seen in the energy.
 const smallestPivot = 1e-7
 
-// solve finds the orbitals of a Fock matrix and fills them.
-func (o *orbitals) solve(f []float64) error {
+// solve finds the orbitals of a Fock matrix and fills them. Where a closed
+// shell with a gap was solved before at this geometry, only the occupied space
+// is followed, to within tol (0: never); then orbital energies are still those
+// of the last full solution.
+func (o *orbitals) solve(f []float64, tol float64) error {
+	if o.solved && tol > 0 {
+		if steps, ok := o.near.solve(o, f, tol); ok {
+			o.isNear = true
+			o.solved = steps < tiresome
+			return nil
+		}
+	}
 	if err := o.solver.Solve(f, o.energy, o.c); err != nil {
 		return err
 	}
+	o.fill()
+	o.isNear = false
+	if o.solved = o.near != nil; o.solved {
+		o.near.start(f)
+	}
+	return nil
+}
+
+// tiresome is the number of steps from which on a full solution is due in the
+// next cycle.
+const tiresome = 5
+
+// fill occupies the orbitals.
+func (o *orbitals) fill() {
 	scf.Occupy(o.occAlpha, o.energy, o.alpha, o.kT)
 	o.entropy = scf.Entropy(o.occAlpha, o.kT)
 	if o.alpha == o.beta {
 		copy(o.occBeta, o.occAlpha)
 		o.entropy *= 2
-		return nil
+		return
 	}
 	scf.Occupy(o.occBeta, o.energy, o.beta, o.kT)
 	o.entropy += scf.Entropy(o.occBeta, o.kT)
-	return nil
 }
 
 // density writes the density matrix of both spins.
 func (o *orbitals) density(p []float64) {
+	if o.isNear {
+		weights := o.weights[:o.near.occupied]
+		for k := range weights {
+			weights[k] = 2
+		}
+		o.work.WeightedOuter(p, o.near.c, weights, o.n)
+		return
+	}
 	for k := range o.weights {
 		o.weights[k] = o.occAlpha[k] + o.occBeta[k]
 	}
 	o.work.WeightedOuter(p, o.c, o.weights, o.n)
 }
 
-// energyDensity writes the density matrix weighted with the orbital energies.
-func (o *orbitals) energyDensity(w []float64) {
+// energyDensity writes the density matrix weighted with the orbital energies
+// of the Fock matrix f, which was solved last.
+func (o *orbitals) energyDensity(w, f []float64) {
+	if o.isNear {
+		o.near.energyDensity(o, w, f)
+		return
+	}
 	for k := range o.weights {
 		o.weights[k] = (o.occAlpha[k] + o.occBeta[k]) * o.energy[k]
 	}

@@ -40,3 +40,10 @@ func BenchmarkSurface(b *testing.B) {
 		run("warm-gradient", false, gradient)
 	}
 }
+
+func BenchmarkNew(b *testing.B) {
+	m := named(b, "csd-VIMYUL")
+	for b.Loop() {
+		m.surface(b, 1)
+	}
+}

@@ -173,7 +173,7 @@ func TestDensityFedTerms(t *testing.T) {
 			}
 			comparePotentials(t, m.basis, c.potential, &want)
 			allNear(t, "residual", out.Residual, make([]float64, len(out.Residual)), 1e-7)
-			c.orbitals.energyDensity(s.energyRho)
+			c.orbitals.energyDensity(s.energyRho, c.fock)
 			for i := range n {
 				for j := range n {
 					near(t, "density", c.density[i*n+j], want.Density[at[i]][at[j]], 1e-7)

@@ -163,6 +163,45 @@ func TestWarmAndColdStarts(t *testing.T) {
 	near(t, "sum of parts", energy, first.Energy, 1e-12)
 }
 
+// A start that is of no use is given up for the neutral guess.
+func TestUselessStart(t *testing.T) {
+	m := named(t, "glycine")
+	s := m.surface(t, 1e-4)
+	if _, err := s.Energy(t.Context(), m.coordinates()); err != nil {
+		t.Fatal(err)
+	}
+	for i := range s.start {
+		s.start[i] = math.NaN()
+	}
+	p, err := s.Energy(t.Context(), m.coordinates())
+	if err != nil {
+		t.Fatal(err)
+	}
+	near(t, "energy", p.Energy, m.Energy, 2e-10)
+}
+
+// Atoms alone, where all orbitals of a spin are full or none: hydrogen has the
+// energy of the reference library, whose search for the Fermi level ends up to
+// 1.5e-8 electrons short.
+func TestFullAndEmptySpins(t *testing.T) {
+	for _, tc := range []struct {
+		z, charge, multiplicity int
+		energy                  float64 // hartree; 0: not known
+	}{{1, 0, 2, -0.393482759}, {1, -1, 1, 0}, {9, -1, 1, 0}, {2, 0, 1, 0}} {
+		s, err := New([]int{tc.z}, tc.charge, tc.multiplicity, Options{Accuracy: 1e-4})
+		if err != nil {
+			t.Fatal(err)
+		}
+		grad := make([]float64, 3)
+		p := mustGradient(t, s, grad, []float64{1, -2, 3})
+		near(t, "charge", p.Charges[0], float64(tc.charge), 1e-12)
+		allNear(t, "gradient", grad, []float64{0, 0, 0}, 1e-14)
+		if tc.energy != 0 {
+			near(t, "energy", p.Energy, tc.energy, 5e-9)
+		}
+	}
+}
+
 // What is left in scratch memory does not matter, and a cycle allocates
 // nothing.
 func TestScratchMemory(t *testing.T) {

@@ -11,12 +11,12 @@ import (
 // 17-19 in Mulliken's partition; the origin of an atom's moments is the atom).
 func (h *hamiltonian) populate(m *moments, p []float64, g *geometry) (core float64) {
 	n := h.basis.functions()
-	var blas gonum.Implementation
+	var lin gonum.Implementation
 	for i, s := range h.basis.shells {
 		m.shell[i] = s.Occupation
 	}
 	for mu, i := range h.basis.funcShell {
-		m.shell[i] -= blas.Ddot(n, p[mu*n:], 1, h.s[mu*n:], 1)
+		m.shell[i] -= lin.Ddot(n, p[mu*n:], 1, h.s[mu*n:], 1)
 	}
 	clear(m.dipole)
 	clear(m.quadrupole)
@@ -30,7 +30,7 @@ func (h *hamiltonian) populate(m *moments, p []float64, g *geometry) (core float
 		}
 	}
 	m.sumShells()
-	return blas.Ddot(n*n, p, 1, h.h, 1)
+	return lin.Ddot(n*n, p, 1, h.h, 1)
 }
 
 // linkSums sums density times integral over a link's block, for each operator.

@@ -1,6 +1,10 @@
 package semiempirical
 
-import "torsieve/internal/scf"
+import (
+	"math"
+
+	"torsieve/internal/scf"
+)
 
 // A cycle is the self-consistency's step: moments in, moments out. It owns all
 // memory that a cycle needs.
@@ -19,6 +23,8 @@ type cycle struct {
 
 	core  float64   // energy of the core Hamiltonian, hartree
 	parts []float64 // energies of the contributions
+
+	tolerance float64 // of the orbitals in the next cycle; 0: solve from the start
 }
 
 func newCycle(b *basis, g *geometry, h *hamiltonian, contributions []contribution, o *orbitals) *cycle {
@@ -43,7 +49,7 @@ func (c *cycle) step(in []float64) (scf.Output, error) {
 		part.energy(c.in, c.potential)
 	}
 	c.hamiltonian.fock(c.fock, c.potential, c.atoms, c.geometry)
-	if err := c.orbitals.solve(c.fock); err != nil {
+	if err := c.orbitals.solve(c.fock, c.tolerance); err != nil {
 		return scf.Output{}, err
 	}
 	c.orbitals.density(c.density)
@@ -54,8 +60,25 @@ func (c *cycle) step(in []float64) (scf.Output, error) {
 		c.parts[i] = part.energy(c.out, c.unused)
 		energy += c.parts[i]
 	}
+	var sum float64
 	for i, v := range c.out.vec {
 		c.residual[i] = v - c.in.vec[i]
+		sum += c.residual[i] * c.residual[i]
 	}
+	c.setTolerance(math.Sqrt(sum / float64(len(c.residual))))
 	return scf.Output{State: c.out.vec, Residual: c.residual, Energy: energy}, nil
 }
+
+// setTolerance chooses how exact the next cycle's orbitals are to be, by the
+// residual (rms) of this one: so far below what the moments will still change
+// that neither the mixing nor the result is touched.
+func (c *cycle) setTolerance(residual float64) {
+	c.tolerance = 0
+	if residual < followBelow {
+		c.tolerance = max(1e-4*residual, 1e-13)
+	}
+}
+
+// followBelow is the residual below which the occupied orbitals are followed
+// from cycle to cycle.
+const followBelow = 1e-2
