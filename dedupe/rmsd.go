@@ -1,6 +1,7 @@
 package dedupe
 
 import (
+	"context"
 	"math"
 
 	"torsieve/internal/geom"
@@ -14,19 +15,25 @@ func (c *Comparer) RMSD(a, b []float64) (rmsd float64, mirrored bool) {
 	return f.rmsd, f.mirrored
 }
 
-// Distances is RMSD for many shapes at once: out[i][j] for all j < i, bohr.
-// What is asked of every pair of some hundred shapes is best asked here.
-func (c *Comparer) Distances(xs [][]float64) [][]float64 {
+// Distances returns the RMSD of every pair of shapes, in bohr: a symmetric
+// table. The error is ctx.Err().
+func (c *Comparer) Distances(ctx context.Context, xs [][]float64) ([][]float64, error) {
 	clouds := make([]cloud, len(xs))
 	out := make([][]float64, len(xs))
 	for i, x := range xs {
 		clouds[i] = c.take(x)
-		out[i] = make([]float64, i)
+		out[i] = make([]float64, len(xs))
+	}
+	for i := range xs {
+		if ctx.Err() != nil {
+			return nil, ctx.Err()
+		}
 		for j := range i {
-			out[i][j] = c.best(clouds[i], clouds[j]).rmsd
+			d := c.best(clouds[i], clouds[j]).rmsd
+			out[i][j], out[j][i] = d, d
 		}
 	}
-	return out
+	return out, nil
 }
 
 // take picks the compared atoms out of a shape.

@@ -2,22 +2,23 @@ package hf
 
 import (
 	"context"
+	"sort"
 
 	"torsieve/internal/gauss"
 )
 
 // A fockBuilder makes Coulomb and exchange matrices of densities at one
-// geometry after another. It keeps the repulsion integrals where they fit its
-// budget, and computes them anew for each build where not. It owns its memory
-// and serves one goroutine at a time.
+// geometry after another. It keeps the repulsion integrals that fit its budget,
+// and computes the rest anew for each build. It owns its memory and serves one
+// goroutine at a time.
 type fockBuilder struct {
 	rep    *gauss.Repulsion
 	n      int   // functions
 	budget int64 // bytes for integrals
 
-	stored bool      // integrals holds all blocks
-	values []float64 // all blocks one after another, or room for the largest
-	begin  []int     // of each bra's block in values
+	kept   int       // bras whose blocks are kept: the first ones, of lowest angular momentum, save most time a byte
+	values []float64 // kept blocks one after another, then room for the largest other one
+	begin  []int     // of each bra's block, if all were kept
 	spans  []gauss.Span
 
 	packed  []float64 // density by pairs of functions
@@ -32,24 +33,38 @@ func newFockBuilder(shells []gauss.Shell, budget int64) *fockBuilder {
 	return &fockBuilder{rep: gauss.NewRepulsion(shells), n: off[len(shells)], budget: budget, bounds: densityBounds{offsets: off}}
 }
 
-// place takes the atoms to x and computes the integrals, if they are to be
-// kept. Integrals below threshold (hartree) are left out.
+// place takes the atoms to x and computes the integrals that are to be kept.
+// Integrals below threshold (hartree) are left out.
 func (f *fockBuilder) place(ctx context.Context, x []float64, threshold float64) error {
 	f.rep.Place(x, threshold)
 	total, largest := f.measure()
-	f.stored = int64(total) <= f.budget/8
-	if !f.stored {
-		f.values = resize(f.values, largest)
-		return nil
+	room := int(f.budget / 8)
+	f.kept = f.rep.Pairs()
+	if total > room {
+		f.kept = sort.Search(f.rep.Pairs(), func(bra int) bool { return f.begin[bra+1] > room-largest })
+		total = f.begin[f.kept] + largest
 	}
-	f.values = resize(f.values, total)
-	for bra := range f.rep.Pairs() {
+	f.reserve(total)
+	for bra := range f.kept {
 		if err := ctx.Err(); err != nil {
 			return err
 		}
 		f.rep.Block(f.block(bra), bra, nil)
 	}
 	return nil
+}
+
+// complete says whether all integrals are kept.
+func (f *fockBuilder) complete() bool { return f.kept == f.rep.Pairs() }
+
+// reserve makes values n long. Conformers of one molecule differ a little, so
+// it takes a little more than it must, and gives the old memory up before.
+func (f *fockBuilder) reserve(n int) {
+	if cap(f.values) < n {
+		f.values = nil
+		f.values = make([]float64, max(n, min(n+n/16, int(f.budget/8))))
+	}
+	f.values = f.values[:n]
 }
 
 // measure finds where each block begins, and returns how many integrals there
@@ -70,11 +85,11 @@ func (f *fockBuilder) measure() (total, largest int) {
 
 // block returns the memory of one bra's block.
 func (f *fockBuilder) block(bra int) []float64 {
-	lo, hi := f.begin[bra], f.begin[bra+1]
-	if f.stored {
-		return f.values[lo:hi]
+	lo, size := f.begin[bra], f.begin[bra+1]-f.begin[bra]
+	if bra >= f.kept {
+		lo = f.begin[f.kept]
 	}
-	return f.values[:hi-lo]
+	return f.values[lo : lo+size]
 }
 
 // build writes J_ab = sum P_cd (ab|cd) of the density total, and for each of
@@ -91,7 +106,7 @@ func (f *fockBuilder) build(ctx context.Context, total []float64, spins [][]floa
 	for _, k := range ks {
 		clear(k)
 	}
-	if !f.stored {
+	if !f.complete() {
 		f.bounds.update(total, spins, f.n)
 	}
 	for bra := range f.rep.Pairs() {
@@ -99,7 +114,7 @@ func (f *fockBuilder) build(ctx context.Context, total []float64, spins [][]floa
 			return err
 		}
 		v := f.block(bra)
-		if !f.stored {
+		if bra >= f.kept {
 			f.rep.Block(v, bra, f.bounds.skip(f.rep, bra))
 		}
 		f.digest(bra, v, spins, ks)

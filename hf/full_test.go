@@ -2,7 +2,10 @@
 
 package hf
 
-import "testing"
+import (
+	"math"
+	"testing"
+)
 
 // Everything that the fast suite leaves out for its time: all bases of all
 // systems but def2-TZVP beyond four atoms, and the drug-like molecules.
@@ -21,8 +24,19 @@ func TestAllUnrestrictedSystems(t *testing.T) {
 		func(t *testing.T, s *referenceSystem, r *referenceResult) { check(t, s, r, 0.01, 1e-8) })
 }
 
+// At the default accuracy energies are good to 1e-7 hartree. What answers to the
+// density in first order (parts, charges, dipoles) is compared at a hundredth of it.
 func TestDrugLike(t *testing.T) {
-	entries(t, "drug-like.json",
-		func(s *referenceSystem, r *referenceResult) bool { return r.Basis == "MINIX" },
-		func(t *testing.T, s *referenceSystem, r *referenceResult) { check(t, s, r, 1, 1e-7) })
+	minix := func(s *referenceSystem, r *referenceResult) bool { return r.Basis == "MINIX" }
+	entries(t, "drug-like.json", minix, func(t *testing.T, s *referenceSystem, r *referenceResult) {
+		if s.Conformer > 0 {
+			check(t, s, r, 0.01, 1e-7)
+			return
+		}
+		p := point(t, s.numbers(t), s.Charge, s.Multiplicity, s.coordinates(), Options{Method: "hf", Basis: r.Basis})
+		t.Logf("off by %.1e, %d iterations", p.Energy-r.Energy, p.Iterations)
+		if math.Abs(p.Energy-r.Energy) > 1e-7 {
+			t.Errorf("energy %.10f, want %.10f", p.Energy, r.Energy)
+		}
+	})
 }

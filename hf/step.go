@@ -74,7 +74,7 @@ func newField(fock *fockBuilder, basis *orthogonal, core []float64, repulsion fl
 	f.levels, f.z, f.a, f.orbitals = make([]float64, m), make([]float64, m*m), make([]float64, m*m), make([]float64, m*n)
 	f.out.State, f.out.Residual = make([]float64, m*m*len(occupied)), make([]float64, m*m*len(occupied))
 	f.eigen = linalg.NewEigen(m)
-	if !fock.stored {
+	if !fock.complete() {
 		f.increment = newIncrement(n, len(occupied))
 	}
 	return f

@@ -18,6 +18,15 @@ const (
 	made   = 1.15
 )
 
+// SameMolecule returns an error that names the first bond or stereo element of m
+// that the geometry x (3N, bohr) does not show.
+func SameMolecule(m *molecule.Molecule, x []float64) error {
+	if err := sameBonds(m, x); err != nil {
+		return err
+	}
+	return m.StereoMatches(x)
+}
+
 // sameBonds returns an error that names the first bond of m which x does not
 // have, or the first that m does not.
 func sameBonds(m *molecule.Molecule, x []float64) error {

@@ -2,7 +2,6 @@ package screen
 
 import (
 	"fmt"
-	"slices"
 
 	"torsieve/molecule"
 )
@@ -25,38 +24,3 @@ type Ligand struct {
 
 // Name says where the ligand stands and how it is called, for a message.
 func (l *Ligand) Name() string { return fmt.Sprintf("%s (%s)", l.Place, l.ID) }
-
-// groups puts ligands with one structure together, in the order of the first of
-// each. Ligands with an error stand alone. The first takes over the starts of
-// those whose atoms stand in its order; the others are told that theirs were
-// left out.
-func groups(ligands []*Ligand) [][]*Ligand {
-	var out [][]*Ligand
-	place := map[string]int{}
-	for _, l := range ligands {
-		i, seen := place[l.SMILES]
-		if l.Err != nil || !seen {
-			if l.Err == nil {
-				place[l.SMILES] = len(out)
-			}
-			out = append(out, []*Ligand{l})
-			continue
-		}
-		first := out[i][0]
-		switch {
-		case len(l.Starts) == 0:
-		case sameOrder(first.Mol, l.Mol):
-			first.Starts = append(first.Starts, l.Starts...)
-		default:
-			l.warnf("its 3D coordinates were left out: the atoms of %s stand in another order", first.ID)
-		}
-		out[i] = append(out[i], l)
-	}
-	return out
-}
-
-// sameOrder says whether two drawings of one structure number its atoms alike.
-func sameOrder(a, b *molecule.Molecule) bool {
-	ends := func(x, y molecule.Bond) bool { return x.A == y.A && x.B == y.B }
-	return slices.Equal(a.Numbers(), b.Numbers()) && slices.EqualFunc(a.Bonds(), b.Bonds(), ends)
-}

@@ -161,11 +161,8 @@ type changed struct{ error }
 func (r *ligandRun) settle(tier int, c *Conformer, o outcome) error {
 	err := o.err
 	if err == nil && !slices.Equal(o.x, c.X) {
-		if err = sameBonds(r.ligand.Mol, o.x); err == nil {
-			err = r.ligand.Mol.StereoMatches(o.x)
-		}
-		if err != nil {
-			err = changed{err}
+		if differs := SameMolecule(r.ligand.Mol, o.x); differs != nil {
+			err = changed{differs}
 		}
 	}
 	if err != nil {

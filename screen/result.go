@@ -5,6 +5,7 @@ import (
 	"slices"
 	"time"
 
+	"torsieve/molecule"
 	"torsieve/screen/ensemble"
 )
 
@@ -41,6 +42,7 @@ func (c *Conformer) Final() float64 { return c.Energies[c.Last] }
 // A Result is what became of one ligand.
 type Result struct {
 	Ligand     *Ligand
+	Mol        *molecule.Molecule // the ligand, atoms in the order of the geometries; nil if it was not read
 	Status     Status
 	Reason     string // of a status other than Done
 	Tiers      []string
@@ -58,13 +60,22 @@ type Weights struct {
 	Bars []ensemble.Bar // nil where the tier's scatter is not known
 }
 
-// sharedWith is the result of another ligand with the same structure. The
-// geometries are those of the first, atoms in its order.
-func (r *Result) sharedWith(l *Ligand) *Result {
+// sharedWith is the result of another ligand of the group. The atoms of its
+// geometries stand in the order of the first.
+func (r *Result) sharedWith(l sharer) *Result {
 	same := *r
-	same.Ligand = l
+	same.Ligand = l.Ligand
+	how := "same structure as %s: computed once, atoms in its order"
+	if l.mirrored {
+		how = "enantiomer of %s: computed once, shapes mirrored"
+		same.Mol = enantiomer(r.Mol)
+		same.Conformers = slices.Clone(r.Conformers)
+		for i := range same.Conformers {
+			same.Conformers[i].X = mirror(r.Conformers[i].X)
+		}
+	}
 	same.Warnings = append(slices.Clone(l.Warnings), r.Warnings[len(r.Ligand.Warnings):]...)
-	same.Warnings = append(same.Warnings, fmt.Sprintf("same structure as %s: computed once, atoms in its order", r.Ligand.ID))
+	same.Warnings = append(same.Warnings, fmt.Sprintf(how, r.Ligand.ID))
 	same.Took = make([]time.Duration, len(r.Took))
 	return &same
 }

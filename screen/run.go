@@ -30,8 +30,8 @@ type machine struct {
 // (a full disk) stops all.
 //
 // tiers[0] must be the force field that the generator relaxes in; each further
-// one takes what the one before it let up. Ligands with one structure are
-// computed once. When ctx ends, Run returns ctx's cause after keep has been told
+// one takes what the one before it let up. Ligands with one structure, and
+// enantiomers, are computed once. When ctx ends, Run returns ctx's cause after keep has been told
 // of the ligands that were not finished.
 //
 // Results are a function of the ligands, the tiers and the options, not of
@@ -55,11 +55,10 @@ func Run(ctx context.Context, ligands []*Ligand, tiers []Tier, o Options, keep f
 	return nil
 }
 
-// group computes the first of the ligands with one structure and hands its
-// result to all of them.
-func (m *machine) group(ctx context.Context, same []*Ligand, keep func(*Result) error) error {
-	results := []*Result{m.ligand(ctx, same[0])}
-	for _, l := range same[1:] {
+// group computes the first ligand and hands its result to all.
+func (m *machine) group(ctx context.Context, g *group, keep func(*Result) error) error {
+	results := []*Result{m.ligand(ctx, g.first)}
+	for _, l := range g.others {
 		results = append(results, results[0].sharedWith(l))
 	}
 	for _, res := range results { // keep may take a result apart
@@ -80,7 +79,7 @@ func (m *machine) end(res *Result, keep func(*Result) error) error {
 // ligand computes one ligand and never fails: what goes wrong is in the result.
 func (m *machine) ligand(ctx context.Context, l *Ligand) *Result {
 	n := len(m.tiers)
-	res := &Result{Ligand: l, Status: Done, Tiers: names(m.tiers), Entered: make([]int, n), Took: make([]time.Duration, n)}
+	res := &Result{Ligand: l, Mol: l.Mol, Status: Done, Tiers: names(m.tiers), Entered: make([]int, n), Took: make([]time.Duration, n)}
 	res.Warnings = append(res.Warnings, l.Warnings...)
 	if l.Err != nil {
 		res.Status, res.Reason = l.Status, l.Err.Error()

@@ -34,7 +34,7 @@ func TestRunDoesNotDependOnJobs(t *testing.T) {
 	}
 	want := run(1, 4<<30)
 	ignore := cmp.Options{
-		cmpopts.IgnoreFields(Result{}, "Took", "Ligand"), cmpopts.EquateNaNs(),
+		cmpopts.IgnoreFields(Result{}, "Took", "Ligand", "Mol"), cmpopts.EquateNaNs(),
 	}
 	for _, other := range [][]*Result{run(4, 4<<30), run(3, leastMemory)} {
 		if d := cmp.Diff(want, other, ignore); d != "" {
@@ -91,6 +91,48 @@ func TestRunSharesStructures(t *testing.T) {
 	}
 	if len(res[1].Kept) == 0 || !strings.Contains(strings.Join(res[1].Warnings, ";"), "same structure as OCC") {
 		t.Errorf("the second has %d conformers and the warnings %q", len(res[1].Kept), res[1].Warnings)
+	}
+}
+
+// Enantiomers have mirror images of the same energies: computed once. Each
+// result shows its own configuration.
+func TestRunMirrorsEnantiomers(t *testing.T) {
+	in := NewIntake()
+	in.ExpandStereo = true
+	ligands := ligandsOf(t, in, "CC(N)CO", "C[C@H](N)CC", "OC[C@@H](C)N")
+	computed := 0
+	o := quick()
+	o.Watch = func(e Event) {
+		if e.Kind == Begun {
+			computed++
+		}
+	}
+	res, err := results(t.Context(), t, ligands, threeTiers(), o)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if computed != 2 {
+		t.Errorf("%d ligands were computed, want 2: alaninol and butan-2-amine", computed)
+	}
+	a, b := res[0], res[1]
+	if len(a.Kept) == 0 || len(a.Kept) != len(b.Kept) || !strings.Contains(strings.Join(b.Warnings, ";"), "enantiomer of CC(N)CO~1") {
+		t.Fatalf("%d and %d conformers, warnings %q", len(a.Kept), len(b.Kept), b.Warnings)
+	}
+	for k := range a.Kept {
+		x, y := a.Conformers[a.Kept[k]], b.Conformers[b.Kept[k]]
+		if x.Final() != y.Final() {
+			t.Errorf("conformer %d: %.9f and %.9f hartree", k+1, x.Final(), y.Final())
+		}
+	}
+	for _, r := range res {
+		if r.Mol.SMILES() != r.Ligand.SMILES {
+			t.Errorf("%s: the result is of %s", r.Ligand.ID, r.Mol.SMILES())
+		}
+		for _, i := range r.Kept {
+			if err := SameMolecule(r.Mol, r.Conformers[i].X); err != nil {
+				t.Errorf("%s, conformer %d: %v", r.Ligand.ID, i+1, err)
+			}
+		}
 	}
 }
 

@@ -17,7 +17,7 @@ import (
 
 // dedupeCommand drops structures that another one of the file shows already.
 type dedupeCommand struct {
-	File        string       `arg:"" help:"Conformers with 3D coordinates, of one or several molecules: .sdf or .xyz, also gzip'd."`
+	File        string       `arg:"" help:"Conformers with 3D coordinates, of one or several molecules, atoms of each in one order: .sdf or .xyz, also gzip'd."`
 	Out         string       `help:"SD file for what is left, in the file's order." required:"" placeholder:"FILE.sdf"`
 	EnergyField string       `help:"Data item with the energy in hartree, or in kcal/mol if its name says kcal: the lowest of each shape stays (without: the first)." placeholder:"NAME"`
 	Input       inputOptions `embed:""`
@@ -27,39 +27,21 @@ type dedupeCommand struct {
 // writes what is left.
 func (c *dedupeCommand) Run(s *session) error {
 	var t tally
-	var pile []shape
-	err := s.records(c.File, c.Input, func(rec load.Record) error {
-		one := shape{rec: rec}
-		err := usable3D(rec)
-		if err == nil && c.EnergyField != "" {
-			one.energy, err = energyOf(rec, c.EnergyField)
-		}
-		if err != nil {
-			t.failed++
-			s.voice.failed("%s", failedAt(c.File, rec, err).said)
-			return nil
-		}
-		t.done++
-		one.key = rec.Mol.SMILES()
-		pile = append(pile, one)
-		return nil
-	})
+	pile, err := c.read(s, &t)
 	if err != nil {
 		return err
 	}
 	if t.done == 0 {
 		return t.status()
 	}
-	molecules := c.drop(pile)
-	left := 0
+	molecules, left := c.drop(pile), 0
 	err = atomicfile.Write(c.Out, func(w io.Writer) error {
 		for _, one := range pile {
 			if one.dropped {
 				continue
 			}
 			left++
-			out := sdf.Out{Mol: one.rec.Mol, X: one.rec.X, Title: recordID(one.rec)}
-			out.Fields = one.rec.Fields
+			out := sdf.Out{Mol: one.rec.Mol, X: one.rec.X, Title: recordID(one.rec), Fields: one.rec.Fields}
 			if err := sdf.Write(w, out); err != nil {
 				return err
 			}
@@ -71,6 +53,28 @@ func (c *dedupeCommand) Run(s *session) error {
 	}
 	s.voice.note("%d structures of %d molecules read, %d distinct ones written to %s", t.done, molecules, left, c.Out)
 	return t.status()
+}
+
+// read piles up the records that have a shape, and an energy where one is asked
+// for.
+func (c *dedupeCommand) read(s *session, t *tally) (pile []shape, err error) {
+	err = s.records(c.File, c.Input, func(rec load.Record) error {
+		one := shape{rec: rec}
+		err := usable3D(rec)
+		if err == nil && c.EnergyField != "" {
+			one.energy, err = energyOf(rec, c.EnergyField)
+		}
+		if err == nil {
+			t.done++
+			one.key = rec.Mol.SMILES()
+			pile = append(pile, one)
+			return nil
+		}
+		t.failed++
+		s.voice.failed("%s", failedAt(c.File, rec, err).said)
+		return nil
+	})
+	return pile, err
 }
 
 // A shape is one record and what became of it.

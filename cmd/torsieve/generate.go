@@ -6,7 +6,6 @@ import (
 	"io"
 	"strconv"
 
-	"torsieve/internal/atomicfile"
 	"torsieve/internal/units"
 	"torsieve/molecule/sdf"
 	"torsieve/screen"
@@ -38,15 +37,7 @@ func (c *generateCommand) Run(s *session) error {
 		return err
 	}
 	var t tally
-	err = atomicfile.Write(c.Out, func(w io.Writer) error {
-		if err := c.all(s, ligands, w, &t); err != nil {
-			return err
-		}
-		if t.done == 0 {
-			return t.status() // no empty file where nothing could be done
-		}
-		return nil
-	})
+	err = s.writeDone(c.Out, &t, func(w io.Writer) error { return c.all(s, ligands, w, &t) })
 	if err != nil {
 		return err
 	}

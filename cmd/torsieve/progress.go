@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"math"
 	"os"
 	"time"
 
@@ -75,8 +76,8 @@ func newBar(v *voice, f *os.File) *bar {
 func (b *bar) set(part float64, text string) {
 	b.voice.mu.Lock()
 	defer b.voice.mu.Unlock()
-	if part > 0.02 {
-		left := time.Duration(float64(time.Since(b.begun)) * (1 - part) / part)
+	left := time.Duration(float64(time.Since(b.begun)) * (1 - part) / math.Max(part, 1e-6))
+	if part > 0.02 && left > 10*time.Second {
 		text += fmt.Sprintf(" · about %s left", left.Round(roundTo(left)))
 	}
 	b.bar.Describe(printable(text))

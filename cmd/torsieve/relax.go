@@ -7,7 +7,6 @@ import (
 	"slices"
 	"strconv"
 
-	"torsieve/internal/atomicfile"
 	"torsieve/molecule/load"
 	"torsieve/molecule/sdf"
 	"torsieve/screen"
@@ -37,10 +36,13 @@ func (c *relaxCommand) Run(s *session) error {
 		return err
 	}
 	var t tally
-	err = atomicfile.Write(c.Out, func(w io.Writer) error {
-		err := inOrder(s, c.File, c.Input, c.Cores.jobs(), func(rec load.Record) relaxed {
+	err = s.writeDone(c.Out, &t, func(w io.Writer) error {
+		return inOrder(s, c.File, c.Input, c.Cores.jobs(), func(rec load.Record) relaxed {
 			return c.relax(s.ctx, tier, rec)
 		}, func(rec load.Record, r relaxed) error {
+			if r.differs != nil {
+				s.voice.warn("%s: record %d (%s): %v: the bonds written are those that were read", c.File, rec.Record, recordID(rec), r.differs)
+			}
 			if r.err == nil {
 				t.done++
 				return sdf.Write(w, r.out)
@@ -49,10 +51,6 @@ func (c *relaxCommand) Run(s *session) error {
 			s.voice.failed("%s", failedAt(c.File, rec, r.err).said)
 			return nil
 		})
-		if err == nil && t.done == 0 {
-			return t.status() // no empty file where nothing could be done
-		}
-		return err
 	})
 	if err != nil {
 		return err
@@ -60,9 +58,11 @@ func (c *relaxCommand) Run(s *session) error {
 	return t.status()
 }
 
+// relaxed is what became of one structure; differs says how it is no longer the
+// molecule that was read.
 type relaxed struct {
-	out sdf.Out
-	err error
+	out          sdf.Out
+	err, differs error
 }
 
 func (c *relaxCommand) relax(ctx context.Context, tier screen.Tier, rec load.Record) (r relaxed) {
@@ -85,6 +85,7 @@ func (c *relaxCommand) relax(ctx context.Context, tier screen.Tier, rec load.Rec
 		if err != nil {
 			return err
 		}
+		r.differs = screen.SameMolecule(rec.Mol, x)
 		r.out = sdf.Out{Mol: rec.Mol, X: x, Title: recordID(rec), Fields: relaxedFields(rec, tier, p.Energy)}
 		return nil
 	})

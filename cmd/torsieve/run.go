@@ -72,16 +72,7 @@ func run(ctx context.Context, args []string, stdin io.Reader, stdout, stderr io.
 	}()
 	var c commands
 	v := newVoice(stderr)
-	parser, err := kong.New(&c,
-		kong.Name("torsieve"), kong.Description(about),
-		kong.Writers(stdout, stderr), kong.Exit(func(code int) { panic(exited(code)) }),
-		kong.Vars{"max_conformers": strconv.Itoa(screen.Defaults().MaxConformers)},
-		kong.WithHyphenPrefixedParameters(true), // --charge -1
-		kong.Configuration(loadSettings), kong.ConfigureHelp(kong.HelpOptions{Compact: true, WrapUpperBound: 100}),
-	)
-	if err != nil {
-		panic(err) // the command line itself is wrong: tests meet it first
-	}
+	parser := newParser(&c, stdout, stderr)
 	kongcompletion.Register(parser)
 	chosen, err := parser.Parse(args)
 	if err != nil {
@@ -121,6 +112,17 @@ func (v *voice) end(ctx context.Context, err error) int {
 		v.complain(f.err, f.hint)
 	}
 	return f.code
+}
+
+// newParser builds the command line around c.
+func newParser(c *commands, stdout, stderr io.Writer) *kong.Kong {
+	return kong.Must(c,
+		kong.Name("torsieve"), kong.Description(about),
+		kong.Writers(stdout, stderr), kong.Exit(func(code int) { panic(exited(code)) }),
+		kong.Vars{"max_conformers": strconv.Itoa(screen.Defaults().MaxConformers)},
+		kong.WithHyphenPrefixedParameters(true), // --charge -1
+		kong.Configuration(loadSettings), kong.ConfigureHelp(kong.HelpOptions{Compact: true, WrapUpperBound: 100}),
+	)
 }
 
 // faultPlace is the function of this program that panicked, called from the

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"io"
 
+	"torsieve/internal/atomicfile"
 	"torsieve/molecule/load"
 	"torsieve/screen"
 )
@@ -62,4 +63,22 @@ func (t tally) status() error {
 		return &failure{code: exitNothing}
 	}
 	return &failure{code: exitPartly}
+}
+
+// writeDone writes a file through fill, whole or not at all. Where a signal ends
+// the work, what is done so far is written; where nothing is done, nothing.
+func (s *session) writeDone(path string, t *tally, fill func(io.Writer) error) error {
+	var stopped error
+	err := atomicfile.Write(path, func(w io.Writer) error {
+		err := fill(w)
+		switch {
+		case err != nil && s.ctx.Err() != nil && t.done > 0:
+			stopped = err
+			return nil
+		case err == nil && t.done == 0:
+			return t.status()
+		}
+		return err
+	})
+	return errors.Join(err, stopped)
 }

@@ -21,7 +21,8 @@ type watcher struct {
 // A stage is where a ligand is.
 type stage struct {
 	tier        string
-	seen, total int
+	index       int // of the tier, from 0
+	seen, total int // conformers
 }
 
 func newWatcher(v *voice, log *logger, ligands []*screen.Ligand, tiers int) *watcher {
@@ -39,8 +40,12 @@ func (w *watcher) see(e screen.Event) {
 		w.inTier[e.Ligand] = &stage{tier: tierForceField}
 		w.show(e.Ligand)
 	case screen.Entered:
-		w.share[e.Ligand] += w.perTier
-		w.inTier[e.Ligand] = &stage{tier: e.Tier, total: e.Total}
+		next := 1
+		if s := w.inTier[e.Ligand]; s != nil {
+			next = s.index + 1
+		}
+		w.share[e.Ligand] = w.perTier * float64(next)
+		w.inTier[e.Ligand] = &stage{tier: e.Tier, index: next, total: e.Total}
 		w.show(e.Ligand)
 	case screen.Computed:
 		if s := w.inTier[e.Ligand]; s != nil && s.total > 0 {

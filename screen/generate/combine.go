@@ -13,6 +13,7 @@ func (s *search) assembled(ctx context.Context) error {
 		return s.sampled(ctx)
 	}
 	leaves := s.enumerate()
+	s.result.Starts += int(s.combinations())
 	s.result.Complete = len(leaves) <= s.o.relaxations()
 	if !s.result.Complete {
 		slices.SortStableFunc(leaves, func(a, b leaf) int {
@@ -79,7 +80,6 @@ func (s *search) enumerate() []leaf {
 				continue
 			}
 			for n := range a.turns[step.turn].states {
-				s.result.Starts++
 				crowding, ok := s.fitIn(k, n, rec, x)
 				if !ok {
 					continue
@@ -122,11 +122,11 @@ func (s *search) sampled(ctx context.Context) error {
 	budget := s.o.relaxations()
 	for done := 0; done < budget; done += batch {
 		n := min(batch, budget-done)
-		grid := latin(stream(s.o.Seed, s.id, streamAngles, done), n, len(s.assembly.turns))
+		grid := latin(stream(s.o.Seed, s.id, streamGrid, done), n, len(s.assembly.turns))
 		from := len(s.pool)
 		for k := range n {
 			x := make([]float64, 3*s.m.NumAtoms())
-			rec, _, ok := s.sampler.draw(stream(s.o.Seed, s.id, streamKick, done+k), grid[k], x)
+			rec, _, ok := s.sampler.draw(stream(s.o.Seed, s.id, streamDraw, done+k), grid[k], x)
 			s.result.Starts++
 			if !ok {
 				continue

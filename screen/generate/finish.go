@@ -18,13 +18,17 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	kept := s.distinct(s.pool, nil, rough)
 	kept = s.within(kept)
 	s.result.Found = len(kept)
-	chosen := s.order(kept, s.o.Max)
+	chosen, err := s.order(ctx, kept, s.o.Max)
+	if err != nil {
+		return Result{}, err
+	}
 	if len(chosen) < len(kept) {
 		s.result.Complete = false
 	}
 	var final []entry
 	var hits []int
 	for _, c := range chosen {
+		s.kick(c.x, c.start)
 		energy, err := s.relaxed(ctx, c.x, tightly)
 		if ctx.Err() != nil {
 			return Result{}, ctx.Err()
@@ -44,12 +48,25 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	if s.o.MirrorImages {
 		list = s.bothHands(list)
 	}
-	ordered := s.order(list, s.o.Max)
+	ordered, err := s.order(ctx, list, s.o.Max)
+	if err != nil {
+		return Result{}, err
+	}
 	if len(ordered) < len(list) {
 		s.result.Complete = false
 	}
 	s.conformers(ordered)
 	return s.result, nil
+}
+
+// kick moves every atom a little, at random: a structure that came to rest on a
+// saddle point, an eclipsed methyl group say, would stay there otherwise.
+func (s *search) kick(x []float64, start int) {
+	const size = 0.06 * units.Angstrom // standard deviation of a coordinate
+	r := stream(s.o.Seed, s.id, streamKick, start)
+	for i := range x {
+		x[i] += size * r.NormFloat64()
+	}
 }
 
 // A candidate is a distinct structure and how often it was met.

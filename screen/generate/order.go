@@ -1,6 +1,7 @@
 package generate
 
 import (
+	"context"
 	"math"
 
 	"torsieve/dedupe"
@@ -9,7 +10,7 @@ import (
 
 // orderScale is the energy over which a shape's worth falls to 1/e. It is wide:
 // the force field is a poor judge of energies.
-var orderScale = 10 * units.KcalPerMol
+const orderScale = 20 * units.KcalPerMol
 
 // order picks at most limit candidates from a list that is sorted by energy, so
 // that each prefix is a good choice of its size: the lowest first, then always
@@ -19,38 +20,23 @@ var orderScale = 10 * units.KcalPerMol
 // Source: the greedy algorithm for locating facilities, within 1 - 1/e of the
 // best choice of each size: G. L. Nemhauser, L. A. Wolsey, M. L. Fisher, Math.
 // Program. 1978, 14, 265.
-func (s *search) order(list []candidate, limit int) []candidate {
-	if len(list) == 0 {
-		return nil
-	}
+func (s *search) order(ctx context.Context, list []candidate, limit int) ([]candidate, error) {
 	xs := make([][]float64, len(list))
 	worth := make([]float64, len(list))
 	for k, e := range list {
 		xs[k] = e.x
 		worth[k] = math.Exp((list[0].energy - e.energy) / orderScale)
 	}
-	c := dedupe.NewComparer(s.m, dedupe.Options{Handed: s.o.MirrorImages})
-	picks := cover(square(c.Distances(xs)), worth, min(limit, len(list)))
+	distances, err := dedupe.NewComparer(s.m, dedupe.Options{Handed: s.o.MirrorImages}).Distances(ctx, xs)
+	if err != nil || len(list) == 0 {
+		return nil, err
+	}
+	picks := cover(distances, worth, min(limit, len(list)))
 	out := make([]candidate, len(picks))
 	for n, k := range picks {
 		out[n] = list[k]
 	}
-	return out
-}
-
-// square fills the upper half of a table of distances.
-func square(lower [][]float64) [][]float64 {
-	n := len(lower)
-	full := make([][]float64, n)
-	for i := range full {
-		full[i] = make([]float64, n)
-	}
-	for i, row := range lower {
-		for j, d := range row {
-			full[i][j], full[j][i] = d, d
-		}
-	}
-	return full
+	return out, nil
 }
 
 // cover picks points, the first one first and then always the one that lowers

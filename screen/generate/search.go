@@ -2,14 +2,10 @@ package generate
 
 import (
 	"context"
-	"errors"
 	"fmt"
-	"math"
 
 	"torsieve/dedupe"
 	"torsieve/forcefield"
-	"torsieve/internal/geom"
-	"torsieve/internal/relax"
 	"torsieve/molecule"
 )
 
@@ -72,6 +68,7 @@ func (s *search) cut(ctx context.Context) error {
 	if err != nil {
 		return err
 	}
+	s.warnOfSlowRotors(turns)
 	frags, err := fragments(s.m, rotors)
 	if err != nil {
 		s.result.Warnings = append(s.result.Warnings, fmt.Sprintf("searched as a whole: %v", err))
@@ -89,6 +86,20 @@ func (s *search) cut(ctx context.Context) error {
 	s.assembly = newAssembly(s.m, s.screen, frags, turns)
 	s.sampler = newSampler(s.assembly)
 	return nil
+}
+
+// hindered is the class of bonds whose two twists are isomers that can be kept
+// apart (barriers above 20 kcal/mol).
+const hindered = "biaryl, three or four ortho"
+
+func (s *search) warnOfSlowRotors(turns []torsion) {
+	for _, t := range turns {
+		if t.class == hindered {
+			s.result.Warnings = append(s.result.Warnings, fmt.Sprintf(
+				"the bond between %s and %s hardly turns at room temperature: conformers of either twist are listed together",
+				atomLabel(s.m, t.b), atomLabel(s.m, t.c)))
+		}
+	}
 }
 
 // run makes starts and relaxes them.
@@ -121,98 +132,3 @@ func (s *search) given(ctx context.Context) error {
 	}
 	return nil
 }
-
-// loosely is how structures are relaxed before duplicates are dropped, tightly
-// how the survivors are; rms gradients in hartree/bohr.
-var (
-	softly  = relax.Settings{RMSGradient: 5e-3, MaxGradients: 40}
-	loosely = relax.Settings{RMSGradient: 4e-4, MaxGradients: 150, EnergyChange: 2e-5}
-	tightly = relax.Settings{RMSGradient: 1e-4, MaxGradients: 1500}
-)
-
-// add relaxes a start and keeps it if its stereo is still right. Only the end
-// of ctx is an error.
-func (s *search) add(ctx context.Context, x []float64, r recipe) error {
-	if trace != nil {
-		trace("start", x)
-		defer func() { trace("loose", x) }()
-	}
-	start := s.result.Starts
-	if err := s.charge(ctx, x); err != nil {
-		return err
-	}
-	energy, err := s.relaxed(ctx, x, loosely)
-	if ctx.Err() != nil {
-		return ctx.Err()
-	}
-	if err != nil {
-		s.failure = err
-		return nil
-	}
-	s.result.Relaxed++
-	s.pool = append(s.pool, entry{x: x, energy: energy, recipe: r, start: start})
-	return nil
-}
-
-// relaxed minimises x in place, with the soft core first where atoms collide.
-func (s *search) relaxed(ctx context.Context, x []float64, set relax.Settings) (float64, error) {
-	if s.collides(x) {
-		if _, err := s.soft.Minimise(ctx, x, softly); err != nil {
-			return 0, err
-		}
-	}
-	set.Numbers = s.numbers
-	res, err := s.surface.Minimise(ctx, x, set)
-	if err != nil {
-		return 0, err
-	}
-	if res.Status == relax.Exploded || math.IsNaN(res.Energy) {
-		return 0, relax.ErrExploded
-	}
-	if err := s.stereo(x); err != nil {
-		return 0, err
-	}
-	return res.Energy, nil
-}
-
-// collides says whether the force field's repulsion would be violent at x.
-func (s *search) collides(x []float64) bool {
-	n := s.m.NumAtoms()
-	for i := range n {
-		for j := range i {
-			if hard := s.screen.hard[i*n+j]; hard > 0 {
-				if d := geom.Distance(x, i, j); d*d < hard {
-					return true
-				}
-			}
-		}
-	}
-	return false
-}
-
-// stereo holds x to the stated stereo.
-func (s *search) stereo(x []float64) error {
-	if err := s.m.StereoMatches(x); err != nil {
-		return err
-	}
-	if err := s.embedder.stereo(x); err != nil {
-		return errors.New(s.embedder.explain(err))
-	}
-	return nil
-}
-
-// charge freezes the force field's charges at the first structure, relaxed
-// without them.
-func (s *search) charge(ctx context.Context, x []float64) error {
-	if s.charged {
-		return nil
-	}
-	y := append([]float64(nil), x...)
-	if _, err := s.relaxed(ctx, y, loosely); err != nil {
-		return ctx.Err()
-	}
-	s.charged = true
-	return s.surface.FreezeCharges(y)
-}
-
-var trace func(stage string, x []float64)

@@ -8,7 +8,8 @@ import (
 // Purposes of random streams: no two uses share one.
 const (
 	streamShapes = iota + 1
-	streamAngles
+	streamGrid
+	streamDraw
 	streamWhole
 	streamKick
 )

@@ -1,6 +1,9 @@
 package generate
 
-import "context"
+import (
+	"context"
+	"errors"
+)
 
 // Shares of the budget that are embedded as a whole, beside what is put
 // together from fragments: one in so many, within limits.
@@ -8,6 +11,7 @@ const (
 	wholeShare = 20
 	fewestRuns = 4
 	mostRuns   = 30
+	hopeless   = 10 // embeddings none of which relaxes to the stated stereo
 )
 
 // embedded relaxes embeddings of the whole molecule: a second opinion on what
@@ -34,9 +38,21 @@ func (s *search) embedded(ctx context.Context) error {
 		if err := s.add(ctx, x, recipe{}); err != nil {
 			return err
 		}
+		if len(s.pool) == 0 && k >= hopeless {
+			break
+		}
 	}
 	if len(s.pool) == 0 {
-		return s.failure
+		return s.giveUp()
 	}
 	return nil
+}
+
+// giveUp says why there is not a single structure.
+func (s *search) giveUp() error {
+	var e *EmbedError
+	if errors.As(s.failure, &e) {
+		return e
+	}
+	return &EmbedError{Attempts: s.result.Starts, Reason: s.failure.Error()}
 }

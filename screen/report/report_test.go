@@ -37,7 +37,7 @@ func water(t *testing.T, id string, order int) *screen.Result {
 	states := []ensemble.State{{Energy: -76, Copies: 2}, {Energy: -76 + gap, Copies: 1}}
 	r := &screen.Result{
 		Ligand: &screen.Ligand{ID: id, Stem: "stem-of-" + id, Order: order, Mol: m, SMILES: "O", Place: "w.smi:1: record 1"},
-		Status: screen.Done, Tiers: []string{"forcefield", "semiempirical", "hf"},
+		Mol:    m, Status: screen.Done, Tiers: []string{"forcefield", "semiempirical", "hf"},
 		Conformers: conformers, Kept: []int{1, 0}, Entered: []int{3, 2, 2},
 		Took: []time.Duration{time.Second, 2 * time.Second, 0}, Warnings: []string{"one, with a comma", "two"},
 	}

@@ -15,7 +15,7 @@ func EnsembleFile(l *screen.Ligand) string { return "ensembles/" + l.Stem + ".sd
 func writeEnsemble(w io.Writer, r *screen.Result) error {
 	for k, i := range r.Kept {
 		row := conformerRow(r, i, &place{rank: k, weights: &r.Ensembles[0]})
-		out := sdf.Out{Mol: r.Ligand.Mol, X: r.Conformers[i].X, Title: r.Ligand.ID}
+		out := sdf.Out{Mol: r.Mol, X: r.Conformers[i].X, Title: r.Ligand.ID}
 		for n, name := range conformerColumns {
 			if row[n] != "" {
 				out.Fields = append(out.Fields, sdf.Field{Name: name, Value: row[n]})

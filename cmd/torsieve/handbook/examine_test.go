@@ -16,7 +16,7 @@ func examine(t *testing.T, s specimen, all []fact, levels ...level) []row {
 	rows := make([]row, len(s.questions))
 	for n, q := range s.questions {
 		unknown := answer{value: none, hf: none}
-		rows[n] = row{specimen: s.name, fact: factNamed(t, all, q.fact), class: q.class, uff: unknown, field: unknown, quantum: unknown}
+		rows[n] = row{fact: factNamed(t, all, q.fact), class: q.class, uff: unknown, field: unknown, quantum: unknown}
 	}
 	for _, l := range levels {
 		sub, err := subjectAt(t.Context(), from, l, s.hydrogens(from.m.Numbers()))

@@ -2,45 +2,72 @@ package handbook
 
 import (
 	"slices"
-	"strings"
 	"testing"
 )
 
-var knownMisses = []string{}
+// What the tiers miss by more than twice their known errors: the methods' own
+// failures (TestKnownErrors and the tiers' tests show that they are), but for
+// the one that says otherwise. A row that enters or leaves these lists fails the
+// test, so that nobody overlooks it.
 
-func missesOf(rows []row) []string {
-	var found []string
-	for _, r := range rows {
-		_, g, h := r.verdicts()
-		if g == outside || g == absent {
-			found = append(found, gfn2.name+": "+r.fact.ID)
-		}
-		if h == outside {
-			found = append(found, "HF-3c: "+r.fact.ID)
-		}
-	}
-	return found
+// missedByGFN2 are facts that GFN2-xTB misses.
+var missedByGFN2 = []string{
+	// Folded hexanes are off by 0.4 to 0.5 kcal/mol, the set by 0.2 on average.
+	"hexane ggg", "hexane gxg", "hexane xgx",
+	// The search does not lead to x+g-x+.
+	"hexane minima",
+	// Lone pairs on neighbouring atoms: turns about S-S, N-N, O-N.
+	"hydrogen disulfide trans", "hydrogen disulfide cis", "hydrazine cis", "methyl nitrite", "nitrous acid",
+	// Conjugation holds too fast.
+	"phenol barrier", "aniline torsion", "bifuran syn", "bithiophene anti", "bithiophene syn", "dimethylformamide",
+	// Fluorine and ether oxygen: gauche and anti are out of balance.
+	"difluoroethane", "difluoroethane angle", "methyl ethyl ether",
+	// Rotamers of OH, and the balance of E and Z in acids and esters.
+	"ethanol", "propanol span", "glycine", "glycine minima", "formic acid", "methyl acetate",
+	// Cis amides come out too stable by 2.4 to 3.2 kcal/mol.
+	"N-methylformamide", "N-methylacetamide", "N-methylacetanilide", "alanyl xai",
+	// No minimum at phi/psi -101/11.
+	"glycyl xad",
+	// The anomeric effect comes out too large; the facts are from solution.
+	"methoxytetrahydropyran", "methoxytetrahydropyran enthalpy", "chlorotetrahydropyran", "hydroxytetrahydropyran",
+	// The axial form comes out too stable.
+	"cyclohexane-NO2", "N-methylpiperidine", "piperidine",
+}
+
+// missedByHF3c are facts that HF-3c misses at the geometries of GFN2-xTB.
+var missedByHF3c = []string{
+	// Axial groups come out too stable, by 1.3 kcal/mol on average and 3.7 at worst.
+	// Hartree-Fock with D3 in def2-SVP at the same geometries has
+	// N-methylpiperidine at 3.1 and methylcyclohexane at 1.4 kcal/mol.
+	"cyclohexane-C6H5", "cyclohexane-Br", "cyclohexane-OCH3", "cyclohexane-NH2", "cyclohexane-CN",
+	"cyclohexane-CO2H", "cyclohexane-CO2CH3", "cyclohexane-NO2", "cyclohexane-CHO", "cyclohexane-C#CH",
+	"N-methylpiperidine", "trans-1,4-dimethylcyclohexane diaxial",
+	// The anomeric effect is too large, as above.
+	"methoxytetrahydropyran", "methoxytetrahydropyran enthalpy", "chlorotetrahydropyran", "hydroxytetrahydropyran",
+	// Small molecules with strong electronic effects, at geometries of GFN2-xTB.
+	"aniline torsion", "bithiophene syn", "dimethyl disulfide cis", "butadiene", "acrolein", "methyl vinyl ether",
+	"difluoroethane", "dimethoxyethane", "methyl ethyl ether", "methyl nitrite", "formic acid", "N-methylacetamide",
+	"N-methylacetanilide",
 }
 
 // checkMisses fails where a tier misses what is not known, or no longer misses
-// what is.
+// what is. The force field's facts are tested in its own package.
 func checkMisses(t *testing.T, rows []row) {
 	t.Helper()
-	found := missesOf(rows)
-	for _, m := range found {
-		if !slices.Contains(knownMisses, m) {
-			t.Errorf("outside, and not known to be: %s", m)
-		}
-	}
-	for _, m := range knownMisses {
-		if asked(rows, m) && !slices.Contains(found, m) {
-			t.Errorf("known to be outside, but is not any more: %s", m)
-		}
+	for _, r := range rows {
+		_, g, h := r.verdicts()
+		compare(t, gfn2.name, r.fact, r.quantum.value, g, missedByGFN2)
+		compare(t, "HF-3c", r.fact, r.quantum.hf, h, missedByHF3c)
 	}
 }
 
-// asked says whether a miss is about one of the rows.
-func asked(rows []row, miss string) bool {
-	_, id, _ := strings.Cut(miss, ": ")
-	return slices.ContainsFunc(rows, func(r row) bool { return r.fact.ID == id })
+func compare(t *testing.T, tier string, f fact, value float64, v verdict, known []string) {
+	t.Helper()
+	misses := v == outside || v == absent
+	switch listed := slices.Contains(known, f.ID); {
+	case misses && !listed:
+		t.Errorf("%s: %s: %s with %.3f, not known to be", f.ID, tier, v, value)
+	case !misses && listed:
+		t.Errorf("%s: %s: no longer outside with %.3f", f.ID, tier, value)
+	}
 }

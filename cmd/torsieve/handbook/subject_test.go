@@ -98,15 +98,16 @@ func (sub *subject) relaxed(ctx context.Context, start []float64, holds []hold) 
 		shake(p.x)
 	}
 	var err error
-	p.energy, err = settle(ctx, sub.m, sub.surface, p.x, holds)
+	p.energy, err = settle(ctx, sub.m, sub.surface, p.x, holds, sub.level.rms)
 	return p, err
 }
 
-// shake moves each coordinate by up to 0.02 angstrom, always in the same way.
+// shake moves each coordinate by up to 0.1 angstrom, always in the same way: enough
+// for the slope of a methyl group to be felt.
 func shake(x []float64) {
 	random := rand.New(rand.NewPCG(1, 2))
 	for i := range x {
-		x[i] += (2*random.Float64() - 1) * 0.02 * units.Angstrom
+		x[i] += (2*random.Float64() - 1) * 0.1 * units.Angstrom
 	}
 }
 

@@ -17,20 +17,22 @@ import (
 	"torsieve/semiempirical"
 )
 
-// A level is a tier that relaxes: a name, and its surface for a molecule near x.
+// A level is a tier that relaxes: a name, the rms gradient (hartree/bohr) that it
+// is relaxed to, and its surface for a molecule near x.
 type level struct {
 	name    string
+	rms     float64
 	surface func(m *molecule.Molecule, x []float64) (screen.Sloped, error)
 }
 
 var (
-	field = level{"force field", func(m *molecule.Molecule, x []float64) (screen.Sloped, error) {
+	field = level{"force field", 2e-6, func(m *molecule.Molecule, x []float64) (screen.Sloped, error) {
 		return fieldOf(m, x, forcefield.Defaults())
 	}}
-	uff = level{"UFF as published", func(m *molecule.Molecule, x []float64) (screen.Sloped, error) {
+	uff = level{"UFF as published", 2e-6, func(m *molecule.Molecule, x []float64) (screen.Sloped, error) {
 		return fieldOf(m, x, forcefield.Reference())
 	}}
-	gfn2 = level{"GFN2-xTB", func(m *molecule.Molecule, _ []float64) (screen.Sloped, error) {
+	gfn2 = level{"GFN2-xTB", 2e-5, func(m *molecule.Molecule, _ []float64) (screen.Sloped, error) {
 		return semiempirical.New(m.Numbers(), m.Charge(), m.Multiplicity(), semiempirical.Options{Accuracy: 0.1})
 	}}
 )
@@ -90,19 +92,17 @@ func (h hold) addTo(grad, x []float64) float64 {
 	return stiffness / 2 * off * off
 }
 
-// settle relaxes x in place under the holds and returns the energy without
-// them, kcal/mol.
-func settle(ctx context.Context, m *molecule.Molecule, s screen.Sloped, x []float64, holds []hold) (float64, error) {
-	var energy float64
+// settle relaxes x in place under the holds to a given rms gradient and returns
+// the energy without them, kcal/mol.
+func settle(ctx context.Context, m *molecule.Molecule, s screen.Sloped, x []float64, holds []hold, rms float64) (float64, error) {
 	slope := relax.Func(func(ctx context.Context, grad, x []float64) (float64, error) {
 		p, err := s.Gradient(ctx, grad, x)
-		energy = p.Energy
 		for _, h := range holds {
 			p.Energy += h.addTo(grad, x)
 		}
 		return p.Energy, err
 	})
-	set := relax.Settings{RMSGradient: 5e-5, MaxGradient: 2e-4, EnergyChange: 1e-6, MaxGradients: 1000, Noise: 1e-7, Numbers: m.Numbers()}
+	set := relax.Settings{RMSGradient: rms, MaxGradient: 4 * rms, EnergyChange: 1e-6, MaxGradients: 1000, Noise: 1e-7, Numbers: m.Numbers()}
 	res, err := relax.Minimise(ctx, slope, x, set)
 	if err == nil {
 		err = res.Status.Err()
@@ -114,6 +114,5 @@ func settle(ctx context.Context, m *molecule.Molecule, s screen.Sloped, x []floa
 		return res.Energy / units.KcalPerMol, nil
 	}
 	p, err := s.Energy(ctx, x)
-	energy = p.Energy
-	return energy / units.KcalPerMol, err
+	return p.Energy / units.KcalPerMol, err
 }

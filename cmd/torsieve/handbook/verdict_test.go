@@ -53,7 +53,6 @@ func TestJudge(t *testing.T) {
 
 // A row is a fact beside what the tiers say.
 type row struct {
-	specimen             string
 	fact                 fact
 	class                class
 	uff, field, quantum  answer

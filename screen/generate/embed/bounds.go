@@ -77,28 +77,36 @@ func (c *Contradiction) Error() string {
 // Source: Crippen, Havel (1988), chapter 5; the order of the loops is
 // Floyd's, Commun. ACM 1962, 5, 345.
 func (b *Bounds) Smooth() error {
-	n := b.n
-	for k := range n {
-		for i := range n {
-			if i == k {
-				continue
-			}
-			uik, lik := b.upper[i*n+k], b.lower[i*n+k]
-			for j := i + 1; j < n; j++ {
-				if j == k {
-					continue
-				}
-				ukj, lkj := b.upper[k*n+j], b.lower[k*n+j]
-				if u := uik + ukj; u < b.upper[i*n+j] {
-					b.upper[i*n+j], b.upper[j*n+i] = u, u
-				}
-				if l := math.Max(lik-ukj, lkj-uik); l > b.lower[i*n+j] {
-					b.lower[i*n+j], b.lower[j*n+i] = l, l
+	b.triangles(func(i, j, k int) {
+		n := b.n
+		if u := b.upper[i*n+k] + b.upper[k*n+j]; u < b.upper[i*n+j] {
+			b.upper[i*n+j], b.upper[j*n+i] = u, u
+		}
+	})
+	if err := b.contradiction(); err != nil {
+		return err
+	}
+	b.triangles(func(i, j, k int) {
+		n := b.n
+		l := math.Max(b.lower[i*n+k]-b.upper[k*n+j], b.lower[k*n+j]-b.upper[i*n+k])
+		if l > b.lower[i*n+j] {
+			b.lower[i*n+j], b.lower[j*n+i] = l, l
+		}
+	})
+	return b.contradiction()
+}
+
+// triangles calls visit for all pairs i < j and third points k, k outermost.
+func (b *Bounds) triangles(visit func(i, j, k int)) {
+	for k := range b.n {
+		for i := range b.n {
+			for j := i + 1; j < b.n; j++ {
+				if i != k && j != k {
+					visit(i, j, k)
 				}
 			}
 		}
 	}
-	return b.contradiction()
 }
 
 func (b *Bounds) contradiction() error {
