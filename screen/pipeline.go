@@ -1,7 +1,6 @@
 package screen
 
 import (
-	"cmp"
 	"context"
 	"errors"
 	"fmt"
@@ -9,7 +8,6 @@ import (
 	"slices"
 
 	"torsieve/dedupe"
-	"torsieve/screen/ensemble"
 	"torsieve/screen/generate"
 )
 
@@ -170,7 +168,9 @@ func (r *ligandRun) settle(tier int, c *Conformer, o outcome) error {
 		return fmt.Errorf("conformer %d: %w", c.Number, err)
 	}
 	c.X, c.Energies[tier], c.Last = o.x, o.energy, tier
-	c.Doubts = append(c.Doubts, o.doubts...)
+	for _, doubt := range o.doubts {
+		c.Doubts = append(c.Doubts, r.tiers[tier].Name()+": "+doubt)
+	}
 	return nil
 }
 
@@ -188,48 +188,5 @@ func (r *ligandRun) dropDoubles(tier int, which []int) {
 				r.conformers[which[m]].Why = fmt.Sprintf("same shape as %d", keep.Number)
 			}
 		}
-	}
-}
-
-// weigh ranks what is left and gives every conformer its weight.
-func (r *ligandRun) weigh() {
-	kept := r.alive(len(r.tiers) - 1)
-	slices.SortStableFunc(kept, func(a, b int) int {
-		return cmp.Compare(r.conformers[a].Final(), r.conformers[b].Final())
-	})
-	shapes := make([][]float64, len(kept))
-	for k, i := range kept {
-		shapes[k] = r.conformers[i].X
-	}
-	copies, complete := ensemble.Copies(r.ligand.Mol, shapes)
-	if !complete {
-		r.warnf("the molecule has more symmetry than was searched: degeneracies count mirror images alone")
-	}
-	states := make([]ensemble.State, len(kept))
-	for k, i := range kept {
-		c := &r.conformers[i]
-		c.Rank, c.Copies, c.Why = k+1, copies[k], "kept"
-		states[k] = ensemble.State{Energy: c.Final(), Copies: float64(c.Copies)}
-	}
-	r.result.Kept = kept
-	for _, t := range r.options.Temperatures {
-		r.result.Ensembles = append(r.result.Ensembles, r.weights(states, t))
-	}
-	r.superpose(kept)
-}
-
-func (r *ligandRun) weights(states []ensemble.State, t float64) Weights {
-	w := Weights{Distribution: ensemble.Weigh(states, t)}
-	if scatter, known := r.tiers[len(r.tiers)-1].Scatter(r.ligand.Mol); known {
-		w.Bars = ensemble.Bars(states, t, scatter, [2]uint64{r.options.Seed, hash(r.ligand.SMILES)})
-	}
-	return w
-}
-
-// superpose lays every kept conformer onto the lowest one.
-func (r *ligandRun) superpose(kept []int) {
-	best := r.conformers[kept[0]].X
-	for _, i := range kept[1:] {
-		r.comparer.Superpose(best, r.conformers[i].X)
 	}
 }

@@ -1,6 +1,7 @@
 package generate
 
 import (
+	"cmp"
 	"context"
 	"math"
 	"slices"
@@ -16,16 +17,7 @@ func (s *search) assembled(ctx context.Context) error {
 	s.result.Starts += int(s.combinations())
 	s.result.Complete = len(leaves) <= s.o.relaxations()
 	if !s.result.Complete {
-		slices.SortStableFunc(leaves, func(a, b leaf) int {
-			switch {
-			case a.cost < b.cost:
-				return -1
-			case a.cost > b.cost:
-				return 1
-			}
-			return 0
-		})
-		leaves = leaves[:s.o.relaxations()]
+		leaves = s.lottery(leaves, s.o.relaxations())
 	}
 	for _, l := range leaves {
 		x := make([]float64, 3*s.m.NumAtoms())
@@ -35,6 +27,29 @@ func (s *search) assembled(ctx context.Context) error {
 		}
 	}
 	return nil
+}
+
+// lottery draws so many of the leaves, each with a chance that falls with its
+// cost, and keeps their order.
+//
+// Source: P. S. Efraimidis, P. G. Spirakis, Inf. Process. Lett. 2006, 97, 181:
+// the largest keys log(u)/w are a weighted sample without repetition.
+func (s *search) lottery(leaves []leaf, n int) []leaf {
+	r := stream(s.o.Seed, s.id, streamLottery, 0)
+	keys := make([]float64, len(leaves))
+	order := make([]int, len(leaves))
+	for k, l := range leaves {
+		order[k] = k
+		keys[k] = math.Log(-math.Log(1-r.Float64())) + l.cost
+	}
+	slices.SortStableFunc(order, func(a, b int) int { return cmp.Compare(keys[a], keys[b]) })
+	order = order[:n]
+	slices.Sort(order)
+	drawn := make([]leaf, n)
+	for k, i := range order {
+		drawn[k] = leaves[i]
+	}
+	return drawn
 }
 
 // combinations counts the recipes with every rotor in the middle of a state.

@@ -169,9 +169,7 @@ func TestMirrorImages(t *testing.T) {
 	}{
 		{"CCCC", 3}, {"CCF", 1},
 	} {
-		o := Defaults()
-		o.MirrorImages = true
-		res, err := Conformers(context.Background(), parse(t, c.smiles), "x", o)
+		res, err := Conformers(context.Background(), parse(t, c.smiles), "x", Spread())
 		if err != nil {
 			t.Fatal(err)
 		}

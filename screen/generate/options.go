@@ -18,6 +18,12 @@ type Options struct {
 	// wrong for an ensemble, where one of them stands for both; false.
 	MirrorImages bool
 
+	// EnergyScale is the energy above the lowest, in hartree, over which a
+	// shape's worth falls to 1/e when places in the list are given away; 6
+	// kcal/mol, about the error of the force field. A larger one spreads the list
+	// over more kinds of shapes.
+	EnergyScale float64
+
 	// Field is the force field that shapes are relaxed in; forcefield.Defaults.
 	Field forcefield.Options
 
@@ -30,11 +36,21 @@ type Options struct {
 	Exhaustive int
 }
 
-// Defaults returns the usual settings.
+// Defaults returns the settings for an ensemble that energies will weigh.
 func Defaults() Options {
 	return Options{
-		Max: 250, Seed: 1, Window: 25 * units.KcalPerMol, Field: forcefield.Defaults(), Exhaustive: 3000,
+		Max: 250, Seed: 1, Window: 25 * units.KcalPerMol, EnergyScale: 6 * units.KcalPerMol,
+		Field: forcefield.Defaults(), Exhaustive: 3000,
 	}
+}
+
+// Spread returns the settings for a list that is to hold a shape from elsewhere,
+// a bound ligand say: spread wide in energy, and of both hands.
+func Spread() Options {
+	o := Defaults()
+	o.EnergyScale = 20 * units.KcalPerMol
+	o.MirrorImages = true
+	return o
 }
 
 // relaxations is the budget of minimisations.

@@ -5,12 +5,7 @@ import (
 	"math"
 
 	"torsieve/dedupe"
-	"torsieve/internal/units"
 )
-
-// orderScale is the energy over which a shape's worth falls to 1/e. It is wide:
-// the force field is a poor judge of energies.
-const orderScale = 20 * units.KcalPerMol
 
 // order picks at most limit candidates from a list that is sorted by energy, so
 // that each prefix is a good choice of its size: the lowest first, then always
@@ -25,7 +20,7 @@ func (s *search) order(ctx context.Context, list []candidate, limit int) ([]cand
 	worth := make([]float64, len(list))
 	for k, e := range list {
 		xs[k] = e.x
-		worth[k] = math.Exp((list[0].energy - e.energy) / orderScale)
+		worth[k] = math.Exp((list[0].energy - e.energy) / s.o.EnergyScale)
 	}
 	distances, err := dedupe.NewComparer(s.m, dedupe.Options{Handed: s.o.MirrorImages}).Distances(ctx, xs)
 	if err != nil || len(list) == 0 {

@@ -124,10 +124,8 @@ func writeEnsemble(t *testing.T, w io.Writer, text, id string) error {
 	if err != nil {
 		return err
 	}
-	o := Defaults()
-	o.MirrorImages = true
 	begun := time.Now()
-	res, err := Conformers(context.Background(), m, id, o)
+	res, err := Conformers(context.Background(), m, id, Spread())
 	if err != nil {
 		return err
 	}

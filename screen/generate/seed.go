@@ -12,6 +12,7 @@ const (
 	streamDraw
 	streamWhole
 	streamKick
+	streamLottery
 )
 
 // stream returns the random numbers that belong to one purpose and one index

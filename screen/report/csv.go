@@ -58,6 +58,7 @@ var conformerColumns = []string{
 	"ligand", "conformer", "rank", "population", "population_p05", "population_p95", "degeneracy", "relative_kcal_mol",
 	"e_forcefield_hartree", "e_semiempirical_hartree", "e_hf_hartree", "e_final_hartree",
 	"solvation_kcal_mol", "thermal_kcal_mol", "family", "last_tier", "why", "temperature_k",
+	"doubts",
 }
 
 // conformerRows has a row for each kept conformer and temperature, by rank, and
@@ -94,7 +95,7 @@ func conformerRow(r *screen.Result, i int, p *place) []string {
 	if p != nil {
 		final, temperature = energy(c.Final()), plain(p.weights.Temperature)
 	}
-	return append(row, final, "", "", strconv.Itoa(c.Family), r.Tiers[c.Last], c.Why, temperature)
+	return append(row, final, "", "", strconv.Itoa(c.Family), r.Tiers[c.Last], c.Why, temperature, strings.Join(c.Doubts, "; "))
 }
 
 // standing is rank, population, its bar, degeneracy and relative energy.

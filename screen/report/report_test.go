@@ -31,7 +31,7 @@ func water(t *testing.T, id string, order int) *screen.Result {
 	const gap = 0.5 * units.KcalPerMol
 	conformers := []screen.Conformer{
 		{Number: 1, X: bentWater(104), Energies: []float64{0.2, -5, -76 + gap}, Last: 2, Rank: 2, Copies: 1, Why: "kept"},
-		{Number: 2, X: bentWater(106), Energies: []float64{0.1, -5.1, -76}, Last: 2, Rank: 1, Copies: 2, Why: "kept"},
+		{Number: 2, X: bentWater(106), Energies: []float64{0.1, -5.1, -76}, Last: 2, Rank: 1, Copies: 2, Why: "kept", Doubts: []string{"hf: small gap"}},
 		{Number: 3, X: bentWater(150), Energies: []float64{0.3, math.NaN(), math.NaN()}, Last: 0, Why: "beyond the cap of 2 conformers"},
 	}
 	states := []ensemble.State{{Energy: -76, Copies: 2}, {Energy: -76 + gap, Copies: 1}}
@@ -82,6 +82,9 @@ func TestTables(t *testing.T) {
 		if got := strings.Join(conformers[i+1], ","); !strings.HasPrefix(got, start) {
 			t.Errorf("row %d is %s, want %s...", i+1, got, start)
 		}
+	}
+	if got := conformers[1][18]; got != "hf: small gap" {
+		t.Errorf("doubts %q", got)
 	}
 	if got := conformers[3]; got[7] != "0.5000" || got[17] != "298.15" {
 		t.Errorf("relative energy %s at %s K", got[7], got[17])

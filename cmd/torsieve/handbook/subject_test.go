@@ -77,7 +77,7 @@ func (sub *subject) relaxAll(ctx context.Context, shapes [][]float64) error {
 	var xs [][]float64
 	var energies []float64
 	for n, start := range shapes {
-		p, err := sub.relaxed(ctx, start, nil)
+		p, err := sub.freed(ctx, start)
 		if err != nil {
 			return fmt.Errorf("%s: shape %d: %w", sub.level.name, n+1, err)
 		}
@@ -90,25 +90,36 @@ func (sub *subject) relaxAll(ctx context.Context, shapes [][]float64) error {
 	return nil
 }
 
-// relaxed settles start under holds. Without any it is first shaken, so that
-// no symmetry keeps it on a saddle.
-func (sub *subject) relaxed(ctx context.Context, start []float64, holds []hold) (*point, error) {
+// settled relaxes start under holds.
+func (sub *subject) settled(ctx context.Context, start []float64, holds []hold) (*point, error) {
 	p := &point{x: slices.Clone(start)}
-	if len(holds) == 0 {
-		shake(p.x)
-	}
 	var err error
 	p.energy, err = settle(ctx, sub.m, sub.surface, p.x, holds, sub.level.rms)
 	return p, err
 }
 
-// shake moves each coordinate by up to 0.1 angstrom, always in the same way: enough
-// for the slope of a methyl group to be felt.
-func shake(x []float64) {
-	random := rand.New(rand.NewPCG(1, 2))
-	for i := range x {
-		x[i] += (2*random.Float64() - 1) * 0.1 * units.Angstrom
+// freed relaxes start without holds, as it is and shaken, and returns the lowest
+// point: symmetry keeps methyl groups on top of their barriers where two tiers
+// disagree about the way they point, and that may cost 1 kcal/mol.
+func (sub *subject) freed(ctx context.Context, start []float64) (*point, error) {
+	lowest, err := sub.settled(ctx, start, nil)
+	for seed := uint64(1); seed <= 2 && err == nil; seed++ {
+		var p *point
+		if p, err = sub.settled(ctx, shaken(start, seed), nil); err == nil && p.energy < lowest.energy {
+			lowest = p
+		}
 	}
+	return lowest, err
+}
+
+// shaken moves each coordinate by up to 0.1 angstrom.
+func shaken(x []float64, seed uint64) []float64 {
+	random := rand.New(rand.NewPCG(seed, 2))
+	y := slices.Clone(x)
+	for i := range y {
+		y[i] += (2*random.Float64() - 1) * 0.1 * units.Angstrom
+	}
+	return y
 }
 
 // errNoMinimum: the level has no minimum of the shape asked for.
@@ -128,7 +139,7 @@ func (sub *subject) minimaOf(ctx context.Context, s shape) ([]*point, error) {
 	}
 	p, err := sub.held(ctx, s, keep(s))
 	if err == nil {
-		p, err = sub.relaxed(ctx, p.x, nil)
+		p, err = sub.freed(ctx, p.x)
 	}
 	if err != nil {
 		return nil, err
@@ -145,11 +156,11 @@ func (sub *subject) minimaOf(ctx context.Context, s shape) ([]*point, error) {
 func (sub *subject) held(ctx context.Context, s shape, holds []hold) (*point, error) {
 	x := slices.Clone(sub.minima[0].x)
 	bring(sub.m, x, s)
-	p, err := sub.relaxed(ctx, x, keep(s))
+	p, err := sub.settled(ctx, x, keep(s))
 	if err != nil {
 		return nil, err
 	}
-	return sub.relaxed(ctx, p.x, holds)
+	return sub.settled(ctx, p.x, holds)
 }
 
 // hfEnergy is the HF-3c energy at p, kcal/mol.
