@@ -9,10 +9,18 @@ import (
 
 // Shapes is the generator's answer for a ligand: distinct shapes, relaxed in the
 // force field, the shapes that the input gave among the starts. Random choices
-// depend on o.Seed and the structure, not on the ligand's id.
+// depend on o.Seed and the structure, not on the ligand's id; two enantiomers get
+// mirror images of each other.
 func Shapes(ctx context.Context, l *Ligand, o generate.Options) (generate.Result, error) {
-	o.Start = l.Starts
-	return generate.Conformers(ctx, l.Mol, l.SMILES, o)
+	m, mirrored := searched(l.Mol)
+	if !mirrored {
+		o.Start = l.Starts
+		return generate.Conformers(ctx, m, m.SMILES(), o)
+	}
+	o.Start = mirrorShapes(l.Starts)
+	found, err := generate.Conformers(ctx, m, m.SMILES(), o)
+	mirrorConformers(found.Conformers)
+	return found, err
 }
 
 // RelaxDefaults says when a geometry of a quantum tier is done: its energy is
