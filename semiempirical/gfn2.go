@@ -1,16 +1,22 @@
-// Package semiempirical is the second tier: GFN2-xTB in the gas phase, with
-// self-consistent D4 dispersion, for any charge and multiplicity and the
-// elements up to radon; energies, analytic gradients, charges and dipoles.
+// Package semiempirical is the second tier: GFN2-xTB in the gas phase or with
+// ALPB in a solvent, with self-consistent D4 dispersion, for any charge and
+// multiplicity and the elements up to radon; energies, analytic gradients,
+// charges and dipoles.
 //
 // Source: C. Bannwarth, S. Ehlert, S. Grimme, J. Chem. Theory Comput. 2019, 15,
-// 1652, doi:10.1021/acs.jctc.8b01176. Both spins share their orbitals; the
-// energy is a free energy at the electronic temperature.
+// 1652, doi:10.1021/acs.jctc.8b01176; solvents: package solvent. Both spins share
+// their orbitals; the energy is a free energy at the electronic temperature.
 //
 // A Surface is built from atomic numbers and a charge; it knows no bonds. Units
 // are bohr, hartree and the elementary charge.
 package semiempirical
 
-import "torsieve/internal/dispersion"
+import (
+	"fmt"
+
+	"torsieve/internal/dispersion"
+	"torsieve/semiempirical/solvent"
+)
 
 // A model is the method as a list of contributions for one molecule: what
 // depends on the geometry alone, the core Hamiltonian, and what depends on the
@@ -26,10 +32,15 @@ type model struct {
 	thirdOrder  thirdOrder
 	anisotropic *anisotropic
 	onsite      onsite
+	solvent     *solvent.Model // nil in the gas phase
 }
 
-func newModel(numbers []int) (*model, error) {
+func newModel(numbers []int, solventName string) (*model, error) {
 	b, err := newBasis(numbers)
+	if err != nil {
+		return nil, err
+	}
+	around, err := newSolvent(numbers, solventName)
 	if err != nil {
 		return nil, err
 	}
@@ -45,18 +56,28 @@ func newModel(numbers []int) (*model, error) {
 		thirdOrder:  newThirdOrder(b),
 		anisotropic: newAnisotropic(b, cn),
 		onsite:      onsite{b.elements},
+		solvent:     around,
 	}, nil
 }
 
 // contributions are the parts that depend on the moments.
 func (m *model) contributions() []contribution {
-	return []contribution{m.coulomb, m.thirdOrder, m.anisotropic, m.onsite, d4{m.dispersion}}
+	parts := []contribution{m.coulomb, m.thirdOrder, m.anisotropic, m.onsite, d4{m.dispersion}}
+	if m.solvent != nil {
+		parts = append(parts, reactionField{m.solvent}, hydrogenBonds{m.solvent})
+	}
+	return parts
 }
 
 // update takes in a new geometry; slopes says whether a gradient will be wanted.
 func (m *model) update(x []float64, contributions []contribution, slopes bool) error {
 	if err := m.geometry.set(x); err != nil {
 		return err
+	}
+	if m.solvent != nil {
+		if err := m.solvent.Update(x); err != nil {
+			return fmt.Errorf("semiempirical: %w", err)
+		}
 	}
 	m.cn.update(m.geometry)
 	m.hamiltonian.update(m.geometry, slopes)

@@ -16,6 +16,10 @@ type Options struct {
 
 	Temperature float64 // of the electrons, kelvin; 300
 	MaxCycles   int     // 250, and as many again with cautious mixing
+
+	// Solvent is what surrounds the molecule, by any name that solvent.Find
+	// knows; empty or "none" is the gas phase.
+	Solvent string
 }
 
 func (o Options) withDefaults() Options {

@@ -31,15 +31,16 @@ type Surface struct {
 // New prepares for a molecule with atomic numbers 1 to MaxZ and its total
 // charge and multiplicity (2S+1).
 //
-// Errors: *Unsupported for an element without parameters, *ElectronsError
-// where charge and multiplicity do not go with the atoms, and what is wrong
-// with the options.
+// Errors: *Unsupported and *solvent.Unsupported for an element without
+// parameters, *solvent.UnknownError for a solvent that there is not,
+// *ElectronsError where charge and multiplicity do not go with the atoms, and
+// what else is wrong with the options.
 func New(numbers []int, charge, multiplicity int, o Options) (*Surface, error) {
 	o = o.withDefaults()
 	if err := o.check(); err != nil {
 		return nil, err
 	}
-	m, err := newModel(numbers)
+	m, err := newModel(numbers, o.Solvent)
 	if err != nil {
 		return nil, err
 	}
@@ -62,8 +63,8 @@ func (s *Surface) Reset() { s.warm = false }
 
 // Energy returns the energy at x (3N, bohr) with its parts, the charges and
 // the dipole (of an ion: about the origin). Errors: *CloseAtomsError,
-// ErrSingular, ErrNotConverged, an error for coordinates that are not finite,
-// and ctx's.
+// *solvent.GeometryError, ErrSingular, ErrNotConverged, an error for coordinates
+// that are not finite, and ctx's.
 func (s *Surface) Energy(ctx context.Context, x []float64) (molecule.Point, error) {
 	return s.point(ctx, nil, x)
 }
@@ -107,6 +108,9 @@ func (s *Surface) gradient(grad []float64) {
 	m.coulomb.addGradient(m.geometry, c.out, grad)
 	m.anisotropic.addGradient(c.out, grad, s.dEdCN)
 	m.dispersion.AddGradient(c.out.atom, grad)
+	if m.solvent != nil {
+		m.solvent.AddGradient(c.out.atom, grad)
+	}
 	c.orbitals.energyDensity(s.energyRho, c.fock)
 	m.hamiltonian.addElectronic(grad, s.dEdCN, c.density, s.energyRho, c.atoms, m.geometry)
 	m.cn.addGradient(m.geometry, grad, s.dEdCN)
@@ -125,6 +129,7 @@ func (s *Surface) collect() molecule.Point {
 	p.Parts = append(p.Parts,
 		molecule.Part{Name: "three-body dispersion", Energy: m.dispersion.ThreeBody()},
 		molecule.Part{Name: "electronic entropy", Energy: c.orbitals.entropy})
+	p.Parts = append(p.Parts, m.solventConstants()...)
 	for _, part := range p.Parts {
 		p.Energy += part.Energy
 	}

@@ -11,6 +11,7 @@ import (
 // ownValues are what UFF itself says about facts of the handbook, from an
 // independent program: the entry of testdata/reference/uff/conformers.json, its
 // place there where the value is a list, and the sign of the question here.
+// Acetic acid is left out: the value there has a methyl group on its barrier.
 var ownValues = []struct {
 	fact, entry, field string
 	place              int
@@ -26,7 +27,6 @@ var ownValues = []struct {
 	{"cyclohexane angle", "cyclohexane chair C-C, C-C-C, C-C-C-C", "uff", 2, 1},
 	{"cyclohexane-CH3", "methylcyclohexane axial - equatorial", "uff", 0, 1},
 	{"methyl vinyl ether", "methyl vinyl ether s-trans - s-cis (COCC 180 minus 0)", "uff", 0, 1},
-	{"acetic acid", "acetic acid E - Z", "uff", 0, 1},
 	{"methyl formate", "methyl formate E - Z", "uff", 0, 1},
 	{"N-methylformamide", "N-methylformamide E - Z (Z: O=C-N-CH3 = 0)", "uff", 0, 1},
 	{"N-methylacetamide", "N-methylacetamide E - Z", "uff", 0, 1},
