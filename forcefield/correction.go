@@ -91,7 +91,7 @@ func (t *typing) correctionOf(i, j, k, l, bond int) string {
 	if t.m.Atom(j).Number != 6 || t.m.Atom(j).Aromatic {
 		return ""
 	}
-	carbonyl := t.terminal(i, 8) && t.doubleBond(i, j) && t.names[i] == "O_2"
+	carbonyl := t.terminalOxygen(i) && t.doubleBond(i, j) && t.names[i] == "O_2"
 	alkene := t.m.Atom(i).Number == 6 && t.doubleBond(i, j)
 	end := t.m.Atom(l).Number
 	switch {
@@ -177,7 +177,7 @@ func (t *typing) length(k int) float64 {
 
 // lengthName names the entry for a bond from centre to other.
 func (t *typing) lengthName(centre, other int) string {
-	z, oxide := t.m.Atom(other).Number, t.terminal(other, 8)
+	z, oxide := t.m.Atom(other).Number, t.terminalOxygen(other)
 	switch t.names[centre] {
 	case "S_3+6":
 		switch {

@@ -79,10 +79,9 @@ func axial(sub int, ring ...int) func(*lab) float64 {
 	}
 }
 
-func anti(i, j, k, l int) hold  { return hold{i, j, k, l, 180} }
-func syn(i, j, k, l int) hold   { return hold{i, j, k, l, 0} }
-func plus(i, j, k, l int) hold  { return hold{i, j, k, l, 65} }
-func minus(i, j, k, l int) hold { return hold{i, j, k, l, -65} }
+func anti(i, j, k, l int) hold { return hold{i, j, k, l, 180} }
+func syn(i, j, k, l int) hold  { return hold{i, j, k, l, 0} }
+func plus(i, j, k, l int) hold { return hold{i, j, k, l, 65} }
 
 func holds(h ...hold) []hold { return h }
 

@@ -51,9 +51,10 @@ func (vs inversions) addTo(grad, x []float64) float64 {
 // planarInversion keeps a centre flat: 1 - cos w, shared by three terms.
 func planarInversion(k float64) inversion { return inversion{k: k / 3, c0: 1, c1: -1} }
 
-// pyramidInversion has its minimum at w0 and the given energy at the plane,
-// shared by three terms.
-func pyramidInversion(barrier, w0 float64) inversion {
+// pyramidInversion has its minimum at w0 and 22 kcal/mol at the plane, shared
+// by three terms.
+func pyramidInversion(w0 float64) inversion {
+	const barrier = 22 * units.KcalPerMol
 	c := math.Cos(w0)
 	k := barrier / (2 * (1 - c) * (1 - c))
 	return inversion{k: k / 3, c0: 2*c*c + 1, c1: -4 * c, c2: 1}
@@ -92,13 +93,13 @@ func (s *skeleton) inversionRule(c int, nitrogen float64) (inversion, bool) {
 	case "N_2", "N_R":
 		return planarInversion(nitrogen), nitrogen != 0
 	case "P_3+3":
-		return pyramidInversion(22*units.KcalPerMol, 84.4339*degree), true
+		return pyramidInversion(84.4339 * degree), true
 	case "As3+3":
-		return pyramidInversion(22*units.KcalPerMol, 86.9735*degree), true
+		return pyramidInversion(86.9735 * degree), true
 	case "Sb3+3":
-		return pyramidInversion(22*units.KcalPerMol, 87.7047*degree), true
+		return pyramidInversion(87.7047 * degree), true
 	case "Bi3+3":
-		return pyramidInversion(22*units.KcalPerMol, 90*degree), true
+		return pyramidInversion(90 * degree), true
 	}
 	return inversion{}, false
 }

@@ -21,7 +21,7 @@ func (t *typing) order(b molecule.Bond) float64 {
 	}
 	for _, ends := range [2][2]int{{b.A, b.B}, {b.B, b.A}} {
 		o, centre := ends[0], ends[1]
-		if !t.terminal(o, 8) {
+		if !t.terminalOxygen(o) {
 			continue
 		}
 		switch {
@@ -44,7 +44,7 @@ func (t *typing) carboxylate(c int) bool {
 		return false
 	}
 	for _, j := range t.m.Neighbours(c) {
-		if t.terminal(j, 8) && t.m.Atom(j).Charge < 0 {
+		if t.terminalOxygen(j) && t.m.Atom(j).Charge < 0 {
 			return true
 		}
 	}

@@ -173,7 +173,7 @@ func TestSingleInversions(t *testing.T) {
 	terms := map[string]inversion{
 		"C_2/C_R, no O_2":       planarInversion(6 * kcal),
 		"C_2/C_R bonded to O_2": planarInversion(50 * kcal),
-		"P_3+3":                 pyramidInversion(22*kcal, 84.4339*degree),
+		"P_3+3":                 pyramidInversion(84.4339 * degree),
 	}
 	if len(list) != len(terms) {
 		t.Fatalf("%d inversions, want %d", len(list), len(terms))

@@ -143,8 +143,7 @@ func (t *typing) phosphorus(i int) string {
 	if n > 4 {
 		t.warn(i, fmt.Sprintf("%d neighbours: the force field has no form of its own for them, angles there are rough", n))
 	}
-	switch {
-	case n > 3 || n == 3 && doubles+triples > 0:
+	if n > 3 || n == 3 && doubles+triples > 0 {
 		return "P_3+5"
 	}
 	return "P_3+3"
@@ -184,9 +183,9 @@ func (t *typing) multiples(i int) (doubles, triples int) {
 	return doubles, triples
 }
 
-// terminal reports an atom of the given element with one neighbour only.
-func (t *typing) terminal(i, number int) bool {
-	return t.m.Atom(i).Number == number && len(t.m.Neighbours(i)) == 1
+// terminalOxygen reports an oxygen with one neighbour only.
+func (t *typing) terminalOxygen(i int) bool {
+	return t.m.Atom(i).Number == 8 && len(t.m.Neighbours(i)) == 1
 }
 
 // doubleTo returns the atom of one of the given elements that i has a double

@@ -25,7 +25,7 @@ func (t *typing) nitro(i int) bool {
 	}
 	oxygens := 0
 	for _, j := range t.m.Neighbours(i) {
-		if t.terminal(j, 8) {
+		if t.terminalOxygen(j) {
 			oxygens++
 		}
 	}
@@ -75,7 +75,7 @@ func (t *typing) sulfonyl(i int) bool {
 	}
 	oxygens := 0
 	for _, j := range t.m.Neighbours(i) {
-		if t.terminal(j, 8) {
+		if t.terminalOxygen(j) {
 			oxygens++
 		}
 	}

@@ -210,7 +210,7 @@ func TestNoAllocationPerStep(t *testing.T) {
 
 func TestStatusErr(t *testing.T) {
 	for s, want := range map[Status]error{Converged: nil, Flat: nil, GradientLimit: ErrGradientLimit, Exploded: ErrExploded} {
-		if s.Err() != want {
+		if !errors.Is(s.Err(), want) {
 			t.Errorf("%v: error %v, want %v", s, s.Err(), want)
 		}
 	}

@@ -8,6 +8,7 @@ import (
 // Status says why a minimisation ended. Most ends are answers, not errors.
 type Status int
 
+// The ends of a minimisation.
 const (
 	Converged     Status = iota // all criteria are met
 	Flat                        // no lower energy to be found: numerical noise
@@ -15,6 +16,7 @@ const (
 	Exploded                    // an energy or a gradient was not finite
 )
 
+// What Err returns for the ends that are errors.
 var (
 	ErrGradientLimit = errors.New("relax: gradient limit reached before convergence")
 	ErrExploded      = errors.New("relax: energy or gradient not finite")

@@ -74,7 +74,7 @@ func (r *Reader) Err() error {
 // skipMark passes over a UTF-8 byte-order mark.
 func (r *Reader) skipMark() {
 	if head, _ := r.in.Peek(3); string(head) == "\xef\xbb\xbf" {
-		r.in.Discard(3) // cannot fail: the three bytes are in the buffer
+		_, _ = r.in.Discard(3) // cannot fail: the three bytes are in the buffer
 		r.bytes += 3
 	}
 }
@@ -96,7 +96,7 @@ func (r *Reader) scan() bool {
 			return true
 		case c == '\r':
 			if next, err := r.in.Peek(1); err == nil && next[0] == '\n' {
-				r.in.Discard(1) // in the buffer as well
+				_, _ = r.in.Discard(1) // in the buffer as well
 			}
 			return true
 		case len(r.buf) < MaxLength:

@@ -1,6 +1,7 @@
 package load_test
 
 import (
+	"errors"
 	"fmt"
 	"io"
 	"strings"
@@ -18,7 +19,7 @@ func ExampleOpen() {
 	defer r.Close()
 	for {
 		rec, err := r.Next()
-		if err == io.EOF {
+		if errors.Is(err, io.EOF) {
 			break
 		}
 		if rec.Err != nil {

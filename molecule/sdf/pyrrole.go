@@ -32,7 +32,8 @@ func (t *table) buildWithPyrroles(form shape, first error) (*molecule.Molecule, 
 				continue
 			}
 			found = append(found, m)
-			warnings = append(w, fmt.Sprintf("aromatic nitrogen without a drawn hydrogen: one is added at atom %s", numbers(chosen(places, set))))
+			w = append(w, fmt.Sprintf("aromatic nitrogen without a drawn hydrogen: one is added at atom %s", numbers(chosen(places, set))))
+			warnings = w
 		}
 	}
 	switch len(found) {
