@@ -17,6 +17,30 @@ func searched(m *molecule.Molecule) (of *molecule.Molecule, mirrored bool) {
 	if !m.Chiral() {
 		return m, false
 	}
+	if other := enantiomer(m); other.SMILES() < m.SMILES() {
+		return other, true
+	}
+	return m, false
+}
+
+// searchedOf names the random numbers of a molecule: its canonical SMILES or its
+// enantiomer's.
+func searchedOf(m *molecule.Molecule) string {
+	of, _ := searched(m)
+	return of.SMILES()
+}
+
+// mirrorImage is the canonical SMILES of the enantiomer, "" for a molecule that
+// is its own.
+func mirrorImage(m *molecule.Molecule) string {
+	if !m.Chiral() {
+		return ""
+	}
+	return enantiomer(m).SMILES()
+}
+
+// enantiomer returns m with every centre turned over, atoms in the same order.
+func enantiomer(m *molecule.Molecule) *molecule.Molecule {
 	var parities []molecule.Parity
 	for _, c := range m.Centres() {
 		parities = append(parities, -c.Parity)
@@ -25,10 +49,7 @@ func searched(m *molecule.Molecule) (of *molecule.Molecule, mirrored bool) {
 	for _, b := range m.StereoBonds() {
 		cis = append(cis, b.Cis)
 	}
-	if other := m.WithStereo(parities, cis); other.SMILES() < m.SMILES() {
-		return other, true
-	}
-	return m, false
+	return m.WithStereo(parities, cis)
 }
 
 // mirrorShape returns x seen in a mirror.

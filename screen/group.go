@@ -60,41 +60,10 @@ func (g *group) join(l *Ligand, mirrored bool) {
 	}
 	for _, x := range l.Starts {
 		if mirrored {
-			x = mirror(x)
+			x = mirrorShape(x)
 		}
 		g.first.Starts = append(g.first.Starts, x)
 	}
-}
-
-// mirrorImage is the canonical SMILES of the enantiomer, "" for a molecule that
-// is its own.
-func mirrorImage(m *molecule.Molecule) string {
-	if !m.Chiral() {
-		return ""
-	}
-	return enantiomer(m).SMILES()
-}
-
-// enantiomer returns m with every centre turned over, atoms in the same order.
-func enantiomer(m *molecule.Molecule) *molecule.Molecule {
-	var parities []molecule.Parity
-	for _, c := range m.Centres() {
-		parities = append(parities, -c.Parity)
-	}
-	var cis []bool
-	for _, b := range m.StereoBonds() {
-		cis = append(cis, b.Cis)
-	}
-	return m.WithStereo(parities, cis)
-}
-
-// mirror returns the mirror image of a shape.
-func mirror(x []float64) []float64 {
-	y := slices.Clone(x)
-	for i := 2; i < len(y); i += 3 {
-		y[i] = -y[i]
-	}
-	return y
 }
 
 // sameOrder says whether two drawings of one constitution number its atoms alike.

@@ -71,7 +71,7 @@ func (r *Result) sharedWith(l sharer) *Result {
 		same.Mol = enantiomer(r.Mol)
 		same.Conformers = slices.Clone(r.Conformers)
 		for i := range same.Conformers {
-			same.Conformers[i].X = mirror(r.Conformers[i].X)
+			same.Conformers[i].X = mirrorShape(r.Conformers[i].X)
 		}
 	}
 	same.Warnings = append(slices.Clone(l.Warnings), r.Warnings[len(r.Ligand.Warnings):]...)

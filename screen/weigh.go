@@ -56,7 +56,7 @@ func (r *ligandRun) tellDoubts() {
 func (r *ligandRun) weights(states []ensemble.State, t float64) Weights {
 	w := Weights{Distribution: ensemble.Weigh(states, t)}
 	if scatter, known := r.tiers[len(r.tiers)-1].Scatter(r.ligand.Mol); known {
-		w.Bars = ensemble.Bars(states, t, scatter, [2]uint64{r.options.Seed, hash(r.ligand.SMILES)})
+		w.Bars = ensemble.Bars(states, t, scatter, [2]uint64{r.options.Seed, hash(searchedOf(r.ligand.Mol))})
 	}
 	return w
 }
