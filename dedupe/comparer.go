@@ -17,13 +17,12 @@ type Options struct {
 	PolarHydrogens bool // hydrogens on N, O and S too: their places make different minima
 	AllHydrogens   bool
 	Handed         bool // mirror images differ, even of a molecule that is its own mirror image
+	Limit          int  // renumberings tried at most; beyond it an RMSD is an upper bound; 0: 10,000
 }
 
-// Limits of the renumberings that are tried one by one.
-const (
-	exactLimit  = 120   // beyond it equivalent end atoms are assigned apart
-	searchLimit = 10000 // beyond it a comparison is an upper bound
-)
+// exactLimit is the number of renumberings beyond which equivalent end atoms are
+// assigned apart.
+const exactLimit = 120
 
 // A Comparer compares shapes of one molecule. It does not change and may be
 // shared between goroutines.
@@ -52,12 +51,15 @@ func NewComparer(m *molecule.Molecule, o Options) *Comparer {
 		}
 	}
 	s := newSymmetry(m, c.atoms)
-	maps, all := s.renumberings(nil, exactLimit)
+	if o.Limit == 0 {
+		o.Limit = 10000
+	}
+	maps, all := s.renumberings(nil, min(exactLimit, o.Limit))
 	if !all {
 		if leaves := s.leaves(); len(s.core(leaves)) >= 3 {
 			c.leaves, c.core = leaves, s.core(leaves)
 		}
-		maps, all = s.renumberings(c.leaves, searchLimit)
+		maps, all = s.renumberings(c.leaves, o.Limit)
 	}
 	c.complete = all
 	c.same, c.inverse = s.byStereo(maps)

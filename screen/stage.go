@@ -4,7 +4,6 @@ import (
 	"context"
 	"errors"
 	"fmt"
-	"slices"
 	"sync/atomic"
 	"time"
 
@@ -101,7 +100,7 @@ func (r *ligandRun) one(ctx context.Context, surface Surface, c *Conformer) outc
 }
 
 func (r *ligandRun) relaxed(ctx context.Context, surface Sloped, from []float64) outcome {
-	x := slices.Clone(from)
+	x := offSaddle(r.ligand.Mol, from)
 	set := r.options.Relax
 	set.Numbers = r.ligand.Mol.Numbers()
 	p, res, err := Relax(ctx, surface, x, set)

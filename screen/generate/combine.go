@@ -141,7 +141,7 @@ func (s *search) sampled(ctx context.Context) error {
 		from := len(s.pool)
 		for k := range n {
 			x := make([]float64, 3*s.m.NumAtoms())
-			rec, _, ok := s.sampler.draw(stream(s.o.Seed, s.id, streamDraw, done+k), grid[k], x)
+			rec, ok := s.sampler.draw(stream(s.o.Seed, s.id, streamDraw, done+k), grid[k], x)
 			s.result.Starts++
 			if !ok {
 				continue

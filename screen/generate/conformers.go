@@ -37,6 +37,9 @@ type Result struct {
 // only seeds the random numbers. The error is an *EmbedError, an error of the
 // force field about an atom that it does not know, or ctx.Err().
 func Conformers(ctx context.Context, m *molecule.Molecule, id string, o Options) (Result, error) {
+	if err := o.Check(); err != nil {
+		return Result{}, err
+	}
 	if err := check(m); err != nil {
 		return Result{}, err
 	}

@@ -194,6 +194,29 @@ func TestRefusals(t *testing.T) {
 	}
 }
 
+func TestOptionsCheck(t *testing.T) {
+	for _, c := range []struct {
+		change func(*Options)
+		wanted string
+	}{
+		{func(*Options) {}, ""},
+		{func(o *Options) { o.Max = 0 }, "Max 0"},
+		{func(o *Options) { o.Window = math.NaN() }, "window"},
+		{func(o *Options) { o.EnergyScale = 0 }, "energy scale"},
+		{func(o *Options) { o.Relaxations = -1 }, "-1 relaxations"},
+	} {
+		o := Defaults()
+		c.change(&o)
+		err := o.Check()
+		if c.wanted == "" && err == nil {
+			continue
+		}
+		if err == nil || c.wanted == "" || !strings.Contains(err.Error(), c.wanted) {
+			t.Errorf("%v, want an error with %q", err, c.wanted)
+		}
+	}
+}
+
 func TestStopsWithContext(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
 	cancel()

@@ -32,7 +32,7 @@ func (f *fragment) makeModel(m *molecule.Molecule, held []handedness, bonds map[
 	if f.model, _, err = b.Build(); err != nil {
 		return fmt.Errorf("fragment of atoms %v: %w", f.core, err)
 	}
-	f.takeStereo(m, held, bonds)
+	f.takeStereo(held, bonds)
 	return nil
 }
 
@@ -70,7 +70,7 @@ func (f *fragment) missing(m *molecule.Molecule, i int) int {
 }
 
 // takeStereo translates the stereo elements that lie in the fragment.
-func (f *fragment) takeStereo(m *molecule.Molecule, held []handedness, bonds map[int]doubleBond) {
+func (f *fragment) takeStereo(held []handedness, bonds map[int]doubleBond) {
 	for _, h := range held {
 		if !slices.Contains(f.core, h.centre) {
 			continue

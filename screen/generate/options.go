@@ -1,6 +1,8 @@
 package generate
 
 import (
+	"fmt"
+
 	"torsieve/forcefield"
 	"torsieve/internal/units"
 )
@@ -51,6 +53,21 @@ func Spread() Options {
 	o.EnergyScale = 20 * units.KcalPerMol
 	o.MirrorImages = true
 	return o
+}
+
+// Check says which setting makes no sense, if one does.
+func (o Options) Check() error {
+	switch {
+	case o.Max < 1:
+		return fmt.Errorf("generate: want at least 1 conformer, have Max %d", o.Max)
+	case !(o.Window > 0):
+		return fmt.Errorf("generate: want a window above 0 hartree, have %g", o.Window)
+	case !(o.EnergyScale > 0):
+		return fmt.Errorf("generate: want an energy scale above 0 hartree, have %g", o.EnergyScale)
+	case o.Relaxations < 0 || o.Exhaustive < 0:
+		return fmt.Errorf("generate: want budgets of 0 or more, have %d relaxations and %d combinations", o.Relaxations, o.Exhaustive)
+	}
+	return nil
 }
 
 // relaxations is the budget of minimisations.

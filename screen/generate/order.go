@@ -7,6 +7,10 @@ import (
 	"torsieve/dedupe"
 )
 
+// orderLimit is the number of renumberings that are tried for each of the many
+// distances that order needs: an upper bound does where there are more.
+const orderLimit = 64
+
 // order picks at most limit candidates from a list that is sorted by energy, so
 // that each prefix is a good choice of its size: the lowest first, then always
 // the one that brings all shapes of the list, each by its worth, closest to the
@@ -22,7 +26,8 @@ func (s *search) order(ctx context.Context, list []candidate, limit int) ([]cand
 		xs[k] = e.x
 		worth[k] = math.Exp((list[0].energy - e.energy) / s.o.EnergyScale)
 	}
-	distances, err := dedupe.NewComparer(s.m, dedupe.Options{Handed: s.o.MirrorImages}).Distances(ctx, xs)
+	comparer := dedupe.NewComparer(s.m, dedupe.Options{Handed: s.o.MirrorImages, Limit: orderLimit})
+	distances, err := comparer.Distances(ctx, xs)
 	if err != nil || len(list) == 0 {
 		return nil, err
 	}

@@ -92,15 +92,17 @@ func (r ringTemplate) check(cp map[string][]float64) error {
 // coordinates builds the ring with bonds of mean length b.
 func (r ringTemplate) coordinates(b float64) []float64 {
 	n := len(r.z)
-	// With all atoms on a circle of radius R the bonds have lengths
-	// sqrt(c R^2 + dz^2); R makes their mean square b^2.
+	// With all atoms on a circle of radius R a bond is sqrt(c R^2 + dz^2) long;
+	// R is adjusted until the mean is b.
 	c := 2 - 2*math.Cos(2*math.Pi/float64(n))
-	var dz2 float64
-	for j := range n {
-		d := r.z[(j+1)%n] - r.z[j]
-		dz2 += d * d / float64(n)
+	radius := b / math.Sqrt(c)
+	for range 50 {
+		var mean float64
+		for j := range n {
+			mean += math.Hypot(math.Sqrt(c)*radius, r.z[(j+1)%n]-r.z[j]) / float64(n)
+		}
+		radius *= b / mean
 	}
-	radius := math.Sqrt(math.Max(0.5*b*b, b*b-dz2) / c)
 	x := make([]float64, 0, 3*n)
 	for j := range n {
 		sin, cos := math.Sincos(2 * math.Pi * float64(j) / float64(n))

@@ -37,20 +37,20 @@ const (
 // draw grows a structure into x fragment by fragment; where one clashes it
 // draws that one again. first chooses the states of the first round, rotor by
 // rotor, in 0..1; nil leaves them to r. It reports whether it succeeded.
-func (s *sampler) draw(r *rand.Rand, first []float64, x []float64) (recipe, float64, bool) {
+func (s *sampler) draw(r *rand.Rand, first []float64, x []float64) (recipe, bool) {
 	rec := recipe{make([]int, len(s.a.frags)), make([]float64, len(s.a.turns))}
 	for try := range restarts {
 		if try > 0 {
 			first = nil
 		}
-		if crowding, ok := s.grow(r, first, rec, x); ok {
-			return rec, crowding, true
+		if s.grow(r, first, rec, x) {
+			return rec, true
 		}
 	}
-	return rec, 0, false
+	return rec, false
 }
 
-func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) (float64, bool) {
+func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) bool {
 	var crowding float64
 	for k, step := range s.a.steps {
 		added, ok := 0.0, false
@@ -69,12 +69,12 @@ func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) (
 			}
 		}
 		if !ok {
-			return 0, false
+			return false
 		}
 		crowding += added
 		s.a.settle(k)
 	}
-	return crowding, true
+	return true
 }
 
 // angle draws from a state, at most two standard deviations away.

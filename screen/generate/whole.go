@@ -19,7 +19,7 @@ const (
 func (s *search) embedded(ctx context.Context) error {
 	runs := min(mostRuns, max(fewestRuns, s.o.relaxations()/wholeShare))
 	if len(s.pool) == 0 {
-		runs = s.o.relaxations() / 2
+		runs = max(fewestRuns, s.o.relaxations()/2)
 	}
 	for k := range runs {
 		s.result.Starts++

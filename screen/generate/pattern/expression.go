@@ -59,7 +59,7 @@ func (r *reader) conjunction() (atomTest, error) {
 		switch r.peek() {
 		case 0, ']', ',', ';':
 			if len(tests) == 0 {
-				return nil, r.errorf("want a test of the atom")
+				return nil, r.fail("want a test of the atom")
 			}
 			return all(tests), nil
 		}
@@ -82,13 +82,13 @@ func (r *reader) primitive() (atomTest, error) {
 	case r.take('#'):
 		n, ok := r.number()
 		if !ok {
-			return nil, r.errorf("want an atomic number")
+			return nil, r.fail("want an atomic number")
 		}
 		return func(m *molecule.Molecule, i int) bool { return m.Atom(i).Number == n }, nil
 	case r.take('X'):
 		n, ok := r.number()
 		if !ok {
-			return nil, r.errorf("want a number of neighbours")
+			return nil, r.fail("want a number of neighbours")
 		}
 		return func(m *molecule.Molecule, i int) bool { return len(m.Neighbours(i)) == n }, nil
 	case r.take('H'):
@@ -110,14 +110,14 @@ func (r *reader) primitive() (atomTest, error) {
 // recursive reads the parenthesis of $(...).
 func (r *reader) recursive() (atomTest, error) {
 	if !r.take('(') {
-		return nil, r.errorf("want ( after $")
+		return nil, r.fail("want ( after $")
 	}
 	p, err := r.pattern()
 	if err != nil {
 		return nil, err
 	}
 	if !r.take(')') {
-		return nil, r.errorf("want ) after the inner pattern")
+		return nil, r.fail("want ) after the inner pattern")
 	}
 	return p.StartsAt, nil
 }

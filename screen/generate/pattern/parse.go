@@ -15,7 +15,7 @@ func Parse(text string) (*Pattern, error) {
 		return nil, err
 	}
 	if r.at != len(text) {
-		return nil, r.errorf("want an atom or a bond")
+		return nil, r.fail("want an atom or a bond")
 	}
 	return p, nil
 }
@@ -25,8 +25,8 @@ type reader struct {
 	at   int
 }
 
-func (r *reader) errorf(format string, args ...any) error {
-	return fmt.Errorf("pattern %q, byte %d: %s", r.text, r.at+1, fmt.Sprintf(format, args...))
+func (r *reader) fail(why string) error {
+	return fmt.Errorf("pattern %q, byte %d: %s", r.text, r.at+1, why)
 }
 
 // peek returns the next byte, 0 at the end.
@@ -54,12 +54,12 @@ func (r *reader) pattern() (*Pattern, error) {
 		switch c := r.peek(); {
 		case c == 0 || c == ')' && len(branches) == 0:
 			if last < 0 || len(branches) > 0 {
-				return nil, r.errorf("the pattern ends too early")
+				return nil, r.fail("the pattern ends too early")
 			}
 			return p, nil
 		case c == '(':
 			if last < 0 {
-				return nil, r.errorf("a branch needs an atom before it")
+				return nil, r.fail("a branch needs an atom before it")
 			}
 			r.at++
 			branches = append(branches, last)
@@ -110,7 +110,7 @@ func (r *reader) atom() (atomTest, error) {
 		return nil, err
 	}
 	if !r.take(']') {
-		return nil, r.errorf("want ]")
+		return nil, r.fail("want ]")
 	}
 	return test, nil
 }
@@ -132,7 +132,7 @@ func (r *reader) symbol() (atomTest, error) {
 		aromatic, name = true, string(c-'a'+'A')
 	case 'C', 'N', 'O', 'S', 'P', 'B', 'F', 'I':
 	default:
-		return nil, r.errorf("want an atom")
+		return nil, r.fail("want an atom")
 	}
 	r.at += len(name)
 	number, _ := element.Number(name)
