@@ -1,7 +1,6 @@
 package generate
 
 import (
-	"cmp"
 	"context"
 	"fmt"
 	"slices"
@@ -26,10 +25,26 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	if len(chosen) < len(kept) {
 		s.result.Complete = false
 	}
-	list, err := s.tightened(ctx, chosen)
-	if err != nil {
-		return Result{}, err
+	var final []entry
+	var hits []int
+	for _, c := range chosen {
+		s.kick(c.x, c.start)
+		energy, err := s.relaxed(ctx, c.x, tightly)
+		if ctx.Err() != nil {
+			return Result{}, ctx.Err()
+		}
+		if err != nil {
+			s.failure = err
+			continue
+		}
+		c.energy = energy
+		final = append(final, c.entry)
+		hits = append(hits, c.hits)
 	}
+	if len(final) == 0 {
+		return Result{}, fmt.Errorf("no structure could be relaxed: %w", s.failure)
+	}
+	list := s.within(s.distinct(final, hits, dedupe.DefaultThresholds()))
 	if s.o.MirrorImages {
 		list = s.bothHands(list)
 	}
@@ -42,35 +57,6 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	}
 	s.conformers(ordered)
 	return s.result, nil
-}
-
-// tightened relaxes candidates to the end, where that is asked for, and drops
-// those that have become the same.
-func (s *search) tightened(ctx context.Context, chosen []candidate) ([]candidate, error) {
-	if !s.o.Minima {
-		slices.SortStableFunc(chosen, func(a, b candidate) int { return cmp.Compare(a.energy, b.energy) })
-		return chosen, nil
-	}
-	var final []entry
-	var hits []int
-	for _, c := range chosen {
-		s.kick(c.x, c.start)
-		energy, err := s.relaxed(ctx, c.x, tightly)
-		if ctx.Err() != nil {
-			return nil, ctx.Err()
-		}
-		if err != nil {
-			s.failure = err
-			continue
-		}
-		c.energy = energy
-		final = append(final, c.entry)
-		hits = append(hits, c.hits)
-	}
-	if len(final) == 0 {
-		return nil, fmt.Errorf("no structure could be relaxed: %w", s.failure)
-	}
-	return s.within(s.distinct(final, hits, dedupe.DefaultThresholds())), nil
 }
 
 // kick moves every atom a little, at random: a structure that came to rest on a
