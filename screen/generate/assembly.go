@@ -134,20 +134,6 @@ func (a *assembly) unsettle(k int) {
 	a.placed = a.placed[:len(a.placed)-len(a.frags[a.steps[k].frag].core)]
 }
 
-// build makes the whole structure in x. It returns the crowding, infinite where
-// fragments clash; then x is not complete.
-func (a *assembly) build(r recipe, x []float64) float64 {
-	var crowding float64
-	for k := range a.steps {
-		crowding += a.put(k, r, x)
-		if crowding > tooCrowded {
-			return crowding
-		}
-		a.settle(k)
-	}
-	return crowding
-}
-
 // force makes the whole structure without regard for clashes.
 func (a *assembly) force(r recipe, x []float64) {
 	for k := range a.steps {
