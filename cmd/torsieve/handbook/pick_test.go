@@ -110,9 +110,9 @@ func either(a, b pick, reduce func(*subject, []*point, []float64) float64) pick 
 	}, reduce, append(a.shapes, b.shapes...)}
 }
 
-// crest is the highest of the lowest points at some values of a dihedral: a
+// barrierTop is the highest of the lowest points at some values of a dihedral: a
 // barrier whose place symmetry does not fix.
-func crest(d dihedral, degrees ...float64) pick {
+func barrierTop(d dihedral, degrees ...float64) pick {
 	var shapes []shape
 	for _, v := range degrees {
 		shapes = append(shapes, shape{turn{d, v, usual}})

@@ -5,7 +5,7 @@ package handbook
 var butane = specimen{"butane", "CCCC", []question{
 	gap("butane gauche", alkanes, minimum(along(0, 180)...), minimum(along(0, 64)...)),
 	gap("butane gauche enthalpy", alkanes, minimum(along(0, 180)...), minimum(along(0, 64)...)),
-	gap("butane barrier", barriers, minimum(along(0, 180)...), crest(dihedral{0, 1, 2, 3}, 110, 115, 120, 125, 130)),
+	gap("butane barrier", barriers, minimum(along(0, 180)...), barrierTop(dihedral{0, 1, 2, 3}, 110, 115, 120, 125, 130)),
 	gap("butane syn", barriers, minimum(along(0, 180)...), held(along(0, 0)...)),
 	angle("butane gauche angle", dihedral{0, 1, 2, 3}, along(0, 64)...),
 	count("butane minima", 20),

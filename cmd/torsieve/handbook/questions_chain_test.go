@@ -6,7 +6,7 @@ func turned(fact string, from, to float64) question {
 	return gap(fact, minima, minimum(at(0, 1, 2, 3, from)), minimum(at(0, 1, 2, 3, to)))
 }
 
-var butadieneTop = crest(first, span(85, 115, 5)...)
+var butadieneTop = barrierTop(first, span(85, 115, 5)...)
 
 var chains = []specimen{
 	{"1-butene", "C=CCC", []question{turned("1-butene", 0, 120)}},
