@@ -85,7 +85,7 @@ func (c *generateCommand) one(s *session, l *screen.Ligand) (f found) {
 		return f
 	}
 	f.err = screen.Guard(func() (err error) {
-		o := generate.Defaults()
+		o := generate.Spread()
 		o.Max, o.Seed = c.Max, c.Seed.Seed
 		f.result, err = screen.Shapes(s.ctx, l, o)
 		return err

@@ -28,6 +28,28 @@ func TestRigidMolecules(t *testing.T) {
 	}
 }
 
+// Ring systems that are not flat: C60 is a sphere of radius 3.55 angstrom (gas
+// electron diffraction, K. Hedberg et al., Science 1991, 254, 410: bonds 1.458
+// and 1.401 angstrom); corannulene, C20H10, is a bowl, and turned inside out the
+// same shape.
+func TestCurvedRingSystems(t *testing.T) {
+	m, res := conformers(t, "c12c3c4c5c1c1c6c7c2c2c8c3c3c9c4c4c%10c5c5c1c1c6c6c%11c7c2c2c7c8c3c3c8c9c4c4c9c%10c5c5c1c1c6c6c%11c2c2c7c3c3c8c4c4c9c5c1c1c6c2c3c41")
+	centre := geom.Centroid(res.Conformers[0].X)
+	for i := range m.NumAtoms() {
+		var r float64
+		for d := range 3 {
+			r += math.Pow(res.Conformers[0].X[3*i+d]-centre[d], 2)
+		}
+		if r = math.Sqrt(r) / units.Angstrom; math.Abs(r-3.55) > 0.1 {
+			t.Errorf("C60: atom %d is %.2f angstrom from the middle, want 3.55", i+1, r)
+		}
+	}
+	m, res = conformers(t, "c1cc2ccc3ccc4ccc5ccc1c6c2c3c4c56")
+	if len(res.Conformers) != 1 || m.Formula() != "C20H10" {
+		t.Errorf("corannulene, %s: %d conformers, want 1", m.Formula(), len(res.Conformers))
+	}
+}
+
 // Stated stereo is held in every conformer: signs of volumes and dihedrals as
 // the parities of the graph say, whose convention molecule's tests check
 // against L-alanine.

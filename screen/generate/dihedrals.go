@@ -1,6 +1,10 @@
 package generate
 
-import "slices"
+import (
+	"slices"
+
+	"torsieve/molecule"
+)
 
 // dihedral returns the range of |a-b-c-d| about bond bc that the graph allows.
 func (g *bounder) dihedral(a, b, c, d, bc int) (low, high float64) {
@@ -12,9 +16,27 @@ func (g *bounder) dihedral(a, b, c, d, bc int) (low, high float64) {
 	size := g.m.SmallestRing(bc)
 	stiff := g.h[b] == trigonal && g.h[c] == trigonal && size > 0 && size <= 7
 	if stiff && (bond.Aromatic || bond.Order == 2 || size <= 5) {
-		return g.planarRing(a, b, c, d)
+		low, high = g.planarRing(a, b, c, d)
+		if mayBeCurved(g.m, b) || mayBeCurved(g.m, c) {
+			return max(0, low-curvature), min(180*degree, high+curvature)
+		}
+		return low, high
 	}
 	return g.ringDihedral(a, b, c, d)
+}
+
+// curvature is how far a flat ring bond bends in a bowl or a fullerene: about 40
+// degrees in C60.
+const curvature = 45 * degree
+
+// mayBeCurved says whether an atom lies so deep in a ring system that the rings
+// decide whether it is flat: it and its neighbours have three ring bonds each.
+func mayBeCurved(m *molecule.Molecule, i int) bool {
+	deep := func(j int) bool {
+		bonds := m.NeighbourBonds(j)
+		return len(bonds) == 3 && !slices.ContainsFunc(bonds, func(k int) bool { return !m.BondInRing(k) })
+	}
+	return deep(i) && !slices.ContainsFunc(m.Neighbours(i), func(j int) bool { return !deep(j) })
 }
 
 func flat(cis bool) (low, high float64) {

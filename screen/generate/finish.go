@@ -1,22 +1,32 @@
 package generate
 
 import (
+	"cmp"
 	"context"
 	"fmt"
+	"math"
 	"slices"
 
 	"torsieve/dedupe"
 	"torsieve/internal/units"
 )
 
-// rough tells structures apart that are only loosely relaxed.
-var rough = dedupe.Thresholds{RMSD: 0.2 * units.Angstrom, Energy: 1 * units.KcalPerMol}
+// rough tells structures apart that are only loosely relaxed; byShape those whose
+// energies mean nothing, because nothing more will be done to them: a methyl group
+// that came to rest on its barrier does not make another shape.
+var (
+	rough   = dedupe.Thresholds{RMSD: 0.2 * units.Angstrom, Energy: 1 * units.KcalPerMol}
+	byShape = dedupe.Thresholds{RMSD: 0.2 * units.Angstrom, Energy: math.Inf(1)}
+)
 
 // finish drops duplicates and what is too high, relaxes the best choice to the
 // end, and puts it in order.
 func (s *search) finish(ctx context.Context) (Result, error) {
-	kept := s.distinct(s.pool, nil, rough)
-	kept = s.within(kept)
+	early, late := rough, dedupe.DefaultThresholds()
+	if !s.o.Minima {
+		early, late = byShape, byShape
+	}
+	kept := s.within(s.distinct(s.pool, nil, early))
 	s.result.Found = len(kept)
 	chosen, err := s.order(ctx, kept, s.o.Max)
 	if err != nil {
@@ -25,28 +35,12 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	if len(chosen) < len(kept) {
 		s.result.Complete = false
 	}
-	var final []entry
-	var hits []int
-	for _, c := range chosen {
-		s.kick(c.x, c.start)
-		energy, err := s.relaxed(ctx, c.x, tightly)
-		if ctx.Err() != nil {
-			return Result{}, ctx.Err()
-		}
-		if err != nil {
-			s.failure = err
-			continue
-		}
-		c.energy = energy
-		final = append(final, c.entry)
-		hits = append(hits, c.hits)
+	list, err := s.tightened(ctx, chosen)
+	if err != nil {
+		return Result{}, err
 	}
-	if len(final) == 0 {
-		return Result{}, fmt.Errorf("no structure could be relaxed: %w", s.failure)
-	}
-	list := s.within(s.distinct(final, hits, dedupe.DefaultThresholds()))
 	if s.o.MirrorImages {
-		list = s.bothHands(list)
+		list = s.bothHands(list, late.RMSD)
 	}
 	ordered, err := s.order(ctx, list, s.o.Max)
 	if err != nil {
@@ -57,6 +51,35 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	}
 	s.conformers(ordered)
 	return s.result, nil
+}
+
+// tightened relaxes candidates to the end, where that is asked for, and drops
+// those that have become the same.
+func (s *search) tightened(ctx context.Context, chosen []candidate) ([]candidate, error) {
+	if !s.o.Minima {
+		slices.SortStableFunc(chosen, func(a, b candidate) int { return cmp.Compare(a.energy, b.energy) })
+		return chosen, nil
+	}
+	var final []entry
+	var hits []int
+	for _, c := range chosen {
+		s.kick(c.x, c.start)
+		energy, err := s.relaxed(ctx, c.x, tightly)
+		if ctx.Err() != nil {
+			return nil, ctx.Err()
+		}
+		if err != nil {
+			s.failure = err
+			continue
+		}
+		c.energy = energy
+		final = append(final, c.entry)
+		hits = append(hits, c.hits)
+	}
+	if len(final) == 0 {
+		return nil, fmt.Errorf("no structure could be relaxed: %w", s.failure)
+	}
+	return s.within(s.distinct(final, hits, dedupe.DefaultThresholds())), nil
 }
 
 // kick moves every atom a little, at random: a structure that came to rest on a
@@ -106,13 +129,13 @@ func (s *search) within(list []candidate) []candidate {
 	return list
 }
 
-// bothHands adds the mirror image of each shape that differs from it. Where the
-// molecule is not its own mirror image there is nothing to add.
-func (s *search) bothHands(list []candidate) []candidate {
+// bothHands adds the mirror image of each shape that is further from it than
+// alike, in bohr. Where the molecule is not its own mirror image there is nothing to add.
+func (s *search) bothHands(list []candidate, alike float64) []candidate {
 	var both []candidate
 	for _, c := range list {
 		both = append(both, c)
-		if rmsd, ok := s.comparer.SelfMirror(c.x); !ok || rmsd <= dedupe.DefaultThresholds().RMSD {
+		if rmsd, ok := s.comparer.SelfMirror(c.x); !ok || rmsd <= alike {
 			continue
 		}
 		image := c

@@ -20,6 +20,11 @@ type Options struct {
 	// wrong for an ensemble, where one of them stands for both; false.
 	MirrorImages bool
 
+	// Minima relaxes what is handed over to the minimum; true. Without it shapes
+	// are relaxed only as far as removes strain: closer to shapes in crystals than
+	// minima in a vacuum are, but with energies that mean little.
+	Minima bool
+
 	// EnergyScale is the energy above the lowest, in hartree, over which a
 	// shape's worth falls to 1/e when places in the list are given away; 6
 	// kcal/mol, about the error of the force field. A larger one spreads the list
@@ -41,17 +46,19 @@ type Options struct {
 // Defaults returns the settings for an ensemble that energies will weigh.
 func Defaults() Options {
 	return Options{
-		Max: 250, Seed: 1, Window: 25 * units.KcalPerMol, EnergyScale: 6 * units.KcalPerMol,
+		Max: 250, Seed: 1, Window: 25 * units.KcalPerMol, EnergyScale: 6 * units.KcalPerMol, Minima: true,
 		Field: forcefield.Defaults(), Exhaustive: 3000,
 	}
 }
 
 // Spread returns the settings for a list that is to hold a shape from elsewhere,
-// a bound ligand say: spread wide in energy, and of both hands.
+// a bound ligand say: spread wide in energy, of both hands, and only so far
+// relaxed as removes strain.
 func Spread() Options {
 	o := Defaults()
 	o.EnergyScale = 20 * units.KcalPerMol
 	o.MirrorImages = true
+	o.Minima = false
 	return o
 }
 

@@ -9,11 +9,12 @@ import (
 )
 
 // softly is how collisions are undone, loosely how structures are relaxed before
-// duplicates are dropped, tightly how the survivors are; gradients in
-// hartree/bohr.
+// duplicates are dropped, barely where no minima are asked for, tightly how the
+// survivors are; gradients in hartree/bohr.
 var (
 	softly  = relax.Settings{RMSGradient: 5e-3, MaxGradients: 40}
 	loosely = relax.Settings{RMSGradient: 4e-4, MaxGradients: 150, EnergyChange: 2e-5}
+	barely  = relax.Settings{RMSGradient: 4e-4, MaxGradients: 40}
 	tightly = relax.Settings{RMSGradient: 1e-4, MaxGradient: 2e-4, MaxGradients: 1500}
 )
 
@@ -24,7 +25,11 @@ func (s *search) add(ctx context.Context, x []float64, r recipe) error {
 	if err := s.charge(ctx, x); err != nil {
 		return err
 	}
-	energy, err := s.relaxed(ctx, x, loosely)
+	set := loosely
+	if !s.o.Minima {
+		set = barely
+	}
+	energy, err := s.relaxed(ctx, x, set)
 	if ctx.Err() != nil {
 		return ctx.Err()
 	}

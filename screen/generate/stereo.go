@@ -94,17 +94,18 @@ func (h handedness) volume(m *molecule.Molecule, length func(i, j int) float64) 
 }
 
 // planes lists what should be flat: trigonal atoms with three neighbours, and
-// the two ends of each double bond with respect to each other.
+// the two ends of each double bond with respect to each other, but for what a
+// ring system may bend.
 func planes(m *molecule.Molecule, h []hybrid) []embed.Volume {
 	var list []embed.Volume
 	for i := range m.Atoms() {
-		if near := m.Neighbours(i); h[i] == trigonal && len(near) == 3 {
+		if near := m.Neighbours(i); h[i] == trigonal && len(near) == 3 && !mayBeCurved(m, i) {
 			list = append(list, embed.Volume{P: [4]int{near[0], near[1], near[2], i}})
 		}
 	}
 	for k, b := range m.Bonds() {
 		flat := h[b.A] == trigonal && h[b.B] == trigonal && (b.Order == 2 || b.Aromatic)
-		if !flat || m.SmallestRing(k) > 7 {
+		if !flat || m.SmallestRing(k) > 7 || mayBeCurved(m, b.A) || mayBeCurved(m, b.B) {
 			continue
 		}
 		for _, i := range m.Neighbours(b.A) {
