@@ -13,8 +13,9 @@ import (
 // An Intake turns records into ligands: it makes ids unique, settles salts and
 // unstated stereo as it was told, and writes down everything that it did.
 type Intake struct {
-	StripSalts   bool // keep the largest organic fragment; else several are refused
-	ExpandStereo bool // take all isomers of unstated stereo; else it is refused
+	StripSalts   bool   // keep the largest organic fragment; else several are refused
+	ExpandStereo bool   // take all isomers of unstated stereo; else it is refused
+	Solvent      string // what will surround the ligands, for warnings; empty: the gas phase
 
 	ids   map[string]string // id: where it was first read
 	stems *namer
@@ -52,7 +53,7 @@ func (in *Intake) Take(file string, rec load.Record) []*Ligand {
 		}
 		l.Starts = [][]float64{x}
 	}
-	l.warnOfCharges()
+	l.warnOfCharges(in.Solvent)
 	return in.isomers(l)
 }
 

@@ -162,17 +162,36 @@ func TestIntakeStarts(t *testing.T) {
 }
 
 func TestWarnOfCharges(t *testing.T) {
-	for _, tc := range []struct{ smiles, want string }{
-		{"[NH3+]CC(=O)[O-]", "zwitterion"},
-		{"CC(=O)[O-]", "charge -1 in the gas phase"},
-		{"C[N+](=O)[O-]", ""},
-		{"C[S+](C)[O-]", ""},
-		{"CCO", ""},
+	for _, tc := range []struct{ solvent, smiles, want string }{
+		{"", "[NH3+]CC(=O)[O-]", "zwitterion"},
+		{"", "CC(=O)[O-]", "charge -1 in the gas phase"},
+		{"", "C[N+](=O)[O-]", ""},
+		{"", "C[S+](C)[O-]", ""},
+		{"", "CCO", ""},
+		{"", "CC(=O)O", ""},
+		{"water", "[NH3+]CC(=O)[O-]", ""},
+		{"hexane", "CC(=O)O", ""},
+		// near pH 7, by pKa (common practice): acids below 5, amines above 9
+		{"water", "CC(=O)O", "carboxylic acid is drawn neutral"},
+		{"water", "CS(=O)(=O)O", "sulfonic acid is drawn neutral"},
+		{"water", "COP(=O)(O)OC", "acid of phosphorus is drawn neutral"},
+		{"water", "CCN(C)C", "aliphatic amine is drawn neutral"},
+		{"water", "NC(=N)NC", "amidine or guanidine is drawn neutral"},
+		{"water", "CC(=O)NC", ""},                 // amide
+		{"water", "CN(C)c1ccccc1", ""},            // aniline
+		{"water", "C[N+](C)(C)C", ""},             // no proton to take
+		{"water", "CC[NH+](C)C", ""},              // drawn as it is
+		{"water", "CS(=O)(=O)NC", ""},             // sulfonamide
+		{"water", "CC(=O)OC", ""},                 // ester
+		{"water", "Oc1ccccc1", ""},                // phenol, pKa 10
+		{"water", "c1ccncc1", ""},                 // pyridine, pKa 5
+		{"water", "CN1CCOCC1", "aliphatic amine"}, // morpholine, pKa 7.4 and above
 	} {
-		l := ligandsOf(t, NewIntake(), tc.smiles)[0]
-		got := strings.Join(l.Warnings, ";")
-		if tc.want == "" && strings.Contains(got, "gas phase") || !strings.Contains(got, tc.want) {
-			t.Errorf("%s: warnings %q, want %q", tc.smiles, got, tc.want)
+		in := NewIntake()
+		in.Solvent = tc.solvent
+		got := strings.Join(ligandsOf(t, in, tc.smiles)[0].Warnings, ";")
+		if tc.want == "" && got != "" || !strings.Contains(got, tc.want) {
+			t.Errorf("%s in %q: warnings %q, want %q", tc.smiles, tc.solvent, got, tc.want)
 		}
 	}
 }

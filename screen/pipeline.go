@@ -168,6 +168,10 @@ func (r *ligandRun) settle(tier int, c *Conformer, o outcome) error {
 		return fmt.Errorf("conformer %d: %w", c.Number, err)
 	}
 	c.X, c.Energies[tier], c.Last = o.x, o.energy, tier
+	c.Beside = c.Solvation
+	if o.solvated {
+		c.Solvation, c.Solvated, c.Beside = o.solvation, true, 0
+	}
 	for _, doubt := range o.doubts {
 		c.Doubts = append(c.Doubts, r.tiers[tier].Name()+": "+doubt)
 	}

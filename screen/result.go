@@ -27,17 +27,25 @@ type Conformer struct {
 	Number   int       // from 1, in the generator's order: its name in every file
 	X        []float64 // bohr; as the last relaxing tier left it
 	Family   int       // the generator's family of shapes
-	Energies []float64 // by tier, hartree; NaN where not computed
+	Energies []float64 // by tier, hartree; NaN where not computed; of a tier with a solvent: with it
 	Last     int       // index of the last tier that computed it
 	Rank     int       // from 1 by final energy; 0: not in the ensemble
 	Copies   int       // see ensemble.Shape; 0: not in the ensemble
 	Why      string    // "kept", or why it went no further
 	Doubts   []string  // what a tier was not sure of
+
+	// Solvation is the free energy of solvation in hartree, from the tier that
+	// has a solvent, if Solvated says that one has. Beside is what Final has
+	// beside the last tier's energy: Solvation, where that tier does not model it.
+	Solvation float64
+	Solvated  bool
+	Beside    float64
 }
 
 // Final is the energy that ranks, in hartree: the last tier's at the geometry
-// of the last tier that relaxes.
-func (c *Conformer) Final() float64 { return c.Energies[c.Last] }
+// of the last tier that relaxes, and the solvation that the last tier does not
+// know itself.
+func (c *Conformer) Final() float64 { return c.Energies[c.Last] + c.Beside }
 
 // A Result is what became of one ligand.
 type Result struct {

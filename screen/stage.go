@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"slices"
 	"sync/atomic"
 	"time"
 
@@ -17,11 +18,13 @@ import (
 // An outcome is a tier's answer for one conformer: where it is and how high, or
 // why there is none.
 type outcome struct {
-	x      []float64 // bohr
-	energy float64   // hartree
-	doubts []string
-	err    error
-	took   time.Duration
+	x         []float64 // bohr
+	energy    float64   // hartree
+	solvation float64   // hartree, where solvated
+	solvated  bool
+	doubts    []string
+	err       error
+	took      time.Duration
 
 	gradients int // of a relaxation
 }
@@ -51,15 +54,15 @@ func (r *ligandRun) compute(ctx context.Context, tier int, which []int) ([]outco
 // work is one worker of compute: a surface of its own, and the next conformer
 // until there is none.
 func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomic.Int64, out []outcome) error {
-	var surface Surface
+	var place *workplace
 	for {
 		i := int(next.Add(1)) - 1
 		if i >= len(which) {
 			return nil
 		}
-		if surface == nil {
+		if place == nil {
 			err := r.pool.unit(ctx, func() (err error) {
-				surface, err = r.tiers[tier].Surface(r.ligand.Mol)
+				place, err = newWorkplace(r.tiers[tier], r.ligand.Mol)
 				return err
 			})
 			if err != nil {
@@ -71,8 +74,7 @@ func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomi
 		err := r.pool.unit(ctx, func() error {
 			begun := r.options.Clock()
 			defer func() { took = r.options.Clock().Sub(begun) }()
-			surface.Reset() // or the answer would depend on who went before
-			out[i] = r.one(ctx, surface, c)
+			out[i] = r.one(ctx, place, c)
 			return out[i].err
 		})
 		if ctx.Err() != nil {
@@ -80,23 +82,67 @@ func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomi
 		}
 		out[i].err, out[i].took = err, took
 		if errors.As(err, new(*Fault)) {
-			surface = nil // whatever state it was left in
+			place = nil // whatever state it was left in
 		}
 		r.tellComputed(tier, c, out[i])
 	}
 }
 
+// A workplace is what a worker computes on: a surface of the tier, and where
+// that has a solvent, one without.
+type workplace struct {
+	surface Surface
+	gas     Surface // nil: the tier has no solvent
+}
+
+func newWorkplace(t Tier, m *molecule.Molecule) (*workplace, error) {
+	var p workplace
+	var err error
+	if p.surface, err = t.Surface(m); err != nil {
+		return nil, err
+	}
+	if s, ok := inSolvent(t); ok {
+		if p.gas, err = s.Gas(m); err != nil {
+			return nil, err
+		}
+	}
+	return &p, nil
+}
+
 // one computes one conformer: relaxed where the surface has a gradient, as it
 // stands where not.
-func (r *ligandRun) one(ctx context.Context, surface Surface, c *Conformer) outcome {
+func (r *ligandRun) one(ctx context.Context, p *workplace, c *Conformer) outcome {
 	if err := load.CheckGeometry(r.ligand.Mol.Numbers(), c.X); err != nil {
 		return outcome{err: err}
 	}
-	if sloped, ok := surface.(Sloped); ok {
-		return r.relaxed(ctx, sloped, c.X)
+	p.surface.Reset() // or the answer would depend on who went before
+	var out outcome
+	if sloped, ok := p.surface.(Sloped); ok {
+		out = r.relaxed(ctx, sloped, c.X)
+	} else {
+		point, err := p.surface.Energy(ctx, c.X)
+		out = outcome{x: c.X, energy: point.Energy, doubts: point.Warnings, err: err}
 	}
-	p, err := surface.Energy(ctx, c.X)
-	return outcome{x: c.X, energy: p.Energy, doubts: p.Warnings, err: err}
+	if p.gas != nil && out.err == nil {
+		p.dry(ctx, &out)
+	}
+	return out
+}
+
+// dry fills in by how much the solvent changes the energy.
+func (p *workplace) dry(ctx context.Context, out *outcome) {
+	p.gas.Reset()
+	point, err := p.gas.Energy(ctx, out.x)
+	if err != nil {
+		out.err = fmt.Errorf("without the solvent: %w", err)
+		return
+	}
+	out.solvation, out.solvated = out.energy-point.Energy, true
+	for _, doubt := range point.Warnings {
+		if !slices.Contains(out.doubts, doubt) {
+			out.doubts = append(out.doubts, "without the solvent: "+doubt)
+		}
+	}
 }
 
 func (r *ligandRun) relaxed(ctx context.Context, surface Sloped, from []float64) outcome {

@@ -48,6 +48,24 @@ type Sloped interface {
 	Gradient(ctx context.Context, grad, x []float64) (molecule.Point, error)
 }
 
+// A Solvated tier's surfaces may have a solvent about the molecule, whose free
+// energy is then part of their energy.
+//
+// Solvent is its name, empty where there is none. Gas returns a surface without
+// it: what the two differ by at one geometry is the solvation free energy that
+// tiers above, which know no solvent, are given.
+type Solvated interface {
+	Tier
+	Solvent() string
+	Gas(m *molecule.Molecule) (Surface, error)
+}
+
+// inSolvent returns the tier as a Solvated one if it has a solvent.
+func inSolvent(t Tier) (s Solvated, ok bool) {
+	s, ok = t.(Solvated)
+	return s, ok && s.Solvent() != ""
+}
+
 // TierError puts the tier's name in front of an error that does not say it yet.
 func TierError(t Tier, err error) error {
 	if strings.HasPrefix(err.Error(), t.Name()+":") {

@@ -32,7 +32,7 @@ func (c *generateCommand) Run(s *session) error {
 	if err := c.Cores.check(); err != nil {
 		return err
 	}
-	ligands, _, err := s.ligands(c.Ligands, c.Input, c.Intake)
+	ligands, _, err := s.ligands(c.Ligands, c.Input, c.Intake, "")
 	if err != nil {
 		return err
 	}

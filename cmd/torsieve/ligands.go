@@ -13,11 +13,12 @@ import (
 )
 
 // ligands reads all files of a run. What could not be read or is refused is
-// among the ligands, and has been told.
-func (s *session) ligands(files []string, in inputOptions, how intakeOptions) ([]*screen.Ligand, []report.Input, error) {
+// among the ligands, and has been told. The solvent is what will surround them.
+func (s *session) ligands(files []string, in inputOptions, how intakeOptions, solvent string) ([]*screen.Ligand, []report.Input, error) {
 	intake := screen.NewIntake()
 	intake.ExpandStereo = how.Stereo == "expand"
 	intake.StripSalts = how.Salts == "strip"
+	intake.Solvent = solvent
 	var ligands []*screen.Ligand
 	var inputs []report.Input
 	for _, file := range files {

@@ -7,6 +7,8 @@ import (
 	"strings"
 
 	"torsieve/internal/linalg"
+	"torsieve/screen"
+	"torsieve/semiempirical/solvent"
 )
 
 // Options that several commands share, in groups. A group is embedded by the
@@ -28,17 +30,44 @@ type intakeOptions struct {
 	Salts  string `group:"Input" help:"Several fragments: refuse, or strip to the largest organic one." enum:"refuse,strip" default:"refuse"`
 }
 
-// solventOptions choose what surrounds the molecule.
+// solventOptions choose what surrounds the molecule. A command that embeds them
+// sets the variable solvent to its default.
 type solventOptions struct {
-	Solvent string `group:"Methods" help:"Solvent; only none yet: the gas phase (default: ${default})." default:"none" placeholder:"NAME"`
+	Solvent string `group:"Methods" help:"Implicit solvent of the semi-empirical level, or none: the gas phase. One of ${solvents} (default: ${default})." default:"${solvent}" placeholder:"NAME"`
 }
 
-// check refuses what is not built yet, by name.
-func (o solventOptions) check() error {
-	if !strings.EqualFold(o.Solvent, "none") {
-		return nothing(fmt.Errorf("solvent %q: solvation is not built yet, only the gas phase is", o.Solvent), "use --solvent none")
+// noSolvent is the word for the gas phase.
+const noSolvent = "none"
+
+// name returns the solvent's own name, empty for the gas phase. An unknown one
+// is refused with those that look like it.
+func (o solventOptions) name() (string, error) {
+	if o.Solvent == "" || strings.EqualFold(o.Solvent, noSolvent) {
+		return "", nil
 	}
-	return nil
+	name, err := solvent.Find(o.Solvent)
+	if err != nil {
+		return "", nothing(err, "--help lists the solvents; none is the gas phase")
+	}
+	return name, nil
+}
+
+// of is name for one tier alone: only the semi-empirical one has solvents.
+func (o solventOptions) of(tier string) (string, error) {
+	name, err := o.name()
+	if err == nil && name != "" && tier != tierSemiempirical {
+		return "", nothing(fmt.Errorf("solvent %s: the %s tier has none of its own", name, tier),
+			"use --tier semiempirical; screen adds its solvation to the last tier's energies")
+	}
+	return name, err
+}
+
+// solventOf is the word for a tier's solvent in output.
+func solventOf(t screen.Tier) string {
+	if s, ok := t.(screen.Solvated); ok && s.Solvent() != "" {
+		return s.Solvent()
+	}
+	return noSolvent
 }
 
 // finalOptions choose the theory of the last tier.

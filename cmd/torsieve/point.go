@@ -19,7 +19,7 @@ type pointCommand struct {
 	Gradient bool           `help:"Print the gradient as well."`
 	Accuracy float64        `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"0.1" placeholder:"X"`
 	Input    inputOptions   `embed:""`
-	Solvent  solventOptions `embed:""`
+	Solvent  solventOptions `embed:"" set:"solvent=none"`
 	Final    finalOptions   `embed:""`
 	Cores    coreOptions    `embed:""`
 	Memory   memoryOptions  `embed:""`
@@ -27,10 +27,11 @@ type pointCommand struct {
 
 // Run computes and prints a line a record, in the file's order.
 func (c *pointCommand) Run(s *session) error {
-	if err := errors.Join(c.Solvent.check(), c.Cores.check()); err != nil {
+	solvent, err := c.Solvent.of(c.Tier)
+	if err := errors.Join(err, c.Cores.check()); err != nil {
 		return err
 	}
-	tier, err := newTier(c.Tier, tierOptions{finalOptions: c.Final, Accuracy: c.Accuracy, Memory: int64(c.Memory.Memory)})
+	tier, err := newTier(c.Tier, tierOptions{finalOptions: c.Final, Accuracy: c.Accuracy, Solvent: solvent, Memory: int64(c.Memory.Memory)})
 	if err != nil {
 		return err
 	}
@@ -94,7 +95,7 @@ func (c *pointCommand) line(ctx context.Context, tier screen.Tier, rec load.Reco
 		return failedAt(c.File, rec, screen.TierError(tier, err))
 	}
 	line := pointLine{
-		ID: id, Record: rec.Record, Tier: tier.Name(), Method: tier.Method(), Solvent: "none",
+		ID: id, Record: rec.Record, Tier: tier.Name(), Method: tier.Method(), Solvent: solventOf(tier),
 		Charge: rec.Mol.Charge(), Multiplicity: rec.Mol.Multiplicity(), Atoms: rec.Mol.NumAtoms(),
 		Energy: p.Energy, Components: map[string]float64{}, Charges: p.Charges,
 		Iterations: p.Iterations, Seconds: time.Since(begun).Seconds(), Warnings: p.Warnings,

@@ -19,19 +19,20 @@ type relaxCommand struct {
 	Out      string         `help:"SD file for the relaxed structures." required:"" placeholder:"FILE.sdf"`
 	Accuracy float64        `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
 	Input    inputOptions   `embed:""`
-	Solvent  solventOptions `embed:""`
+	Solvent  solventOptions `embed:"" set:"solvent=none"`
 	Cores    coreOptions    `embed:""`
 }
 
 // Run relaxes and writes the structures in the file's order.
 func (c *relaxCommand) Run(s *session) error {
-	if err := errors.Join(c.Solvent.check(), c.Cores.check()); err != nil {
+	solvent, err := c.Solvent.of(c.Tier)
+	if err := errors.Join(err, c.Cores.check()); err != nil {
 		return err
 	}
 	if c.Tier == tierHF {
 		return nothing(errors.New("the hf tier has no gradient yet: it cannot relax"), "use --tier semiempirical")
 	}
-	tier, err := newTier(c.Tier, tierOptions{Accuracy: c.Accuracy})
+	tier, err := newTier(c.Tier, tierOptions{Accuracy: c.Accuracy, Solvent: solvent})
 	if err != nil {
 		return err
 	}

@@ -13,6 +13,7 @@ import (
 	kongcompletion "github.com/jotaen/kong-completion"
 
 	"torsieve/screen"
+	"torsieve/semiempirical/solvent"
 )
 
 // commands is the command line: one field a command, one file a command.
@@ -119,7 +120,10 @@ func newParser(c *commands, stdout, stderr io.Writer) *kong.Kong {
 	return kong.Must(c,
 		kong.Name("torsieve"), kong.Description(about),
 		kong.Writers(stdout, stderr), kong.Exit(func(code int) { panic(exited(code)) }),
-		kong.Vars{"max_conformers": strconv.Itoa(screen.Defaults().MaxConformers)},
+		kong.Vars{
+			"max_conformers": strconv.Itoa(screen.Defaults().MaxConformers),
+			"solvents":       strings.Join(solvent.Names(), ", "),
+		},
 		kong.WithHyphenPrefixedParameters(true), // --charge -1
 		kong.Configuration(loadSettings), kong.ConfigureHelp(kong.HelpOptions{Compact: true, WrapUpperBound: 100}),
 	)

@@ -31,7 +31,7 @@ type screenCommand struct {
 
 	Input   inputOptions   `embed:""`
 	Intake  intakeOptions  `embed:""`
-	Solvent solventOptions `embed:""`
+	Solvent solventOptions `embed:"" set:"solvent=water"`
 	Final   finalOptions   `embed:""`
 	Cores   coreOptions    `embed:""`
 	Memory  memoryOptions  `embed:""`
@@ -45,7 +45,8 @@ func (c *screenCommand) Run(s *session) error {
 	if err != nil {
 		return err
 	}
-	ligands, inputs, err := s.ligands(c.Ligands, c.Input, c.Intake)
+	solvent := solventAbove(tiers)
+	ligands, inputs, err := s.ligands(c.Ligands, c.Input, c.Intake, solvent)
 	if err != nil {
 		return err
 	}
@@ -62,7 +63,7 @@ func (c *screenCommand) Run(s *session) error {
 		return nothing(err, "")
 	}
 	defer closeLog()
-	s.voice.note("gas phase: no solvent is modelled yet")
+	s.voice.note("%s", surroundings(solvent, len(tiers)))
 	return c.compute(s, ligands, tiers, options, folder, run, log)
 }
 
@@ -105,14 +106,40 @@ func (c *screenCommand) settings() ([]screen.Tier, screen.Options, error) {
 		o.Window = *c.Window * units.KcalPerMol
 	}
 	o.Seed, o.Jobs, o.Memory = c.Seed.Seed, c.Cores.jobs(), int64(c.Memory.Memory)
-	if err := c.Solvent.check(); err != nil {
+	solvent, err := c.Solvent.name()
+	if err != nil {
 		return nil, o, err
 	}
 	if err := o.Check(); err != nil {
 		return nil, o, nothing(err, "")
 	}
-	tiers, err := tiersThrough(c.Through, tierOptions{finalOptions: c.Final, Accuracy: c.Accuracy, Memory: o.Memory})
+	tiers, err := tiersThrough(c.Through, tierOptions{
+		finalOptions: c.Final, Accuracy: c.Accuracy, Solvent: solvent, Memory: o.Memory,
+	})
 	return tiers, o, err
+}
+
+// solventAbove is the solvent that the tiers of a run know, empty for none.
+func solventAbove(tiers []screen.Tier) string {
+	for _, t := range tiers {
+		if s, ok := t.(screen.Solvated); ok && s.Solvent() != "" {
+			return s.Solvent()
+		}
+	}
+	return ""
+}
+
+// surroundings says once what the energies of a run are those of.
+func surroundings(solvent string, tiers int) string {
+	switch {
+	case solvent != "" && tiers > 2:
+		return "energies in " + solvent + ": ALPB at the semi-empirical level, its solvation added to the last one's"
+	case solvent != "":
+		return "energies in " + solvent + " (ALPB)"
+	case tiers == 1:
+		return "gas phase: the force field knows no solvent"
+	}
+	return "gas phase: no solvent"
 }
 
 // describe fills what run.json says before anything is computed.

@@ -29,6 +29,7 @@ var tierNames = []string{tierForceField, tierSemiempirical, tierHF}
 type tierOptions struct {
 	finalOptions
 	Accuracy float64 // factor on the thresholds of self-consistency
+	Solvent  string  // of the semi-empirical tier; empty: the gas phase
 	Memory   int64   // bytes of the whole run
 }
 
@@ -54,7 +55,7 @@ func newTier(name string, o tierOptions) (screen.Tier, error) {
 	case tierForceField:
 		return forceField{}, nil
 	case tierSemiempirical:
-		return semiempiricalTier{semiempirical.Options{Accuracy: o.Accuracy}}, nil
+		return semiempiricalTier{semiempirical.Options{Accuracy: o.Accuracy, Solvent: o.Solvent}}, nil
 	case tierHF:
 		return newHFTier(o)
 	}
@@ -124,15 +125,31 @@ func (forceField) Scatter(m *molecule.Molecule) (ensemble.Scatter, bool) {
 // semiempiricalTier is tier 2.
 type semiempiricalTier struct{ options semiempirical.Options }
 
-func (semiempiricalTier) Name() string   { return tierSemiempirical }
-func (semiempiricalTier) Method() string { return "GFN2-xTB" }
+var _ screen.Solvated = semiempiricalTier{}
+
+func (semiempiricalTier) Name() string { return tierSemiempirical }
+
+func (t semiempiricalTier) Method() string {
+	if t.options.Solvent == "" {
+		return "GFN2-xTB"
+	}
+	return "GFN2-xTB with ALPB " + t.options.Solvent
+}
 
 func (t semiempiricalTier) Surface(m *molecule.Molecule) (screen.Surface, error) {
 	return semiempirical.New(m.Numbers(), m.Charge(), m.Multiplicity(), t.options)
 }
 
-// Memory counts some forty matrices over the valence basis.
-func (semiempiricalTier) Memory(m *molecule.Molecule) int64 {
+func (t semiempiricalTier) Solvent() string { return t.options.Solvent }
+
+func (t semiempiricalTier) Gas(m *molecule.Molecule) (screen.Surface, error) {
+	t.options.Solvent = ""
+	return t.Surface(m)
+}
+
+// Memory counts some forty matrices over the valence basis, and as many again
+// for the surface without the solvent.
+func (t semiempiricalTier) Memory(m *molecule.Molecule) int64 {
 	var n int64
 	for _, z := range m.Numbers() {
 		switch {
@@ -144,7 +161,11 @@ func (semiempiricalTier) Memory(m *molecule.Molecule) int64 {
 			n += 9
 		}
 	}
-	return 40*8*n*n + 4<<20
+	surfaces := int64(1)
+	if t.options.Solvent != "" {
+		surfaces = 2
+	}
+	return surfaces * (40*8*n*n + 4<<20)
 }
 
 func (semiempiricalTier) Scatter(m *molecule.Molecule) (ensemble.Scatter, bool) {

@@ -35,6 +35,7 @@ type check struct {
 	Atoms     []int     `json:"atoms"`   // from 1, for bond and angle
 	Final     string    `json:"final"`   // method of the hf tier
 	Basis     string    `json:"basis"`
+	Solvent   string    `json:"solvent"` // of the semi-empirical tier; empty: the gas phase
 	Charge    int       `json:"charge"`
 	Symbols   []string  `json:"symbols"`
 	XBohr     []float64 `json:"x_bohr"`
@@ -165,7 +166,7 @@ func (c check) compute(ctx context.Context) (float64, error) {
 	if c.Tier == tierForceField {
 		return c.relaxed(ctx, m)
 	}
-	tier, err := newTier(c.Tier, tierOptions{finalOptions: finalOptions{Final: c.Final, Basis: c.Basis}, Accuracy: 0.1})
+	tier, err := newTier(c.Tier, tierOptions{finalOptions: finalOptions{Final: c.Final, Basis: c.Basis}, Accuracy: 0.1, Solvent: c.Solvent})
 	if err != nil {
 		return 0, err
 	}

@@ -95,7 +95,11 @@ func conformerRow(r *screen.Result, i int, p *place) []string {
 	if p != nil {
 		final, temperature = energy(c.Final()), plain(p.weights.Temperature)
 	}
-	return append(row, final, "", "", strconv.Itoa(c.Family), r.Tiers[c.Last], c.Why, temperature, strings.Join(c.Doubts, "; "))
+	solvation := ""
+	if c.Solvated {
+		solvation = fixed(c.Solvation/units.KcalPerMol, 4)
+	}
+	return append(row, final, solvation, "", strconv.Itoa(c.Family), r.Tiers[c.Last], c.Why, temperature, strings.Join(c.Doubts, "; "))
 }
 
 // standing is rank, population, its bar, degeneracy and relative energy.
