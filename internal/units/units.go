@@ -18,15 +18,26 @@ const (
 	electronMass  = 9.1093837015e-31    // kg
 	elementary    = 1.602176634e-19     // C, exact
 	speedOfLight  = 299792458.0         // m/s, exact
+	planck        = 6.62607015e-34      // J s, exact
 	debyeCoulombM = 1e-21 / speedOfLight
 )
 
 // Lengths, energies, masses and moments in atomic units.
 const (
-	Angstrom     = 1e-10 / bohrMetre                        // bohr
-	KcalPerMol   = 4184 / avogadro / hartreeJoule           // hartree
-	ElectronVolt = electronvolt / hartreeJoule              // hartree
-	Kelvin       = boltzmann / hartreeJoule                 // hartree: k_B times one kelvin
-	Dalton       = atomicMass / electronMass                // electron masses
-	Debye        = debyeCoulombM / (elementary * bohrMetre) // e bohr
+	Angstrom     = 1e-10 / bohrMetre                          // bohr
+	KcalPerMol   = 4184 / avogadro / hartreeJoule             // hartree
+	ElectronVolt = electronvolt / hartreeJoule                // hartree
+	Kelvin       = boltzmann / hartreeJoule                   // hartree: k_B times one kelvin
+	Dalton       = atomicMass / electronMass                  // electron masses
+	Debye        = debyeCoulombM / (elementary * bohrMetre)   // e bohr
+	Wavenumber   = 100 * planck * speedOfLight / hartreeJoule // hartree: h c times one cm^-1
+)
+
+// Amounts per volume, pressures and moments of inertia in atomic units, for
+// thermodynamics.
+const (
+	Bar            = 1e5 * bohrMetre * bohrMetre * bohrMetre / hartreeJoule // hartree/bohr^3
+	MolPerLitre    = 1e3 * avogadro * bohrMetre * bohrMetre * bohrMetre     // particles/bohr^3
+	KilogramMetre2 = 1 / (electronMass * bohrMetre * bohrMetre)             // electron masses bohr^2
+	JoulePerMol    = 1 / avogadro / hartreeJoule                            // hartree
 )

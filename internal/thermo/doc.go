@@ -1,0 +1,61 @@
+// Package thermo adds to the energy of a minimum what its nuclei do at a
+// temperature: zero-point energy, enthalpy and entropy of the rigid rotor with
+// harmonic vibrations, in which soft vibrations turn into free rotations.
+//
+// The way is: Differences (the Hessian, 6N+1 gradients), NormalModes, Modes.Real
+// (is it a minimum?), then a Species, whose At gives the parts at any number of
+// temperatures for next to nothing.
+//
+// Source of the treatment of soft modes: S. Grimme, Chem. Eur. J. 2012, 18,
+// 9955, doi:10.1002/chem.201200497, eqs. 3 to 8; of the rest: D. A. McQuarrie,
+// Statistical Mechanics (1976), chapters 5, 6 and 8.
+//
+// # Units
+//
+// Atomic units: hartree, bohr, electron masses. A vibration is given by its
+// quantum h c nu in hartree, negative for an imaginary one; divided by
+// units.Wavenumber it is in cm^-1. Temperatures are kelvin, entropies
+// hartree/kelvin.
+//
+// # What is left out
+//
+// Anharmonicity, hindered rotation as such, electronic states above the ground
+// state (closed shells are assumed), nuclear spin, and the quantum nature of
+// rotation, which counts for H2 alone at room temperature. No frequency is
+// scaled.
+//
+// # Noise
+//
+// Seen with GFN2-xTB, a ligand of 29 atoms at 298.15 K (pdb-1p62 of the reference
+// molecules), each gradient started from its neighbour's state: G in kcal/mol
+// above that with a step of 0.01 bohr and accuracy 1e-4, in gas and in water.
+//
+//	step, bohr      0.001  0.002  0.005  0.010  0.020  0.030  0.050
+//	gas    1e-4     0.003  0.003  0.002  0     -0.010 -0.027 -0.090
+//	gas    0.1     -0.004  0.011  0.005  0.002 -0.009 -0.027 -0.090
+//	gas    1       -0.736 -0.224 -0.001 -0.008  0.001 -0.024 -0.088
+//	water  1e-4    -0.035 -0.031 -0.000  0     -0.007 -0.009 -0.044
+//	water  0.1     -0.026 -0.023  0.003  0.002 -0.007 -0.009 -0.044
+//	water  1       -0.782 -0.189  0.012  0.012  0.003 -0.004 -0.041
+//
+// So the step adds some 0.01 kcal/mol. In water the surface itself is the limit:
+// it is summed over directions that are fixed in space, and turning the molecule
+// before it is relaxed and differentiated moves G by 0.14 kcal/mol over six
+// orientations (29 atoms) and by 0.23 (50 atoms, csd-VIMYUL) at gradients of
+// 3e-6 hartree/bohr; by 0.22 and 0.35 at 1e-5; by 0.25 and 0.78 at 1e-4 (root
+// mean squares at which relaxation stops), for the soft modes are then off their
+// minima. In gas a relaxation to 1e-4 is within 0.01 kcal/mol. So relax to 1e-5
+// before Differences, and take no difference of 0.2 kcal/mol in water for real.
+//
+// # Symmetry and copies
+//
+// Rotational symmetry may be counted in one place only. Where an ensemble gives
+// each conformer a number of copies, common/sigma for its symmetry and 2 for a
+// mirror image that is not listed (screen/ensemble, Copies), the Species of every
+// conformer has Symmetry 1: then exp(-G/kT) times copies is the right weight.
+// With Symmetry sigma, G rises by kT ln sigma, and the copies would have to be
+// the mirror images alone. Mirror images have equal G, so that factor is never in
+// here. Symmetric rotors (methyl) are in neither: they multiply all conformers
+// alike. The absolute entropy of one symmetric compound, for comparison with a
+// table, needs its real Symmetry.
+package thermo
