@@ -4,7 +4,13 @@
 //
 // The way is: Differences (the Hessian, 6N+1 gradients), NormalModes, Modes.Real
 // (is it a minimum?), then a Species, whose At gives the parts at any number of
-// temperatures for next to nothing.
+// temperatures for next to nothing:
+//
+//	h, err := thermo.Differences(ctx, surface, x, 0)
+//	modes, err := thermo.NormalModes(h.Matrix, x, thermo.Masses(numbers, isotopes))
+//	quanta, turned, err := modes.Real()
+//	species := thermo.Species{Body: modes.Body, Symmetry: 1, Quanta: quanta}
+//	g := h.Energy + species.At(298.15, thermo.OneMolar).FreeEnergy()
 //
 // Source of the treatment of soft modes: S. Grimme, Chem. Eur. J. 2012, 18,
 // 9955, doi:10.1002/chem.201200497, eqs. 3 to 8; of the rest: D. A. McQuarrie,
@@ -38,7 +44,8 @@
 //	water  0.1     -0.026 -0.023  0.003  0.002 -0.007 -0.009 -0.044
 //	water  1       -0.782 -0.189  0.012  0.012  0.003 -0.004 -0.041
 //
-// So the step adds some 0.01 kcal/mol. In water the surface itself is the limit:
+// So the step adds some 0.01 kcal/mol in gas and 0.02 in water (0.03 with 50
+// atoms). In water the surface itself is the limit:
 // it is summed over directions that are fixed in space, and turning the molecule
 // before it is relaxed and differentiated moves G by 0.14 kcal/mol over six
 // orientations (29 atoms) and by 0.23 (50 atoms, csd-VIMYUL) at gradients of

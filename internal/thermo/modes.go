@@ -11,6 +11,8 @@ import (
 
 // Modes are the normal vibrations of a molecule.
 type Modes struct {
+	Body Body // the molecule as a rigid rotor
+
 	// Quanta h c nu in hartree, rising: imaginary ones, which are negative,
 	// first. There are 3N-6, 3N-5 of a linear molecule, none of an atom.
 	Quanta []float64
@@ -46,7 +48,7 @@ func NormalModes(hessian, x, masses []float64) (Modes, error) {
 	if err != nil {
 		return Modes{}, err
 	}
-	m := Modes{masses: masses}
+	m := Modes{Body: f.body, masses: masses}
 	a := weighted(hessian, masses)
 	motions := f.rigid(x, masses)
 	for _, v := range motions {
