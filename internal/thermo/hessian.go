@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"slices"
 
 	"torsieve/internal/relax"
 )
@@ -13,6 +14,11 @@ import (
 // loose self-consistency and the roughness in a solvent grow, above it the
 // anharmonicity.
 const DefaultStep = 0.01
+
+// Stationary is the gradient, root mean square of its components in hartree/bohr,
+// to which a geometry is to be relaxed before its Hessian is taken: soft modes
+// that are off their minimum are softer, or imaginary (package comment).
+const Stationary = 1e-5
 
 // A Hessian is the matrix of second derivatives of an energy, and what was seen
 // on the way to it.
@@ -48,7 +54,7 @@ func Differences(ctx context.Context, s relax.Surface, x []float64, step float64
 	}
 	n := len(x)
 	h := Hessian{Matrix: make([]float64, n*n), Gradients: 2*n + 1}
-	at, below := append([]float64(nil), x...), make([]float64, n)
+	at, below := slices.Clone(x), make([]float64, n)
 	energy, err := s.Gradient(ctx, below, x)
 	if err == nil {
 		err = finite(energy, below)

@@ -13,8 +13,8 @@ import (
 //
 // Its reason: a soft mode has little curvature, and a rough surface can turn its
 // sign. In water, GFN2-xTB gives rotations, whose curvature is none, 5 to 20
-// cm^-1 of either sign (package comment). The top of a methyl group's barrier
-// shows 100 to 300 cm^-1; that is a saddle. A mode in between that is taken as
+// cm^-1 of either sign. The top of a methyl group's barrier shows 100 to 300
+// cm^-1; that is a saddle. A mode in between that is taken as
 // real of the same magnitude, as is common practice, counts for about what any
 // soft mode counts for: from 10 to 50 cm^-1 its free energy at 298 K rises by
 // 0.46 kcal/mol, while leaving it out would make it 0.5 to 0.9 kcal/mol too high.

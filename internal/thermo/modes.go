@@ -3,6 +3,7 @@ package thermo
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"gonum.org/v1/gonum/floats"
 
@@ -22,8 +23,9 @@ type Modes struct {
 	Vectors []float64
 
 	// Rigid are the quanta that translations (three) and rotations would have
-	// as vibrations, hartree: 0 at a minimum of an exact surface. They were
-	// taken out before, and touch nothing.
+	// as vibrations, hartree: 0 at a minimum, but for noise, anharmonicity over
+	// the step and, in a solvent, the surface's own preference for an orientation.
+	// They were taken out before, and touch nothing.
 	Rigid []float64
 
 	masses []float64
@@ -48,14 +50,14 @@ func NormalModes(hessian, x, masses []float64) (Modes, error) {
 	if err != nil {
 		return Modes{}, err
 	}
-	m := Modes{Body: f.body, masses: masses}
+	m := Modes{Body: f.body, masses: slices.Clone(masses)}
 	a := weighted(hessian, masses)
 	motions := f.rigid(x, masses)
 	for _, v := range motions {
 		m.Rigid = append(m.Rigid, signedRoot(project(a, v)))
 	}
 	// Out of the way: above all vibrations.
-	shift := 2*largestRow(a, n) + math.SmallestNonzeroFloat64
+	shift := 2 * largestRow(a, n)
 	for _, v := range motions {
 		addOuter(a, v, shift)
 	}
@@ -75,7 +77,7 @@ func NormalModes(hessian, x, masses []float64) (Modes, error) {
 // that moves furthest moves by 1. Its sign is arbitrary.
 func (m *Modes) Motion(k int) []float64 {
 	n := 3 * len(m.masses)
-	d := append([]float64(nil), m.Vectors[k*n:k*n+n]...)
+	d := slices.Clone(m.Vectors[k*n : k*n+n])
 	var most float64
 	for i, mass := range m.masses {
 		r := d[3*i : 3*i+3]

@@ -73,8 +73,8 @@ func (s StandardState) volume(kT float64) float64 {
 	panic(fmt.Sprintf("thermo: unknown standard state %d", int(s)))
 }
 
-// At returns the functions at a temperature in kelvin. Panics for a temperature
-// or a symmetry number that is not greater than 0.
+// At returns the functions at a temperature in kelvin. Panics for a temperature,
+// a symmetry number or a quantum that is not greater than 0.
 func (s Species) At(temperature float64, state StandardState) Functions {
 	if !(temperature > 0) || math.IsInf(temperature, 0) || s.Symmetry < 1 {
 		panic(fmt.Sprintf("thermo: temperature %g K, symmetry number %d", temperature, s.Symmetry))
@@ -86,6 +86,9 @@ func (s Species) At(temperature float64, state StandardState) Functions {
 		Rotation:    rotation(s.Body, s.Symmetry, kT),
 	}
 	for _, quantum := range s.Quanta {
+		if !(quantum > 0) {
+			panic(fmt.Sprintf("thermo: quantum %g hartree", quantum))
+		}
 		f.ZeroPoint += quantum / 2
 		h := oscillator(quantum, kT)
 		f.Harmonic.Enthalpy += h.Enthalpy

@@ -129,3 +129,54 @@ func TestSymmetryNumber(t *testing.T) {
 		near(t, g.name, with.Enthalpy(), without.Enthalpy(), 0)
 	}
 }
+
+// Rotational constants follow from distances: carbon dioxide with r0 = 1.1621
+// angstrom has B0 = 0.3902 cm^-1, methane with 1.0940 has 5.241 (Herzberg 1945 and
+// 1966, from memory).
+func TestRotationalConstants(t *testing.T) {
+	const r, a = 1.1621, 1.0940 * 0.5773502692
+	for _, tc := range []struct {
+		numbers, isotopes []int
+		x                 []float64
+		b                 float64
+		moments           int
+	}{
+		{[]int{6, 8, 8}, []int{12, 16, 16}, []float64{0, 0, 0, 0.6 * r, 0.8 * r, 0, -0.6 * r, -0.8 * r, 0}, 0.3902, 2},
+		{[]int{6, 1, 1, 1, 1}, []int{12, 1, 1, 1, 1}, []float64{0, 0, 0, a, a, a, a, -a, -a, -a, a, -a, -a, -a, a}, 5.241, 3},
+	} {
+		for i := range tc.x {
+			tc.x[i] *= units.Angstrom
+		}
+		body, err := NewBody(tc.x, Masses(tc.numbers, tc.isotopes))
+		if err != nil || body.Axes != tc.moments {
+			t.Fatalf("%+v, %v", body, err)
+		}
+		for _, i := range body.Moments[3-tc.moments:] {
+			near(t, "B / cm^-1", 1/(2*i)/wavenumber/tc.b, 1, 2e-4)
+		}
+	}
+}
+
+// Mistakes of the caller are told at once.
+func TestMistakesPanic(t *testing.T) {
+	good := gases[3].species()
+	for name, mistake := range map[string]func(){
+		"temperature": func() { good.At(0, OneBar) },
+		"state":       func() { good.At(300, StandardState(7)) },
+		"symmetry":    func() { Species{Body: good.Body}.At(300, OneBar) },
+		"quantum":     func() { Species{Body: good.Body, Symmetry: 1, Quanta: []float64{-1e-3}}.At(300, OneBar) },
+		"masses":      func() { Masses([]int{1, 1}, []int{2}) },
+		"body":        func() { _, _ = NewBody(make([]float64, 6), []float64{1}) },
+		"Hessian":     func() { _, _ = NormalModes(make([]float64, 9), make([]float64, 6), []float64{1, 1}) },
+		"step":        func() { _, _ = Differences(t.Context(), newBowl(3), make([]float64, 3), -1) },
+	} {
+		t.Run(name, func(t *testing.T) {
+			defer func() {
+				if recover() == nil {
+					t.Error("no panic")
+				}
+			}()
+			mistake()
+		})
+	}
+}
