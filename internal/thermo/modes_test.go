@@ -171,3 +171,24 @@ func TestMasses(t *testing.T) {
 		near(t, "mass against mass number", m, float64(label[1]), 0.02)
 	}
 }
+
+// What is projected out is gone: a v = 0, the curvature along v was v'av, and what
+// lies at right angles is as it was.
+func TestProject(t *testing.T) {
+	b := newBowl(6)
+	a := slices.Clone(b.hessian)
+	v := []float64{0.5, -0.5, 0.5, 0.5, 0, 0}
+	w := []float64{0.5, 0.5, 0, 0, 0.5, 0.5} // at right angles to v
+	form := func(a, x, y []float64) float64 {
+		var sum float64
+		for i := range x {
+			sum += x[i] * floats.Dot(a[6*i:6*i+6], y)
+		}
+		return sum
+	}
+	near(t, "v'av", project(a, v), form(b.hessian, v, v), 1e-14)
+	near(t, "v'av afterwards", form(a, v, v), 0, 1e-14)
+	near(t, "w'av afterwards", form(a, w, v), 0, 1e-14)
+	near(t, "v'aw afterwards", form(a, v, w), 0, 1e-14)
+	near(t, "w'aw", form(a, w, w), form(b.hessian, w, w), 1e-14)
+}
