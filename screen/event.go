@@ -18,7 +18,7 @@ const (
 type Event struct {
 	Kind      Kind
 	Ligand    string
-	Tier      string        // Entered, Computed
+	Tier      string        // Entered, Computed: its name, or ThermalStage
 	Total     int           // Entered: conformers that the tier will look at
 	Conformer int           // Computed: its number
 	Took      time.Duration // Computed, Ended

@@ -8,6 +8,7 @@ import (
 	"time"
 
 	"torsieve/internal/relax"
+	"torsieve/internal/thermo"
 	"torsieve/internal/units"
 	"torsieve/screen/generate"
 )
@@ -19,6 +20,11 @@ type Options struct {
 	Temperatures []float64 // kelvin, the first one ranks; 298.15
 	Generate     generate.Options
 	Relax        relax.Settings // of the tiers that relax
+
+	// Thermal adds to the final energies the free energy of the nuclei
+	// (internal/thermo), from vibrations on the last tier that relaxes; that tier
+	// then relaxes further. It needs one above the force field.
+	Thermal bool
 
 	// MaxConformers caps what enters the second tier; 100. The generator's
 	// order makes any prefix the best choice of its size.
@@ -76,6 +82,16 @@ func (o Options) Check() error {
 		errs = append(errs, errors.New("no clock"))
 	}
 	return errors.Join(errs...)
+}
+
+// relaxation is Relax, as far as vibrations need it where they are asked for.
+func (o Options) relaxation() relax.Settings {
+	set := o.Relax
+	if o.Thermal {
+		set.RMSGradient = min(set.RMSGradient, thermo.Stationary)
+		set.MaxGradient = min(set.MaxGradient, 4*thermo.Stationary)
+	}
+	return set
 }
 
 const (

@@ -38,6 +38,11 @@ func (r *ligandRun) run(ctx context.Context) error {
 			return TierError(r.tiers[tier], err)
 		}
 	}
+	if r.options.Thermal {
+		if err := r.thermal(ctx); err != nil {
+			return fmt.Errorf("thermal: %w", err)
+		}
+	}
 	r.weigh()
 	return nil
 }
@@ -100,8 +105,9 @@ func (r *ligandRun) generate(ctx context.Context) error {
 func (r *ligandRun) climb(ctx context.Context, tier int) error {
 	up := r.promote(tier)
 	r.result.Entered[tier] = len(up)
-	r.tellEntered(tier, len(up))
-	outcomes, err := r.compute(ctx, tier, up)
+	name := r.tiers[tier].Name()
+	r.tellEntered(name, len(up))
+	outcomes, err := r.compute(ctx, tier, name, up, r.one)
 	if err != nil {
 		return err
 	}

@@ -40,12 +40,26 @@ type Conformer struct {
 	Solvation float64
 	Solvated  bool
 	Beside    float64
+
+	// Thermal is what the nuclei add to the free energy, hartree, by temperature
+	// of the run; nil where it was not asked for.
+	Thermal []float64
 }
 
-// Final is the energy that ranks, in hartree: the last tier's at the geometry
-// of the last tier that relaxes, and the solvation that the last tier does not
-// know itself.
-func (c *Conformer) Final() float64 { return c.Energies[c.Last] + c.Beside }
+// Final is the energy that ranks, in hartree: FinalAt the first temperature.
+func (c *Conformer) Final() float64 { return c.FinalAt(0) }
+
+// FinalAt is the energy that weighs at a temperature of the run, by index, in
+// hartree: the last tier's at the geometry of the last tier that relaxes, the
+// solvation that the last tier does not know itself, and, where it was asked
+// for, the free energy of the nuclei.
+func (c *Conformer) FinalAt(t int) float64 {
+	e := c.Energies[c.Last] + c.Beside
+	if c.Thermal != nil {
+		e += c.Thermal[t]
+	}
+	return e
+}
 
 // A Result is what became of one ligand.
 type Result struct {

@@ -123,13 +123,13 @@ func (m *machine) tellFault(l *Ligand, err error) {
 	}
 }
 
-func (r *ligandRun) tellEntered(tier, total int) {
-	r.tell(Event{Kind: Entered, Ligand: r.ligand.ID, Tier: r.tiers[tier].Name(), Total: total})
+func (r *ligandRun) tellEntered(stage string, total int) {
+	r.tell(Event{Kind: Entered, Ligand: r.ligand.ID, Tier: stage, Total: total})
 }
 
-func (r *ligandRun) tellComputed(tier int, c *Conformer, o outcome) {
+func (r *ligandRun) tellComputed(stage string, c *Conformer, o outcome) {
 	e := Event{
-		Kind: Computed, Ligand: r.ligand.ID, Tier: r.tiers[tier].Name(),
+		Kind: Computed, Ligand: r.ligand.ID, Tier: stage,
 		Conformer: c.Number, Took: o.took, Energy: o.energy, Gradients: o.gradients, Err: o.err,
 	}
 	var fault *Fault

@@ -10,6 +10,7 @@ import (
 
 	"golang.org/x/sync/errgroup"
 
+	"torsieve/internal/geom"
 	"torsieve/internal/relax"
 	"torsieve/molecule"
 	"torsieve/molecule/load"
@@ -26,13 +27,18 @@ type outcome struct {
 	err       error
 	took      time.Duration
 
-	gradients int // of a relaxation
+	thermal   []float64 // hartree, by temperature; nil where not asked for
+	gradients int       // of a relaxation, or of a Hessian
 }
 
-// compute gives every conformer in which to a surface of the tier. out[i]
-// belongs to which[i] however the work was dealt out. Only a tier that cannot
-// take the molecule at all, or the end of ctx, ends it early.
-func (r *ligandRun) compute(ctx context.Context, tier int, which []int) ([]outcome, error) {
+// A task is what is done for a conformer on a workplace.
+type task func(ctx context.Context, p *workplace, c *Conformer) outcome
+
+// compute does the task for every conformer in which on a surface of the tier.
+// out[i] belongs to which[i] however the work was dealt out. Only a tier that
+// cannot take the molecule at all, or the end of ctx, ends it early. The stage is
+// the name under which it is told.
+func (r *ligandRun) compute(ctx context.Context, tier int, stage string, which []int, do task) ([]outcome, error) {
 	out := make([]outcome, len(which))
 	workers := min(len(which), r.options.Jobs)
 	g, ctx := errgroup.WithContext(ctx)
@@ -44,7 +50,10 @@ func (r *ligandRun) compute(ctx context.Context, tier int, which []int) ([]outco
 				return err
 			}
 			defer release()
-			return r.work(ctx, tier, which, &next, out)
+			return r.work(ctx, tier, which, do, &next, func(i int, o outcome) {
+				out[i] = o
+				r.tellComputed(stage, &r.conformers[which[i]], o)
+			})
 		})
 	}
 	err := g.Wait()
@@ -53,7 +62,7 @@ func (r *ligandRun) compute(ctx context.Context, tier int, which []int) ([]outco
 
 // work is one worker of compute: a surface of its own, and the next conformer
 // until there is none.
-func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomic.Int64, out []outcome) error {
+func (r *ligandRun) work(ctx context.Context, tier int, which []int, do task, next *atomic.Int64, done func(i int, o outcome)) error {
 	var place *workplace
 	for {
 		i := int(next.Add(1)) - 1
@@ -69,22 +78,21 @@ func (r *ligandRun) work(ctx context.Context, tier int, which []int, next *atomi
 				return err
 			}
 		}
-		c := &r.conformers[which[i]]
-		var took time.Duration
+		var o outcome
 		err := r.pool.unit(ctx, func() error {
 			begun := r.options.Clock()
-			defer func() { took = r.options.Clock().Sub(begun) }()
-			out[i] = r.one(ctx, place, c)
-			return out[i].err
+			o = do(ctx, place, &r.conformers[which[i]])
+			o.took = r.options.Clock().Sub(begun)
+			return o.err
 		})
 		if ctx.Err() != nil {
 			return ctx.Err()
 		}
-		out[i].err, out[i].took = err, took
+		o.err = err
 		if errors.As(err, new(*Fault)) {
 			place = nil // whatever state it was left in
 		}
-		r.tellComputed(tier, c, out[i])
+		done(i, o)
 	}
 }
 
@@ -147,7 +155,9 @@ func (p *workplace) dry(ctx context.Context, out *outcome) {
 
 func (r *ligandRun) relaxed(ctx context.Context, surface Sloped, from []float64) outcome {
 	x := offSaddle(r.ligand.Mol, from)
-	set := r.options.Relax
+	// A solvent's surface may depend a little on how the molecule lies.
+	geom.ToPrincipalAxes(x)
+	set := r.options.relaxation()
 	set.Numbers = r.ligand.Mol.Numbers()
 	p, res, err := Relax(ctx, surface, x, set)
 	if err != nil {
@@ -156,16 +166,21 @@ func (r *ligandRun) relaxed(ctx context.Context, surface Sloped, from []float64)
 	return outcome{x: x, energy: p.Energy, doubts: p.Warnings, gradients: res.Gradients}
 }
 
+// slope is a surface as the optimiser sees it; the whole answer of the last call
+// is in last.
+func slope(surface Sloped, last *molecule.Point) relax.Func {
+	return func(ctx context.Context, grad, x []float64) (float64, error) {
+		p, err := surface.Gradient(ctx, grad, x)
+		*last = p
+		return p.Energy, err
+	}
+}
+
 // Relax moves x downhill on the surface, in place, and returns the point that
 // was reached, and how. A relaxation that did not converge is an error.
 func Relax(ctx context.Context, surface Sloped, x []float64, set relax.Settings) (molecule.Point, relax.Result, error) {
 	var last molecule.Point
-	slope := relax.Func(func(ctx context.Context, grad, x []float64) (float64, error) {
-		p, err := surface.Gradient(ctx, grad, x)
-		last = p
-		return p.Energy, err
-	})
-	res, err := relax.Minimise(ctx, slope, x, set)
+	res, err := relax.Minimise(ctx, slope(surface, &last), x, set)
 	if err == nil {
 		err = res.Status.Err()
 	}

@@ -22,16 +22,14 @@ func (r *ligandRun) weigh() {
 	if !complete {
 		r.warnf("the molecule has more symmetry than was searched: degeneracies count mirror images alone")
 	}
-	states := make([]ensemble.State, len(kept))
 	for k, i := range kept {
 		c := &r.conformers[i]
 		c.Rank, c.Copies, c.Why = k+1, copies[k], "kept"
-		states[k] = ensemble.State{Energy: c.Final(), Copies: float64(c.Copies)}
 	}
 	r.result.Kept = kept
 	r.tellDoubts()
-	for _, t := range r.options.Temperatures {
-		r.result.Ensembles = append(r.result.Ensembles, r.weights(states, t))
+	for t := range r.options.Temperatures {
+		r.result.Ensembles = append(r.result.Ensembles, r.weights(t))
 	}
 	r.superpose(kept)
 }
@@ -53,7 +51,14 @@ func (r *ligandRun) tellDoubts() {
 	}
 }
 
-func (r *ligandRun) weights(states []ensemble.State, t float64) Weights {
+// weights is the ensemble at a temperature of the run, by index.
+func (r *ligandRun) weights(index int) Weights {
+	t := r.options.Temperatures[index]
+	states := make([]ensemble.State, len(r.result.Kept))
+	for k, i := range r.result.Kept {
+		c := &r.conformers[i]
+		states[k] = ensemble.State{Energy: c.FinalAt(index), Copies: float64(c.Copies)}
+	}
 	w := Weights{Distribution: ensemble.Weigh(states, t)}
 	if scatter, known := r.tiers[len(r.tiers)-1].Scatter(r.ligand.Mol); known {
 		w.Bars = ensemble.Bars(states, t, scatter, [2]uint64{r.options.Seed, hash(searchedOf(r.ligand.Mol))})

@@ -25,6 +25,7 @@ type screenCommand struct {
 	MaxConformers int       `group:"Methods" help:"Cap on the conformers that enter the semi-empirical tier (default: ${default})." default:"${max_conformers}" placeholder:"N"`
 	Window        *float64  `group:"Methods" help:"Energy window for the last tier (default: 5 to 10, by the rotatable bonds)." placeholder:"KCAL"`
 	Temperature   []float64 `group:"Methods" help:"Temperature of the ensemble; may be repeated, the first one ranks (default: ${default})." default:"298.15" placeholder:"K"`
+	Thermal       bool      `group:"Methods" help:"Add the free energy of the nuclei (quasi-RRHO), from vibrations at the semi-empirical level: six gradients per atom and conformer."`
 	Accuracy      float64   `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
 
 	Log string `group:"Work" help:"Log of every step, JSON lines (default: log.jsonl in the run folder)." placeholder:"FILE"`
@@ -72,7 +73,11 @@ func (c *screenCommand) Run(s *session) error {
 func (c *screenCommand) compute(s *session, ligands []*screen.Ligand, tiers []screen.Tier, o screen.Options,
 	folder *report.Folder, run *report.Run, log *logger,
 ) error {
-	watch := newWatcher(s.voice, log, ligands, len(tiers))
+	stages := len(tiers)
+	if o.Thermal {
+		stages++
+	}
+	watch := newWatcher(s.voice, log, ligands, stages)
 	o.Watch = watch.see
 	err := screen.Run(s.ctx, ligands, tiers, o, func(r *screen.Result) error {
 		run.Counts.Add(r.Status)
@@ -110,11 +115,14 @@ func (c *screenCommand) settings() ([]screen.Tier, screen.Options, error) {
 	if err != nil {
 		return nil, o, err
 	}
+	if o.Thermal = c.Thermal; o.Thermal && c.Through == tierForceField {
+		return nil, o, nothing(screen.ErrNoVibrations, "go --through semiempirical or hf")
+	}
 	if err := o.Check(); err != nil {
 		return nil, o, nothing(err, "")
 	}
 	tiers, err := tiersThrough(c.Through, tierOptions{
-		finalOptions: c.Final, Accuracy: c.Accuracy, Solvent: solvent, Memory: o.Memory,
+		finalOptions: c.Final, Accuracy: c.Accuracy, Solvent: solvent, Memory: o.Memory, Steep: o.Thermal,
 	})
 	return tiers, o, err
 }
@@ -156,6 +164,9 @@ func (c *screenCommand) describe(s *session, tiers []screen.Tier, inputs []repor
 	for _, t := range tiers {
 		run.Methods[t.Name()] = t.Method()
 	}
+	if c.Thermal {
+		run.Methods[screen.ThermalStage] = "quasi-rigid-rotor-harmonic-oscillator (Grimme 2012) at the semi-empirical level"
+	}
 	return run
 }
 
@@ -163,7 +174,7 @@ func (c *screenCommand) describe(s *session, tiers []screen.Tier, inputs []repor
 func (c *screenCommand) values() map[string]any {
 	return map[string]any{
 		"through": c.Through, "max-conformers": c.MaxConformers, "window": c.Window,
-		"temperature": c.Temperature, "accuracy": c.Accuracy,
+		"temperature": c.Temperature, "thermal": c.Thermal, "accuracy": c.Accuracy,
 		"final": c.Final.Final, "basis": c.Final.Basis, "solvent": c.Solvent.Solvent,
 		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Seed.Seed, "memory": int64(c.Memory.Memory),
 		"portable": c.Cores.Portable,

@@ -31,6 +31,7 @@ type tierOptions struct {
 	Accuracy float64 // factor on the thresholds of self-consistency
 	Solvent  string  // of the semi-empirical tier; empty: the gas phase
 	Memory   int64   // bytes of the whole run
+	Steep    bool    // the semi-empirical gradients must be good enough for vibrations
 }
 
 // tiersThrough returns the tiers of a run, up to the one named.
@@ -55,12 +56,19 @@ func newTier(name string, o tierOptions) (screen.Tier, error) {
 	case tierForceField:
 		return forceField{}, nil
 	case tierSemiempirical:
-		return semiempiricalTier{semiempirical.Options{Accuracy: o.Accuracy, Solvent: o.Solvent}}, nil
+		accuracy := o.Accuracy
+		if o.Steep {
+			accuracy = min(accuracy, steepAccuracy)
+		}
+		return semiempiricalTier{semiempirical.Options{Accuracy: accuracy, Solvent: o.Solvent}}, nil
 	case tierHF:
 		return newHFTier(o)
 	}
 	panic("no tier is named " + name)
 }
+
+// steepAccuracy lets a relaxation reach the gradient that vibrations start from.
+const steepAccuracy = 0.1
 
 // forceField is tier 1.
 type forceField struct{}

@@ -25,9 +25,9 @@ type stage struct {
 	seen, total int // conformers
 }
 
-func newWatcher(v *voice, log *logger, ligands []*screen.Ligand, tiers int) *watcher {
+func newWatcher(v *voice, log *logger, ligands []*screen.Ligand, stages int) *watcher {
 	return &watcher{
-		voice: v, log: log, progress: newProgress(v), ligands: len(ligands), perTier: 1 / float64(tiers),
+		voice: v, log: log, progress: newProgress(v), ligands: len(ligands), perTier: 1 / float64(stages),
 		share: map[string]float64{}, inTier: map[string]*stage{},
 	}
 }

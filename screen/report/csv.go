@@ -67,7 +67,7 @@ func conformerRows(r *screen.Result) [][]string {
 	var rows [][]string
 	for k, i := range r.Kept {
 		for t := range r.Ensembles {
-			rows = append(rows, conformerRow(r, i, &place{rank: k, weights: &r.Ensembles[t]}))
+			rows = append(rows, conformerRow(r, i, &place{rank: k, temperature: t, weights: &r.Ensembles[t]}))
 		}
 	}
 	for i := range r.Conformers {
@@ -80,8 +80,9 @@ func conformerRows(r *screen.Result) [][]string {
 
 // A place is where a kept conformer stands in the ensemble of one temperature.
 type place struct {
-	rank    int // from 0
-	weights *screen.Weights
+	rank        int // from 0
+	temperature int // index
+	weights     *screen.Weights
 }
 
 func conformerRow(r *screen.Result, i int, p *place) []string {
@@ -93,13 +94,16 @@ func conformerRow(r *screen.Result, i int, p *place) []string {
 	}
 	final, temperature := "", ""
 	if p != nil {
-		final, temperature = energy(c.Final()), plain(p.weights.Temperature)
+		final, temperature = energy(c.FinalAt(p.temperature)), plain(p.weights.Temperature)
 	}
-	solvation := ""
+	solvation, thermal := "", ""
+	if p != nil && c.Thermal != nil {
+		thermal = fixed(c.Thermal[p.temperature]/units.KcalPerMol, 4)
+	}
 	if c.Solvated {
 		solvation = fixed(c.Solvation/units.KcalPerMol, 4)
 	}
-	return append(row, final, solvation, "", strconv.Itoa(c.Family), r.Tiers[c.Last], c.Why, temperature, strings.Join(c.Doubts, "; "))
+	return append(row, final, solvation, thermal, strconv.Itoa(c.Family), r.Tiers[c.Last], c.Why, temperature, strings.Join(c.Doubts, "; "))
 }
 
 // standing is rank, population, its bar, degeneracy and relative energy.
@@ -111,11 +115,20 @@ func standing(r *screen.Result, c *screen.Conformer, p *place) []string {
 	if p.weights.Bars != nil {
 		low, high = population(p.weights.Bars[p.rank].Low), population(p.weights.Bars[p.rank].High)
 	}
-	above := (c.Final() - r.Conformers[r.Kept[0]].Final()) / units.KcalPerMol
+	above := (c.FinalAt(p.temperature) - lowest(r, p.temperature)) / units.KcalPerMol
 	return []string{
 		strconv.Itoa(c.Rank), population(p.weights.Populations[p.rank]), low, high,
 		strconv.Itoa(c.Copies), fixed(above, 4),
 	}
+}
+
+// lowest is the lowest final energy at a temperature, by index.
+func lowest(r *screen.Result, temperature int) float64 {
+	low := math.Inf(1)
+	for _, i := range r.Kept {
+		low = min(low, r.Conformers[i].FinalAt(temperature))
+	}
+	return low
 }
 
 func tierEnergy(r *screen.Result, c *screen.Conformer, tier string) string {
