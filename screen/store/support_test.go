@@ -36,7 +36,7 @@ func everywhere(t *testing.T, test func(*testing.T, place)) {
 }
 
 // newSchema returns the URL of a schema that nobody has, which goes with the test.
-func newSchema(t *testing.T, server string) string {
+func newSchema(t testing.TB, server string) string {
 	t.Helper()
 	u, err := url.Parse(server)
 	if err != nil {
