@@ -22,11 +22,12 @@ var mayImport = map[string]string{
 	"dedupe":          "internal molecule",
 	"screen/ensemble": "internal molecule",
 	"screen/generate": "internal molecule forcefield dedupe",
-	"screen":          "internal molecule dedupe screen/generate screen/ensemble",
+	"screen":          "internal molecule dedupe screen/generate screen/ensemble screen/store",
+	"screen/store":    "internal",
 	"screen/tiertest": "internal molecule screen",
 	"screen/report":   "internal molecule screen screen/ensemble",
 	"cmd": "internal molecule forcefield semiempirical hf dedupe screen " +
-		"screen/generate screen/ensemble screen/report",
+		"screen/generate screen/ensemble screen/report screen/store",
 }
 
 // forTestsOnly are packages that no program may contain.

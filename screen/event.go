@@ -24,6 +24,7 @@ type Event struct {
 	Took      time.Duration // Computed, Ended
 	Energy    float64       // Computed: hartree
 	Gradients int           // Computed: of a relaxation, else 0
+	Stored    bool          // Computed: by an earlier run
 	Err       error         // Computed: why there is no energy
 	Stack     string        // where a fault of the program happened, else ""
 	Result    *Result       // Ended; not to be changed or kept

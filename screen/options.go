@@ -11,6 +11,7 @@ import (
 	"torsieve/internal/thermo"
 	"torsieve/internal/units"
 	"torsieve/screen/generate"
+	"torsieve/screen/store"
 )
 
 // Options are the settings of a run. Start from Defaults, change fields, and
@@ -33,6 +34,12 @@ type Options struct {
 	// this far above the lowest, hartree. 0 means WindowFor, which grows with
 	// the rotatable bonds.
 	Window float64
+
+	// Store is where finished units of work are kept and looked up; nil keeps
+	// nothing. Version is the program's: results of another one are not taken.
+	// Begun is for a reader of the store, RFC 3339.
+	Store          *store.Store
+	Version, Begun string
 
 	Seed   uint64 // of all random choices, also of Generate's; 0
 	Jobs   int    // units of work at a time; all cores

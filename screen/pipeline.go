@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"time"
 
 	"torsieve/dedupe"
 	"torsieve/screen/generate"
@@ -21,6 +22,7 @@ import (
 type ligandRun struct {
 	*machine
 	ligand     *Ligand
+	account    *account // nil: nothing is remembered
 	comparer   *dedupe.Comparer
 	conformers []Conformer
 	result     *Result
@@ -71,15 +73,8 @@ func (r *ligandRun) accept() error {
 
 // generate finds the shapes and relaxes them in the force field.
 func (r *ligandRun) generate(ctx context.Context) error {
-	var found generate.Result
-	begun := r.options.Clock()
-	err := r.pool.unit(ctx, func() (err error) {
-		o := r.options.Generate
-		o.Seed = r.options.Seed
-		found, err = Shapes(ctx, r.ligand, o)
-		return err
-	})
-	r.result.Took[0] = r.options.Clock().Sub(begun)
+	found, took, err := r.shapes(ctx)
+	r.result.Took[0] = took
 	if err != nil {
 		return err
 	}
@@ -98,6 +93,30 @@ func (r *ligandRun) generate(ctx context.Context) error {
 	r.result.Entered[0] = len(found.Conformers)
 	r.dropDoubles(0, r.alive(0))
 	return nil
+}
+
+// shapes looks the generator's answer up, or makes it and writes it down.
+func (r *ligandRun) shapes(ctx context.Context) (found generate.Result, took time.Duration, err error) {
+	stage := r.tiers[0].Name()
+	found, took, failed, known, err := r.account.shapes(ctx, stage)
+	if known || err != nil {
+		return found, took, errors.Join(err, failed)
+	}
+	begun := r.options.Clock()
+	err = r.pool.unit(ctx, func() (err error) {
+		o := r.options.Generate
+		o.Seed = r.options.Seed
+		found, err = Shapes(ctx, r.ligand, o)
+		return err
+	})
+	took = r.options.Clock().Sub(begun)
+	if ctx.Err() != nil {
+		return found, took, ctx.Err()
+	}
+	if keepErr := r.account.keepShapes(ctx, stage, found, took, err); keepErr != nil {
+		return found, took, keepErr
+	}
+	return found, took, err
 }
 
 // climb takes the conformers that may go up to a tier and brings back those

@@ -21,6 +21,7 @@ type machine struct {
 	tiers   []Tier
 	options Options
 	pool    *pool
+	ledger  *ledger    // nil: nothing is remembered
 	telling sync.Mutex // Watch and keep are called by one goroutine at a time
 }
 
@@ -34,16 +35,28 @@ type machine struct {
 // enantiomers, are computed once. When ctx ends, Run returns ctx's cause after keep has been told
 // of the ligands that were not finished.
 //
+// With o.Store every finished unit of work is kept as soon as it is done, and
+// what stands there from an earlier run with the same settings is not computed
+// again. An error of the store is a *StoreError and stops all.
+//
 // Results are a function of the ligands, the tiers and the options, not of
 // Jobs, Memory, the clock or the order of ending.
 func Run(ctx context.Context, ligands []*Ligand, tiers []Tier, o Options, keep func(*Result) error) error {
 	if err := o.Check(); err != nil {
 		return err
 	}
-	m := &machine{tiers: tiers, options: o, pool: newPool(o.Jobs, o.Memory)}
+	all := groups(ligands)
+	ledger, err := openLedger(ctx, all, tiers, o)
+	if err != nil {
+		return err
+	}
+	if all, err = ledger.finishedFirst(ctx, all); err != nil {
+		return err
+	}
+	m := &machine{tiers: tiers, options: o, pool: newPool(o.Jobs, o.Memory), ledger: ledger}
 	g, inner := errgroup.WithContext(ctx)
 	g.SetLimit(o.Jobs) // more ligands at a time would only be finished later
-	for _, same := range groups(ligands) {
+	for _, same := range all {
 		g.Go(func() error { return m.group(inner, same, keep) })
 	}
 	if err := g.Wait(); err != nil {
@@ -57,7 +70,11 @@ func Run(ctx context.Context, ligands []*Ligand, tiers []Tier, o Options, keep f
 
 // group computes the first ligand and hands its result to all.
 func (m *machine) group(ctx context.Context, g *group, keep func(*Result) error) error {
-	results := []*Result{m.ligand(ctx, g.first)}
+	first, err := m.ligand(ctx, g.first)
+	if err != nil {
+		return err
+	}
+	results := []*Result{first}
 	for _, l := range g.others {
 		results = append(results, results[0].sharedWith(l))
 	}
@@ -76,22 +93,29 @@ func (m *machine) end(res *Result, keep func(*Result) error) error {
 	return keep(res)
 }
 
-// ligand computes one ligand and never fails: what goes wrong is in the result.
-func (m *machine) ligand(ctx context.Context, l *Ligand) *Result {
+// ligand computes one ligand. What goes wrong with it is in the result; the error
+// is the ledger's, which concerns all.
+func (m *machine) ligand(ctx context.Context, l *Ligand) (*Result, error) {
 	n := len(m.tiers)
 	res := &Result{Ligand: l, Mol: l.Mol, Status: Done, Tiers: names(m.tiers), Entered: make([]int, n), Took: make([]time.Duration, n)}
 	res.Warnings = append(res.Warnings, l.Warnings...)
 	if l.Err != nil {
 		res.Status, res.Reason = l.Status, l.Err.Error()
-		return res
+		return res, nil
 	}
 	if ctx.Err() != nil {
 		res.Status, res.Reason = Stopped, "the run was stopped before its turn"
-		return res
+		return res, nil
 	}
 	m.tell(Event{Kind: Begun, Ligand: l.ID})
-	r := &ligandRun{machine: m, ligand: l, result: res, comparer: dedupe.NewComparer(l.Mol, dedupe.Options{PolarHydrogens: true})}
+	r := &ligandRun{
+		machine: m, ligand: l, result: res, account: m.ledger.account(l),
+		comparer: dedupe.NewComparer(l.Mol, dedupe.Options{PolarHydrogens: true}),
+	}
 	err := Guard(func() error { return r.run(ctx) })
+	if errors.As(err, new(*StoreError)) {
+		return nil, err
+	}
 	res.Conformers = r.conformers
 	switch {
 	case err == nil:
@@ -103,7 +127,7 @@ func (m *machine) ligand(ctx context.Context, l *Ligand) *Result {
 		res.Status, res.Reason = Failed, err.Error()
 		m.tellFault(l, err)
 	}
-	return res
+	return res, r.account.keepEnd(ctx, res)
 }
 
 func (m *machine) tell(e Event) {
@@ -127,9 +151,9 @@ func (r *ligandRun) tellEntered(stage string, total int) {
 	r.tell(Event{Kind: Entered, Ligand: r.ligand.ID, Tier: stage, Total: total})
 }
 
-func (r *ligandRun) tellComputed(stage string, c *Conformer, o outcome) {
+func (r *ligandRun) tellComputed(stage string, c *Conformer, o outcome, stored bool) {
 	e := Event{
-		Kind: Computed, Ligand: r.ligand.ID, Tier: stage,
+		Kind: Computed, Ligand: r.ligand.ID, Tier: stage, Stored: stored,
 		Conformer: c.Number, Took: o.took, Energy: o.energy, Gradients: o.gradients, Err: o.err,
 	}
 	var fault *Fault

@@ -12,6 +12,7 @@ import (
 
 	"torsieve/internal/geom"
 	"torsieve/internal/relax"
+	"torsieve/internal/thermo"
 	"torsieve/molecule"
 	"torsieve/molecule/load"
 )
@@ -27,20 +28,41 @@ type outcome struct {
 	err       error
 	took      time.Duration
 
-	thermal   []float64 // hartree, by temperature; nil where not asked for
-	gradients int       // of a relaxation, or of a Hessian
+	modes     *thermo.Modes // vibrations, where they were asked for
+	gradients int           // of a relaxation, or of a Hessian
 }
 
 // A task is what is done for a conformer on a workplace.
 type task func(ctx context.Context, p *workplace, c *Conformer) outcome
 
-// compute does the task for every conformer in which on a surface of the tier.
-// out[i] belongs to which[i] however the work was dealt out. Only a tier that
-// cannot take the molecule at all, or the end of ctx, ends it early. The stage is
-// the name under which it is told.
+// compute does the task for every conformer in which on a surface of the tier,
+// unless the ledger has its answer under the stage's name. out[i] belongs to
+// which[i] however the work was dealt out. Only a tier that cannot take the
+// molecule at all, the ledger or the end of ctx ends it early.
 func (r *ligandRun) compute(ctx context.Context, tier int, stage string, which []int, do task) ([]outcome, error) {
 	out := make([]outcome, len(which))
-	workers := min(len(which), r.options.Jobs)
+	known, err := r.account.outcomes(ctx, stage)
+	if err != nil {
+		return nil, err
+	}
+	var left []int // of out
+	for k, i := range which {
+		c := &r.conformers[i]
+		o, there := known[c.Number]
+		if !there {
+			left = append(left, k)
+			continue
+		}
+		if o.x == nil {
+			o.x = c.X
+		}
+		out[k] = o
+		r.tellComputed(stage, c, o, true)
+	}
+	if len(left) == 0 {
+		return out, nil
+	}
+	workers := min(len(left), r.options.Jobs)
 	g, ctx := errgroup.WithContext(ctx)
 	var next atomic.Int64
 	for range workers {
@@ -50,50 +72,63 @@ func (r *ligandRun) compute(ctx context.Context, tier int, stage string, which [
 				return err
 			}
 			defer release()
-			return r.work(ctx, tier, which, do, &next, func(i int, o outcome) {
-				out[i] = o
-				r.tellComputed(stage, &r.conformers[which[i]], o)
-			})
+			w := worker{run: r, tier: tier, do: do}
+			for {
+				n := int(next.Add(1)) - 1
+				if n >= len(left) {
+					return nil
+				}
+				k := left[n]
+				c := &r.conformers[which[k]]
+				if out[k], err = w.compute(ctx, c); err != nil {
+					return err
+				}
+				if err := r.account.keep(ctx, stage, c, out[k]); err != nil {
+					return err
+				}
+				r.tellComputed(stage, c, out[k], false)
+			}
 		})
 	}
-	err := g.Wait()
+	err = g.Wait()
 	return out, err
 }
 
-// work is one worker of compute: a surface of its own, and the next conformer
-// until there is none.
-func (r *ligandRun) work(ctx context.Context, tier int, which []int, do task, next *atomic.Int64, done func(i int, o outcome)) error {
-	var place *workplace
-	for {
-		i := int(next.Add(1)) - 1
-		if i >= len(which) {
-			return nil
-		}
-		if place == nil {
-			err := r.pool.unit(ctx, func() (err error) {
-				place, err = newWorkplace(r.tiers[tier], r.ligand.Mol)
-				return err
-			})
-			if err != nil {
-				return err
-			}
-		}
-		var o outcome
-		err := r.pool.unit(ctx, func() error {
-			begun := r.options.Clock()
-			o = do(ctx, place, &r.conformers[which[i]])
-			o.took = r.options.Clock().Sub(begun)
-			return o.err
+// A worker computes conformers one after the other on a workplace of its own.
+type worker struct {
+	run   *ligandRun
+	tier  int
+	do    task
+	place *workplace // nil before the first
+}
+
+// compute does the worker's task for a conformer. What goes wrong with it is in
+// the outcome; the error is about the tier and the molecule, or ctx.
+func (w *worker) compute(ctx context.Context, c *Conformer) (o outcome, err error) {
+	r := w.run
+	if w.place == nil {
+		err := r.pool.unit(ctx, func() (err error) {
+			w.place, err = newWorkplace(r.tiers[w.tier], r.ligand.Mol)
+			return err
 		})
-		if ctx.Err() != nil {
-			return ctx.Err()
+		if err != nil {
+			return o, err
 		}
-		o.err = err
-		if errors.As(err, new(*Fault)) {
-			place = nil // whatever state it was left in
-		}
-		done(i, o)
 	}
+	err = r.pool.unit(ctx, func() error {
+		begun := r.options.Clock()
+		o = w.do(ctx, w.place, c)
+		o.took = r.options.Clock().Sub(begun)
+		return o.err
+	})
+	if ctx.Err() != nil {
+		return o, ctx.Err()
+	}
+	o.err = err
+	if errors.As(err, new(*Fault)) {
+		w.place = nil // whatever state it was left in
+	}
+	return o, nil
 }
 
 // A workplace is what a worker computes on: a surface of the tier, and where

@@ -23,6 +23,7 @@ type fieldTier struct {
 
 func (t fieldTier) Name() string                    { return t.name }
 func (t fieldTier) Method() string                  { return "UFF" }
+func (t fieldTier) Settings() string                { return "UFF" }
 func (t fieldTier) Memory(*molecule.Molecule) int64 { return 1 << 20 }
 func (t fieldTier) Scatter(*molecule.Molecule) (ensemble.Scatter, bool) {
 	return ensemble.Scatter{Scale: 0.3 * units.KcalPerMol, Freedom: 2}, true

@@ -34,14 +34,16 @@ func (r *ligandRun) thermal(ctx context.Context) error {
 	for k, i := range which {
 		c, o := &r.conformers[i], outcomes[k]
 		r.result.Took[tier] += o.took
-		if o.err == nil {
-			c.Thermal = o.thermal
-			c.Doubts = append(c.Doubts, o.doubts...)
+		err := o.err
+		if err == nil {
+			err = r.warm(c, o.modes, tier)
+		}
+		if err == nil {
 			continue
 		}
-		c.Why = ThermalStage + ": " + o.err.Error()
-		told := fmt.Errorf("conformer %d: %w", c.Number, o.err)
-		if errors.As(o.err, new(*thermo.SaddleError)) {
+		c.Why = ThermalStage + ": " + err.Error()
+		told := fmt.Errorf("conformer %d: %w", c.Number, err)
+		if errors.As(err, new(*thermo.SaddleError)) {
 			saddles = append(saddles, told)
 		} else {
 			failed = append(failed, told)
@@ -79,8 +81,7 @@ func (r *ligandRun) relaxingTier() (int, error) {
 	return 0, ErrNoVibrations
 }
 
-// vibrations is the task of a Hessian. Rotational symmetry is counted by the
-// conformer's Copies and not again.
+// vibrations is the task of a Hessian.
 func (r *ligandRun) vibrations(ctx context.Context, p *workplace, c *Conformer) outcome {
 	var last molecule.Point
 	p.surface.Reset()
@@ -94,23 +95,29 @@ func (r *ligandRun) vibrations(ctx context.Context, p *workplace, c *Conformer) 
 		out.err = err
 		return out
 	}
+	out.modes = &thermo.Modes{Body: modes.Body, Quanta: modes.Quanta} // the vectors are large and not needed
+	return out
+}
+
+// warm gives a conformer its thermal terms at every temperature. Rotational
+// symmetry is counted by the conformer's Copies and not again.
+func (r *ligandRun) warm(c *Conformer, modes *thermo.Modes, tier int) error {
 	quanta, turned, err := modes.Real()
 	if err != nil {
-		out.err = err
-		return out
+		return err
 	}
 	if turned > 0 {
-		out.doubts = append(out.doubts, fmt.Sprintf("thermal: %d soft vibrations came out imaginary and were taken as real", turned))
+		c.Doubts = append(c.Doubts, fmt.Sprintf("thermal: %d soft vibrations came out imaginary and were taken as real", turned))
 	}
 	state := thermo.OneBar
-	if p.gas != nil {
+	if _, ok := inSolvent(r.tiers[tier]); ok {
 		state = thermo.OneMolar
 	}
 	species := thermo.Species{Body: modes.Body, Symmetry: 1, Quanta: quanta}
 	for _, t := range r.options.Temperatures {
-		out.thermal = append(out.thermal, species.At(t, state).FreeEnergy())
+		c.Thermal = append(c.Thermal, species.At(t, state).FreeEnergy())
 	}
-	return out
+	return nil
 }
 
 func isotopes(m *molecule.Molecule) []int {

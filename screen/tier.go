@@ -17,6 +17,9 @@ type Tier interface {
 	Name() string
 	// Method is what a paper would cite: "GFN2-xTB", "HF-3c".
 	Method() string
+	// Settings is all that decides the tier's numbers beside the molecule, as
+	// text: results are taken from an earlier run where it is the same.
+	Settings() string
 	// Surface returns a new surface for m, or an error that says what of m the
 	// tier cannot take. It may be called by several goroutines at once.
 	Surface(m *molecule.Molecule) (Surface, error)

@@ -42,7 +42,7 @@ func (l *logger) write(e screen.Event) {
 }
 
 func (l *logger) computed(ctx context.Context, e screen.Event) {
-	attrs := []any{"ligand", e.Ligand, "tier", e.Tier, "conformer", e.Conformer, "seconds", e.Took.Seconds(), "gradients", e.Gradients}
+	attrs := []any{"ligand", e.Ligand, "tier", e.Tier, "conformer", e.Conformer, "seconds", e.Took.Seconds(), "gradients", e.Gradients, "stored", e.Stored}
 	if e.Err == nil {
 		l.log.DebugContext(ctx, "conformer computed", append(attrs, "energy_hartree", e.Energy)...)
 		return

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"context"
 	"errors"
 	"fmt"
 	"os"
@@ -19,7 +18,7 @@ import (
 type screenCommand struct {
 	Ligands []string `arg:"" help:"Ligands: .smi, .csv, .tsv, .sdf, .mol, .xyz, also gzip'd, or - with --format."`
 	Out     string   `help:"Run folder: made if it is not there." required:"" placeholder:"DIR"`
-	Fresh   bool     `help:"Remove the results of an earlier run in the folder first."`
+	Fresh   bool     `help:"Set the run in the folder aside first, instead of going on with it."`
 
 	Through       string    `group:"Methods" help:"Last tier to run: forcefield, semiempirical or hf." enum:"forcefield,semiempirical,hf" default:"hf"`
 	MaxConformers int       `group:"Methods" help:"Cap on the conformers that enter the semi-empirical tier (default: ${default})." default:"${max_conformers}" placeholder:"N"`
@@ -28,7 +27,8 @@ type screenCommand struct {
 	Thermal       bool      `group:"Methods" help:"Add the free energy of the nuclei (quasi-RRHO), from vibrations at the semi-empirical level: six gradients per atom and conformer."`
 	Accuracy      float64   `group:"Methods" help:"Factor on the thresholds of self-consistency; smaller is tighter (default: ${default})." default:"1" placeholder:"X"`
 
-	Log string `group:"Work" help:"Log of every step, JSON lines (default: log.jsonl in the run folder)." placeholder:"FILE"`
+	Store string `group:"Work" help:"Database of the run: a file, or the URL of a PostgreSQL server (default: run.db in the run folder)." placeholder:"URL"`
+	Log   string `group:"Work" help:"Log of every step, JSON lines (default: log.jsonl in the run folder)." placeholder:"FILE"`
 
 	Input   inputOptions   `embed:""`
 	Intake  intakeOptions  `embed:""`
@@ -55,23 +55,28 @@ func (c *screenCommand) Run(s *session) error {
 		return &failure{code: exitNothing} // nothing is written for it
 	}
 	run := c.describe(s, tiers, inputs, begun)
-	folder, err := report.Create(c.Out, c.Fresh, run)
+	folder, err := s.takeFolder(c.Out, c.Store, c.Fresh, run)
 	if err != nil {
-		return nothing(err, folderHint(err))
+		return err
 	}
 	log, closeLog, err := c.openLog()
 	if err != nil {
-		return nothing(err, "")
+		return nothing(errors.Join(err, folder.close()), "")
 	}
 	defer closeLog()
 	s.voice.note("%s", surroundings(solvent, len(tiers)))
-	return c.compute(s, ligands, tiers, options, folder, run, log)
+	options.Store, options.Version, options.Begun = folder.store, identity(), run.Begun
+	err = c.compute(s, ligands, tiers, options, folder, run, log)
+	if closeErr := folder.close(); err == nil && closeErr != nil {
+		return nothing(closeErr, "")
+	}
+	return err
 }
 
 // compute runs the ligands and writes what became of them, also when a signal
 // ends it.
 func (c *screenCommand) compute(s *session, ligands []*screen.Ligand, tiers []screen.Tier, o screen.Options,
-	folder *report.Folder, run *report.Run, log *logger,
+	folder *runFolder, run *report.Run, log *logger,
 ) error {
 	stages := len(tiers)
 	if o.Thermal {
@@ -84,16 +89,17 @@ func (c *screenCommand) compute(s *session, ligands []*screen.Ligand, tiers []sc
 		return folder.Keep(r)
 	})
 	watch.close()
-	stopped := errors.Is(err, context.Cause(s.ctx)) && s.ctx.Err() != nil
+	stopped := interrupted(s.ctx, err)
 	if err != nil && !stopped {
 		return nothing(err, "")
 	}
 	run.End(time.Now())
-	if writeErr := folder.Close(run); writeErr != nil {
+	if writeErr := folder.Close(run, !stopped); writeErr != nil {
 		return nothing(writeErr, "")
 	}
 	s.voice.note("%s", summary(run.Counts, c.Out))
 	if stopped {
+		s.voice.note("the same command goes on from here")
 		return err
 	}
 	return runStatus(run.Counts)
@@ -184,13 +190,14 @@ func (c *screenCommand) values() map[string]any {
 	}
 }
 
-// openLog opens the log; closing it is told only where something was lost.
+// openLog opens the log, at its end where an earlier run has written one;
+// closing it is told only where something was lost.
 func (c *screenCommand) openLog() (*logger, func(), error) {
 	path := c.Log
 	if path == "" {
-		path = filepath.Join(c.Out, "log.jsonl")
+		path = filepath.Join(c.Out, report.LogFile)
 	}
-	f, err := os.Create(path)
+	f, err := os.OpenFile(path, os.O_WRONLY|os.O_CREATE|os.O_APPEND, 0o644)
 	if err != nil {
 		return nil, nil, err
 	}
@@ -204,17 +211,6 @@ func anyReadable(ligands []*screen.Ligand) bool {
 		}
 	}
 	return false
-}
-
-// folderHint says what to do about a folder that was not taken.
-func folderHint(err error) string {
-	switch {
-	case errors.Is(err, report.ErrHasRun):
-		return "give another folder, or --fresh to remove that run's results and compute anew"
-	case errors.Is(err, report.ErrNotEmpty):
-		return "give a new or an empty folder"
-	}
-	return ""
 }
 
 // summary is the last line of a run.

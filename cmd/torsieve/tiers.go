@@ -70,11 +70,16 @@ func newTier(name string, o tierOptions) (screen.Tier, error) {
 // steepAccuracy lets a relaxation reach the gradient that vibrations start from.
 const steepAccuracy = 0.1
 
+// settingsOf writes a method and its options down, field by field.
+func settingsOf(method string, options any) string { return fmt.Sprintf("%s %+v", method, options) }
+
 // forceField is tier 1.
 type forceField struct{}
 
 func (forceField) Name() string   { return tierForceField }
 func (forceField) Method() string { return "UFF with organic corrections and EEQ charges" }
+
+func (f forceField) Settings() string { return settingsOf(f.Method(), forcefield.Defaults()) }
 
 func (forceField) Surface(m *molecule.Molecule) (screen.Surface, error) {
 	s, err := forcefield.New(m, forcefield.Defaults())
@@ -147,6 +152,8 @@ func (t semiempiricalTier) Method() string {
 func (t semiempiricalTier) Surface(m *molecule.Molecule) (screen.Surface, error) {
 	return semiempirical.New(m.Numbers(), m.Charge(), m.Multiplicity(), t.options)
 }
+
+func (t semiempiricalTier) Settings() string { return settingsOf(t.Method(), t.options) }
 
 func (t semiempiricalTier) Solvent() string { return t.options.Solvent }
 
@@ -224,6 +231,8 @@ func (t hfTier) Method() string {
 	}
 	return "HF/" + t.basis
 }
+
+func (t hfTier) Settings() string { return settingsOf(t.Method(), t.options) }
 
 func (t hfTier) Surface(m *molecule.Molecule) (screen.Surface, error) {
 	return hf.New(m.Numbers(), m.Charge(), m.Multiplicity(), t.options)

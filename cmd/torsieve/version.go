@@ -21,9 +21,15 @@ func (versionCommand) Run(s *session) error {
 // fullVersion is the version with the revision that it was built from, where
 // the build knows it.
 func fullVersion() string {
+	v, _ := revision()
+	return v
+}
+
+// revision is fullVersion, and whether it names the source exactly.
+func revision() (text string, exact bool) {
 	info, ok := debug.ReadBuildInfo()
 	if !ok {
-		return version
+		return version, false
 	}
 	revision, changed := "", ""
 	for _, s := range info.Settings {
@@ -37,7 +43,7 @@ func fullVersion() string {
 		}
 	}
 	if revision == "" {
-		return version
+		return version, false
 	}
-	return fmt.Sprintf("%s revision %.12s%s", version, revision, changed)
+	return fmt.Sprintf("%s revision %.12s%s", version, revision, changed), changed == ""
 }

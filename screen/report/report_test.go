@@ -4,6 +4,7 @@ import (
 	"encoding/csv"
 	"encoding/json"
 	"errors"
+	"fmt"
 	"io"
 	"math"
 	"os"
@@ -59,7 +60,7 @@ func bentWater(degrees float64) []float64 {
 func TestTables(t *testing.T) {
 	dir := filepath.Join(t.TempDir(), "run")
 	f := fill(t, dir, water(t, "second", 1), water(t, "first", 0))
-	if err := f.Close(&Run{}); err != nil {
+	if err := f.Close(&Run{}, true); err != nil {
 		t.Fatal(err)
 	}
 	ligands := table(t, filepath.Join(dir, "ligands.csv"))
@@ -122,30 +123,54 @@ func TestEnsembleReadsBack(t *testing.T) {
 	}
 }
 
-func TestCreateTakesOnlyItsOwn(t *testing.T) {
-	dir := filepath.Join(t.TempDir(), "deep", "run")
-	f := fill(t, dir, water(t, "old", 0))
-	if err := f.Close(&Run{}); err != nil {
-		t.Fatal(err)
-	}
-	if _, err := Create(dir, false, &Run{}); !errors.Is(err, ErrHasRun) {
-		t.Errorf("have %v, want ErrHasRun", err)
-	}
-	if _, err := Create(dir, true, &Run{}); err != nil {
-		t.Fatal(err)
-	}
-	for _, gone := range []string{"ligands.csv", "conformers.csv", "ensembles/stem-of-old.sdf"} {
-		if _, err := os.Stat(filepath.Join(dir, gone)); !errors.Is(err, os.ErrNotExist) {
-			t.Errorf("%s is still there", gone)
-		}
-	}
+func TestFolderIsOnlyTakenFromARun(t *testing.T) {
 	other := t.TempDir()
 	if err := os.WriteFile(filepath.Join(other, "thesis.txt"), nil, 0o644); err != nil {
 		t.Fatal(err)
 	}
-	for _, fresh := range []bool{false, true} {
-		if _, err := Create(other, fresh, &Run{}); !errors.Is(err, ErrNotEmpty) {
-			t.Errorf("fresh %t: have %v, want ErrNotEmpty", fresh, err)
+	if _, err := Create(other, &Run{}); !errors.Is(err, ErrNotEmpty) {
+		t.Errorf("have %v, want ErrNotEmpty", err)
+	}
+}
+
+// A run that goes on keeps the files of before until it writes them anew; one
+// that ended has no file of a ligand that is in it no more.
+func TestEarlierEnsembles(t *testing.T) {
+	dir := filepath.Join(t.TempDir(), "deep", "run")
+	f := fill(t, dir, water(t, "old", 0))
+	if err := f.Close(&Run{}, true); err != nil {
+		t.Fatal(err)
+	}
+	old := filepath.Join(dir, "ensembles", "stem-of-old.sdf")
+	for _, whole := range []bool{false, true} {
+		f := fill(t, dir, water(t, "new", 0))
+		if err := f.Close(&Run{}, whole); err != nil {
+			t.Fatal(err)
+		}
+		if _, err := os.Stat(old); errors.Is(err, os.ErrNotExist) != whole {
+			t.Errorf("ended %t: %v", whole, err)
+		}
+	}
+}
+
+func TestSetAside(t *testing.T) {
+	dir := filepath.Join(t.TempDir(), "run")
+	for n := 1; n < 3; n++ {
+		f := fill(t, dir, water(t, "old", 0))
+		if err := f.Close(&Run{}, true); err != nil {
+			t.Fatal(err)
+		}
+		aside, err := SetAside(dir)
+		if want := filepath.Join(dir, fmt.Sprintf("earlier-%d", n)); err != nil || aside != want {
+			t.Fatalf("%s, %v; want %s", aside, err, want)
+		}
+		for _, name := range []string{"run.json", "ligands.csv", "ensembles/stem-of-old.sdf"} {
+			if _, err := os.Stat(filepath.Join(aside, name)); err != nil {
+				t.Error(err)
+			}
+			if _, err := os.Stat(filepath.Join(dir, name)); !errors.Is(err, os.ErrNotExist) {
+				t.Errorf("%s is still there", name)
+			}
 		}
 	}
 }
@@ -153,7 +178,7 @@ func TestCreateTakesOnlyItsOwn(t *testing.T) {
 func TestRunFile(t *testing.T) {
 	dir := filepath.Join(t.TempDir(), "run")
 	run := &Run{Program: "torsieve", Begun: "2026-01-02T03:04:05Z", Settings: map[string]any{"seed": 7}}
-	f, err := Create(dir, false, run)
+	f, err := Create(dir, run)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -164,7 +189,7 @@ func TestRunFile(t *testing.T) {
 		}
 	}
 	run.End(time.Date(2026, 1, 2, 3, 5, 5, 0, time.UTC))
-	if err := f.Close(run); err != nil {
+	if err := f.Close(run, true); err != nil {
 		t.Fatal(err)
 	}
 	text, err := os.ReadFile(filepath.Join(dir, RunFile))
@@ -197,7 +222,7 @@ func TestRowsWithoutEnsemble(t *testing.T) {
 
 func fill(t *testing.T, dir string, results ...*screen.Result) *Folder {
 	t.Helper()
-	f, err := Create(dir, false, &Run{})
+	f, err := Create(dir, &Run{})
 	if err != nil {
 		t.Fatal(err)
 	}
