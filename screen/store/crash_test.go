@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"io"
 	"math/rand/v2"
 	"os"
 	"os/exec"
@@ -22,8 +23,11 @@ const (
 func TestMain(m *testing.M) {
 	if where := os.Getenv(childVariable); where != "" {
 		child := crashWorker
-		if os.Getenv(nameVariable) == readOnlyName {
+		switch os.Getenv(nameVariable) {
+		case readOnlyName:
 			child = readOnlyChild
+		case holderName:
+			child = holdingChild
 		}
 		if err := child(where, os.Getenv(nameVariable)); err != nil {
 			fmt.Fprintln(os.Stderr, err)
@@ -36,6 +40,22 @@ func TestMain(m *testing.M) {
 
 // readOnlyName makes the child look at a store that it may not write to.
 const readOnlyName = "read only"
+
+// holderName makes the child hold the run until it is killed.
+const holderName = "holder"
+
+func holdingChild(where, _ string) error {
+	s, err := Open(context.Background(), where, Options{})
+	if err != nil {
+		return err
+	}
+	if _, err = s.Hold(context.Background(), Holder{Program: "torsieve screen", PID: os.Getpid()}); err != nil {
+		return err
+	}
+	fmt.Print("begun")
+	time.Sleep(time.Minute) // the parent kills it long before
+	return errors.New("nobody killed me")
+}
 
 func readOnlyChild(where, _ string) error {
 	ctx := context.Background()
@@ -72,8 +92,12 @@ func crashWorker(where, name string) error {
 	if err != nil {
 		return err
 	}
-	fmt.Println("begun") // the parent's clock starts
-	return errors.Join(drain(ctx, s, name, crashUnit), s.Close())
+	fmt.Print("begun")
+	work := func(u Unit) Batch {
+		fmt.Print(".") // the parent counts
+		return crashUnit(u)
+	}
+	return errors.Join(drain(ctx, s, name, work), s.Close())
 }
 
 const (
@@ -125,8 +149,9 @@ func crashUnit(u Unit) Batch {
 	return Batch{Ensembles: []Ensemble{sam.ensemble(u.Structure, keys[3], crashShapes)}}
 }
 
-// start runs a child until after, then kills it. It may have ended before.
-func start(t *testing.T, where, name string, after time.Duration) {
+// start runs a child until it has begun so many units, and kills it a moment
+// later. It may have ended before.
+func start(t *testing.T, where, name string, units int, moment time.Duration) {
 	t.Helper()
 	program, err := os.Executable()
 	must(t, err)
@@ -137,9 +162,11 @@ func start(t *testing.T, where, name string, after time.Duration) {
 	out, err := cmd.StdoutPipe()
 	must(t, err)
 	must(t, cmd.Start())
-	_, err = out.Read(make([]byte, 5))
-	must(t, err)
-	time.Sleep(after)
+	_, err = io.ReadFull(out, make([]byte, len("begun")+units))
+	if !errors.Is(err, io.ErrUnexpectedEOF) { // fewer units were left
+		must(t, err)
+	}
+	time.Sleep(moment)
 	_ = cmd.Process.Kill() // it may be gone already
 	err = cmd.Wait()
 	var exit *exec.ExitError
@@ -162,7 +189,7 @@ func TestKilledWorkersLoseNothing(t *testing.T) {
 		random := rand.New(rand.NewPCG(seed, 1))
 		done := 0
 		for i := 0; ; i++ {
-			start(t, p.where, fmt.Sprint("child ", i), time.Duration(random.IntN(12000))*time.Microsecond)
+			start(t, p.where, fmt.Sprint("child ", i), random.IntN(40), time.Duration(random.IntN(500))*time.Microsecond)
 			for range 2 {
 				_, err := watcher.TakeBack(t.Context(), now, time.Minute)
 				must(t, err)
@@ -218,6 +245,42 @@ func checkCrashed(t *testing.T, r *Reader) {
 			}
 		}
 		return nil
+	})
+}
+
+// Who was killed holds nothing any more, and nobody has to wait for it.
+func TestAKilledHolderHoldsNothing(t *testing.T) {
+	everywhere(t, func(t *testing.T, p place) {
+		s := p.open()
+		program, err := os.Executable()
+		must(t, err)
+		cmd := exec.Command(program)
+		cmd.Env = append(os.Environ(), childVariable+"="+p.where, nameVariable+"="+holderName)
+		out, err := cmd.StdoutPipe()
+		must(t, err)
+		must(t, cmd.Start())
+		_, err = out.Read(make([]byte, 5))
+		must(t, err)
+		_, err = s.Hold(t.Context(), Holder{})
+		var held *HeldError
+		if !errors.As(err, &held) || held.Holder.PID != cmd.Process.Pid {
+			t.Errorf("have %v, want that process %d holds it", err, cmd.Process.Pid)
+		}
+		must(t, cmd.Process.Kill())
+		_ = cmd.Wait() // it was killed
+		for range 500 {
+			hold, err := s.Hold(t.Context(), Holder{Program: "test"})
+			if err == nil {
+				must(t, hold.Check(t.Context()))
+				must(t, hold.Release())
+				return
+			}
+			if !errors.As(err, &held) {
+				t.Fatal(err)
+			}
+			time.Sleep(10 * time.Millisecond) // a server sees the end of a connection a moment later
+		}
+		t.Error("a killed process holds the run")
 	})
 }
 

@@ -24,7 +24,7 @@ type Store struct {
 	write    *sql.DB
 	options  Options
 	warnings []string
-	lock     func(context.Context, *Store) (unlock func() error, err error) // see Hold
+	lock     func(context.Context, *Store) (lock, error) // see Hold
 
 	mu  sync.Mutex
 	ids map[Key]int64 // of settings that are committed

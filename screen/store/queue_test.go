@@ -4,7 +4,10 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math/rand/v2"
+	"slices"
 	"sync"
+	"sync/atomic"
 	"testing"
 	"time"
 )
@@ -252,6 +255,42 @@ func TestConcurrentWorkersShareTheUnits(t *testing.T) {
 		view(t, r, func(v *View) error {
 			progress, err := v.Progress()
 			same(t, "first level", progress[0], Progress{Tier: "forcefield", Key: key, Done: units, Seconds: units * 1.25})
+			return err
+		})
+	})
+}
+
+// Several workers bring the same results in different orders: each is stored once,
+// and none of them fails because of the others.
+func TestConcurrentCommitsOfTheSame(t *testing.T) {
+	everywhere(t, func(t *testing.T, p place) {
+		const structures, workers = 12, 4
+		key, ids := planned(t, p.open(), structures)
+		var generations []Generation
+		for _, id := range ids {
+			generations = append(generations, newSample(uint64(id)).generation(id, key, 2, 3))
+		}
+		var total atomic.Int64
+		var wg sync.WaitGroup
+		for n := range workers {
+			s := p.open()
+			mine := slices.Clone(generations)
+			rand.New(rand.NewPCG(uint64(n), 3)).Shuffle(len(mine), func(i, k int) { mine[i], mine[k] = mine[k], mine[i] })
+			wg.Go(func() {
+				fresh, err := s.Commit(t.Context(), Batch{Generations: mine})
+				if err != nil {
+					t.Error(err)
+				}
+				total.Add(int64(fresh))
+			})
+		}
+		wg.Wait()
+		if total.Load() != structures {
+			t.Errorf("%d results were new, want %d", total.Load(), structures)
+		}
+		view(t, p.reader(), func(v *View) error {
+			units, err := v.Units()
+			same(t, "units left", units, []Unit{})
 			return err
 		})
 	})

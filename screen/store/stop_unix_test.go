@@ -72,7 +72,7 @@ func frozen(t *testing.T, pid int) {
 					break
 				}
 			}
-			if state != 'T' {
+			if state != 'T' && state != 'Z' { // or it has ended
 				running++
 			}
 		}
