@@ -2,6 +2,8 @@ package store
 
 import (
 	"context"
+	"database/sql"
+	"errors"
 	"fmt"
 )
 
@@ -12,6 +14,10 @@ func (r *Reader) Backup(ctx context.Context, path string) error {
 	if r.path == "" {
 		return fmt.Errorf("%s: a store on a server is copied by pg_dump", r.where)
 	}
-	_, err := r.read.ExecContext(ctx, "VACUUM INTO $1", path)
+	db, err := sql.Open("sqlite", sqliteName(r.path, "rw")) // readers' connections refuse the statement
+	if err == nil {
+		_, err = db.ExecContext(ctx, "VACUUM INTO $1", path)
+		err = errors.Join(err, db.Close())
+	}
 	return r.fault(r.where, err)
 }

@@ -26,6 +26,9 @@ var (
 	// ErrUnknown: a result or a unit names settings or a structure that the store
 	// has not been told of.
 	ErrUnknown = errors.New("not in the store")
+	// ErrOtherSettings: runs that are to be merged were computed with different
+	// settings.
+	ErrOtherSettings = errors.New("the runs have different settings")
 )
 
 // A VersionError is a store whose tables are of another version of the program.

@@ -9,10 +9,6 @@ import (
 	"strings"
 )
 
-// ErrOtherSettings: runs that are to be merged were computed with different
-// settings.
-var ErrOtherSettings = errors.New("the runs have different settings")
-
 // A Merged says what came of a merge.
 type Merged struct {
 	Ligands int

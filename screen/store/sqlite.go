@@ -72,8 +72,10 @@ func (s *Store) openSQLite(ctx context.Context, path string) error {
 	return s.Reader.openSQLite(ctx, path)
 }
 
-// openSQLite opens a file for reading. Where nothing can be written beside it,
-// and no log is left to read, it is read as a file that nobody changes.
+// openSQLite opens a file with connections that take no statement that writes.
+// The file itself is opened for writing where that is allowed, or the last reader
+// could not put away the log beside it. Where nothing can be written beside it, and
+// no log is left to read, it is read as a file that nobody changes.
 func (r *Reader) openSQLite(ctx context.Context, path string) error {
 	r.dialect, r.where = &sqliteDialect, path
 	abs, err := filepath.Abs(path)
@@ -87,7 +89,7 @@ func (r *Reader) openSQLite(ctx context.Context, path string) error {
 		return err
 	}
 	r.path = abs
-	if err := r.readAs(ctx, sqliteName(abs, "ro")); err == nil || !errors.Is(sqliteKind(err), ErrReadOnly) {
+	if err := r.readAs(ctx, sqliteName(abs, "rw", "_pragma=query_only(1)")); err == nil || !errors.Is(sqliteKind(err), ErrReadOnly) {
 		return err
 	}
 	if info, err := os.Stat(abs + "-wal"); err == nil && info.Size() > 0 {

@@ -257,6 +257,35 @@ func TestCopies(t *testing.T) {
 	}
 }
 
+// A reader leaves the folder as it was, and does not keep a writer from closing.
+func TestReadersLeaveNothingBehind(t *testing.T) {
+	dir := t.TempDir()
+	p := place{t, filepath.Join(dir, "run.db")}
+	s := p.open()
+	f := fill(t, s, 1, 1)
+	r := p.reader()
+	view(t, r, func(v *View) error {
+		must(t, s.SaveRecord(context.Background(), "later"))
+		must(t, s.Close())
+		run, _, err := v.Run()
+		same(t, "run", run, f.run)
+		return err
+	})
+	must(t, r.Close())
+	again := p.reader()
+	f.run.Record = "later"
+	checkFilled(t, again, f)
+	must(t, again.Close())
+	entries, err := os.ReadDir(dir)
+	must(t, err)
+	for _, e := range entries {
+		t.Log(e.Name())
+	}
+	if len(entries) != 1 {
+		t.Errorf("have %v, want run.db alone", entries)
+	}
+}
+
 func copyFile(t *testing.T, from, to string) {
 	t.Helper()
 	in, err := os.Open(from)
