@@ -79,26 +79,15 @@ func (t *txn) owned(structure int64, key Key, w Work) (o owned, err error) {
 	return o, errors.Join(err, checkFinite("the time", w.Seconds))
 }
 
-// settings returns the id of a key. Rows of settings are never changed, so what
-// was read once is remembered.
+// settings returns the id of a key.
 func (t *txn) settings(key Key) (int64, error) {
-	t.s.mu.Lock()
-	id, known := t.s.ids[key]
-	t.s.mu.Unlock()
-	if known {
-		return id, nil
-	}
-	err := t.QueryRowContext(t.ctx, "SELECT id FROM settings WHERE key = $1", string(key)).Scan(&id)
-	if errors.Is(err, sql.ErrNoRows) {
-		return 0, fmt.Errorf("settings %q: %w", key, ErrUnknown)
-	}
-	if err != nil {
-		return 0, err
-	}
-	t.s.mu.Lock()
-	t.s.ids[key] = id
-	t.s.mu.Unlock()
-	return id, nil
+	return t.s.settings.get(key, func() (id int64, err error) {
+		err = t.QueryRowContext(t.ctx, "SELECT id FROM settings WHERE key = $1", string(key)).Scan(&id)
+		if errors.Is(err, sql.ErrNoRows) {
+			err = fmt.Errorf("settings %q: %w", key, ErrUnknown)
+		}
+		return id, err
+	})
 }
 
 // machine returns the id of a machine, of the store's own for the zero value.
@@ -106,15 +95,20 @@ func (t *txn) machine(m Machine) (id int64, err error) {
 	if m == (Machine{}) {
 		m = t.s.options.Machine
 	}
+	if id, made := t.made[m]; made {
+		return id, nil
+	}
 	row := []any{pack(m.Host), pack(m.Processor), pack(m.Kernel), pack(m.Version)}
-	const query = "SELECT id FROM machine WHERE host = $1 AND processor = $2 AND kernel = $3 AND version = $4"
-	err = t.QueryRowContext(t.ctx, query, row...).Scan(&id)
-	if !errors.Is(err, sql.ErrNoRows) {
+	ask := func() (id int64, err error) {
+		err = t.QueryRowContext(t.ctx, "SELECT id FROM machine WHERE host = $1 AND processor = $2 AND kernel = $3 AND version = $4", row...).Scan(&id)
+		return id, err
+	}
+	if id, err = t.s.machines.get(m, ask); !errors.Is(err, sql.ErrNoRows) {
 		return id, err
 	}
 	if _, err := t.insert("machine", "host, processor, kernel, version", [][]any{row}); err != nil {
 		return 0, err
 	}
-	err = t.QueryRowContext(t.ctx, query, row...).Scan(&id)
-	return id, err
+	t.made[m], err = ask()
+	return t.made[m], err
 }

@@ -217,6 +217,34 @@ func TestKilledWorkersLoseNothing(t *testing.T) {
 	})
 }
 
+// Two processes on one store, undisturbed, share the work.
+func TestTwoProcessesShareAStore(t *testing.T) {
+	everywhere(t, func(t *testing.T, p place) {
+		const ligands = 40
+		s := p.open()
+		crashPlan(t, s, ligands)
+		program, err := os.Executable()
+		must(t, err)
+		var processes []*exec.Cmd
+		for _, name := range []string{"one", "two"} {
+			cmd := exec.Command(program)
+			cmd.Env = append(os.Environ(), childVariable+"="+p.where, nameVariable+"="+name)
+			cmd.Stderr = os.Stderr
+			must(t, cmd.Start())
+			processes = append(processes, cmd)
+		}
+		for _, cmd := range processes {
+			must(t, cmd.Wait())
+		}
+		// Each drains until nothing is free; what the other held then it left to it.
+		results, left := counted(t, &s.Reader)
+		if want := ligands * (2 + 2*crashShapes); results != want || left != 0 {
+			t.Errorf("%d results and %d units left, want %d and 0", results, left, want)
+		}
+		checkCrashed(t, &s.Reader)
+	})
+}
+
 // checkCrashed compares the shapes and the geometries of all structures with what
 // one undisturbed worker would have stored.
 func checkCrashed(t *testing.T, r *Reader) {

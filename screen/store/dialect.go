@@ -16,8 +16,10 @@ type dialect struct {
 	again    func(error) bool  // whether the transaction may be tried again
 }
 
+// Ids are never given twice, also not after Clear: a process that remembers one
+// must not mean another thing with it. SQLite has AUTOINCREMENT for that.
 var sqliteDialect = dialect{
-	words: strings.NewReplacer("{id}", "INTEGER PRIMARY KEY", "{int}", "INTEGER", "{real}", "REAL", "{blob}", "BLOB",
+	words: strings.NewReplacer("{id}", "INTEGER PRIMARY KEY AUTOINCREMENT", "{int}", "INTEGER", "{real}", "REAL", "{blob}", "BLOB",
 		"{clustered}", " WITHOUT ROWID"),
 	tables: "SELECT name FROM sqlite_master WHERE type = 'table'",
 	kind:   sqliteKind,

@@ -79,9 +79,9 @@ func (s *Store) Clear(ctx context.Context) error {
 		}
 		return nil
 	})
-	s.mu.Lock()
-	clear(s.ids)
-	s.mu.Unlock()
+	s.settings.forget()
+	s.machines.forget()
+	s.atoms.forget()
 	if err == nil && s.path != "" {
 		_, err = s.write.ExecContext(ctx, "VACUUM") // gives the room back
 	}

@@ -5,7 +5,6 @@ import (
 	"database/sql"
 	"errors"
 	"strings"
-	"sync"
 )
 
 // A Reader reads a store, also while others write into it. It may be used by
@@ -26,8 +25,9 @@ type Store struct {
 	warnings []string
 	lock     func(context.Context, *Store) (lock, error) // see Hold
 
-	mu  sync.Mutex
-	ids map[Key]int64 // of settings that are committed
+	settings memory[Key]     // ids
+	machines memory[Machine] // ids
+	atoms    memory[int64]   // of structures
 }
 
 // Options are what a store is told about its user.
@@ -52,7 +52,7 @@ func Open(ctx context.Context, where string, o Options) (*Store, error) {
 	if o.network == nil {
 		o.network = networkFS
 	}
-	s := &Store{options: o, ids: map[Key]int64{}}
+	s := &Store{options: o}
 	open := s.openSQLite
 	if IsURL(where) {
 		open = s.openPostgres

@@ -114,8 +114,11 @@ func TestAResultEndsItsUnit(t *testing.T) {
 		// Other settings of the second tier: its units go, the first level's stay.
 		changed := ladder("298.15")
 		changed[1].Settings = `{"accuracy":0.1}`
-		must(t, s.SetRun(t.Context(), Run{Chain: changed}, nil))
+		list := []Ligand{{Order: 0, ID: "a", Structure: ids[0]}, {Order: 1, ID: "b", Stem: "b", Structure: ids[1]}}
+		must(t, s.SetRun(t.Context(), Run{Chain: changed}, list))
 		left(other)
+		must(t, s.SetRun(t.Context(), Run{Chain: changed}, list[:1]))
+		left()
 	})
 }
 

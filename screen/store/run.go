@@ -8,8 +8,8 @@ import (
 )
 
 // SetRun replaces the run's record and its list of ligands, and keeps all
-// results. Structures must have been added. Units that were planned for other
-// settings are dropped, whoever holds them.
+// results. Structures must have been added. Units of other settings or of other
+// structures are dropped, whoever holds them.
 func (s *Store) SetRun(ctx context.Context, r Run, ligands []Ligand) error {
 	return s.update(ctx, func(t *txn) error {
 		ids, err := t.register(r.Chain)
@@ -94,13 +94,15 @@ func (t *txn) addLigands(ligands []Ligand) error {
 	return err
 }
 
-func (t *txn) dropOtherUnits(ids []int64) error {
-	keep := make([]any, len(ids))
-	for i, id := range ids {
-		keep[i] = id
+// dropOtherUnits keeps the units of the run's levels and structures.
+func (t *txn) dropOtherUnits(levels []int64) error {
+	err := t.exec("DELETE FROM unit WHERE structure NOT IN (SELECT structure FROM ligand WHERE structure IS NOT NULL)")
+	if err != nil || len(levels) == 0 {
+		return err
 	}
-	if len(keep) == 0 {
-		return t.exec("DELETE FROM unit")
+	keep := make([]any, len(levels))
+	for i, id := range levels {
+		keep[i] = id
 	}
 	return t.exec("DELETE FROM unit WHERE settings NOT IN "+placeholders(1, len(keep)), keep...)
 }

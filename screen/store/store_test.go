@@ -224,6 +224,28 @@ func TestFailuresAreKeptCountedAndDropped(t *testing.T) {
 	})
 }
 
+// After Clear no id means another thing than before, to whoever remembers it.
+func TestIDsAreNotUsedAgain(t *testing.T) {
+	everywhere(t, func(t *testing.T, p place) {
+		s, other := p.open(), p.open()
+		f := fill(t, s, 1, 2)
+		stale := f.generations[0]
+		_, err := other.Commit(t.Context(), Batch{Generations: []Generation{stale}}) // now it remembers
+		must(t, err)
+		must(t, s.Clear(t.Context()))
+		again := fill(t, s, 5, 6)
+		for _, l := range again.ligands {
+			if l.Structure == f.ligands[0].Structure || l.Structure == f.ligands[1].Structure {
+				t.Errorf("structure %d is another one now", l.Structure)
+			}
+		}
+		if _, err := other.Commit(t.Context(), Batch{Generations: []Generation{stale}}); err == nil {
+			t.Error("a result of a run that was cleared was stored")
+		}
+		checkFilled(t, &s.Reader, again)
+	})
+}
+
 // A view sees what was there when it began.
 func TestAViewIsOnePicture(t *testing.T) {
 	everywhere(t, func(t *testing.T, p place) {

@@ -56,12 +56,15 @@ func (st *Structure) variant() string {
 }
 
 // atoms returns how many atoms a structure has.
-func (t *txn) atoms(structure int64) (n int, err error) {
-	err = t.QueryRowContext(t.ctx, "SELECT natoms FROM structure WHERE id = $1", structure).Scan(&n)
-	if errors.Is(err, sql.ErrNoRows) {
-		err = fmt.Errorf("structure %d: %w", structure, ErrUnknown)
-	}
-	return n, err
+func (t *txn) atoms(structure int64) (int, error) {
+	n, err := t.s.atoms.get(structure, func() (n int64, err error) {
+		err = t.QueryRowContext(t.ctx, "SELECT natoms FROM structure WHERE id = $1", structure).Scan(&n)
+		if errors.Is(err, sql.ErrNoRows) {
+			err = fmt.Errorf("structure %d: %w", structure, ErrUnknown)
+		}
+		return n, err
+	})
+	return int(n), err
 }
 
 // Structure returns a structure by its id.

@@ -12,8 +12,9 @@ import (
 // A txn is a transaction that writes.
 type txn struct {
 	*sql.Tx
-	ctx context.Context
-	s   *Store
+	ctx  context.Context
+	s    *Store
+	made map[Machine]int64 // not yet committed, so not yet to be remembered
 }
 
 // attempts is how often a transaction is begun that another one stops.
@@ -37,7 +38,7 @@ func (s *Store) try(ctx context.Context, do func(*txn) error) error {
 		return err
 	}
 	defer rollback(tx)
-	if err := do(&txn{Tx: tx, ctx: ctx, s: s}); err != nil {
+	if err := do(&txn{Tx: tx, ctx: ctx, s: s, made: map[Machine]int64{}}); err != nil {
 		return err
 	}
 	return tx.Commit()
