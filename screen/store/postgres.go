@@ -56,6 +56,12 @@ func postgresConfig(where string) (*pgx.ConnConfig, error) {
 		config.ConnectTimeout = 10 * time.Second
 	}
 	config.RuntimeParams["application_name"] = "torsieve"
+	// As on SQLite: a server that crashes may lose the last commits, never the
+	// order of things (PostgreSQL manual, asynchronous commit). A URL may ask for
+	// more.
+	if _, asked := config.RuntimeParams["synchronous_commit"]; !asked {
+		config.RuntimeParams["synchronous_commit"] = "off"
+	}
 	return config, nil
 }
 
