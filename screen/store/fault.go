@@ -2,9 +2,13 @@ package store
 
 import (
 	"context"
+	"database/sql"
+	"database/sql/driver"
 	"errors"
 	"fmt"
+	"io"
 	"net"
+	"strings"
 
 	"github.com/jackc/pgx/v5/pgconn"
 	"modernc.org/sqlite"
@@ -17,11 +21,14 @@ func (d *dialect) fault(where string, err error) error {
 	if err == nil || errors.As(err, new(*namedError)) {
 		return err
 	}
-	if errors.Is(err, context.Canceled) || errors.Is(err, context.DeadlineExceeded) {
+	if errors.Is(err, context.Canceled) {
 		return err
 	}
 	if kind := d.kind(err); kind != nil {
 		return &namedError{fmt.Errorf("%s: %w (%w)", where, kind, err)}
+	}
+	if errors.Is(err, context.DeadlineExceeded) {
+		return err
 	}
 	return &namedError{fmt.Errorf("%s: %w", where, err)}
 }
@@ -57,24 +64,29 @@ func sqliteKind(err error) error {
 func postgresKind(err error) error {
 	var refused *pgconn.ConnectError
 	var network net.Error
-	if errors.As(err, &refused) || errors.As(err, &network) {
+	lost := errors.Is(err, driver.ErrBadConn) || errors.Is(err, sql.ErrConnDone) ||
+		errors.Is(err, io.EOF) || errors.Is(err, io.ErrUnexpectedEOF)
+	if lost || errors.As(err, &refused) || errors.As(err, &network) {
 		return ErrUnreachable
 	}
 	var e *pgconn.PgError
 	if !errors.As(err, &e) {
 		return nil
 	}
-	switch {
-	case e.Code == "53100": // disk_full
+	switch e.Code {
+	case "53100": // disk_full
 		return ErrFull
-	case e.Code == "25006", e.Code == "42501": // read_only_sql_transaction, insufficient_privilege
+	case "25006", "42501": // read_only_sql_transaction, insufficient_privilege
 		return ErrReadOnly
-	case e.Code == "55P03": // lock_not_available
+	case "55P03": // lock_not_available
 		return ErrBusy
-	case e.Code == "XX001", e.Code == "XX002": // data_corrupted, index_corrupted
+	case "XX001", "XX002": // data_corrupted, index_corrupted
 		return ErrDamaged
-	case e.Code[:2] == "08", e.Code[:2] == "57", e.Code[:2] == "28": // connection, shutdown, authorisation
-		return ErrUnreachable
+	}
+	for _, class := range []string{"08", "28", "57"} { // connection, authorisation, shutdown
+		if strings.HasPrefix(e.Code, class) {
+			return ErrUnreachable
+		}
 	}
 	return nil
 }

@@ -100,7 +100,11 @@ func lockServer(ctx context.Context, s *Store) (lock, error) {
 		unlock: func() error {
 			// Closing would give the connection back to the pool, with the lock.
 			_, err := conn.ExecContext(context.WithoutCancel(ctx), "SELECT pg_advisory_unlock($1, hashtext(current_schema()))", applicationID)
-			return errors.Join(err, conn.Close())
+			err = errors.Join(err, conn.Close())
+			if errors.Is(postgresKind(err), ErrUnreachable) {
+				return nil // the lock ended with the connection
+			}
+			return err
 		},
 	}, nil
 }

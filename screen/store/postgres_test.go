@@ -60,3 +60,40 @@ func TestServerWithOtherTablesIsRefused(t *testing.T) {
 		}
 	})
 }
+
+// A server that cuts all connections is told as such, what was committed is
+// there, and work goes on. The right to drive the run is gone.
+func TestServerThatCutsConnections(t *testing.T) {
+	everywhere(t, func(t *testing.T, p place) {
+		if !IsURL(p.where) {
+			return // a file has no connections
+		}
+		ctx := t.Context()
+		s := p.open()
+		f := fill(t, s, 1, 2)
+		hold, err := s.Hold(ctx, Holder{})
+		must(t, err)
+		must(t, hold.Check(ctx))
+		config, err := postgresConfig(p.where)
+		must(t, err)
+		db := pool(config)
+		defer db.Close()
+		for range 3 {
+			_, err = db.Exec(`SELECT pg_terminate_backend(pid) FROM pg_stat_activity
+				WHERE application_name = 'torsieve' AND pid <> pg_backend_pid() AND query LIKE '%' || $1 || '%'
+				OR pid IN (SELECT pid FROM pg_locks WHERE locktype = 'advisory' AND classid = $2)`, "ligand", applicationID)
+			must(t, err)
+			err = s.SetRun(ctx, f.run, f.ligands)
+			if err != nil && !errors.Is(err, ErrUnreachable) {
+				t.Errorf("have %v, want %v or nothing", err, ErrUnreachable)
+			}
+		}
+		for range 2 {
+			if err := hold.Check(ctx); !errors.Is(err, ErrUnreachable) {
+				t.Errorf("have %v, want %v", err, ErrUnreachable)
+			}
+		}
+		must(t, hold.Release())
+		checkFilled(t, &s.Reader, f)
+	})
+}
