@@ -13,6 +13,39 @@ const (
 	refused = 4    // errors of the surface in a row that are taken for an answer
 )
 
+// cartesian minimises x by L-BFGS from the point that res and m.grad describe.
+func (m *Minimiser) cartesian(ctx context.Context, s Surface, x []float64, set Settings, res *Result) error {
+	if m.history == nil {
+		m.history = newHistory(len(x), memory)
+	}
+	m.history.reset()
+	m.prepareModel(x, set.Numbers)
+	change := math.Inf(1)
+	for !set.satisfied(*res, change) {
+		if res.Gradients >= set.MaxGradients {
+			res.Status = GradientLimit
+			return nil
+		}
+		before := res.Energy
+		moved, err := m.step(ctx, s, x, set, res)
+		if err != nil || !moved {
+			return err
+		}
+		change = res.Energy - before
+	}
+	res.Status = Converged
+	return nil
+}
+
+// satisfied judges the accepted point. A gradient ten times below its limits
+// needs no energy change: there may be no step to measure it by.
+func (set Settings) satisfied(r Result, change float64) bool {
+	if set.EnergyChange <= 0 || math.Abs(change) <= set.EnergyChange {
+		return set.under(r, 1)
+	}
+	return set.under(r, 0.1)
+}
+
 // step makes one step downhill and takes it into x, res and the history. It
 // returns false, with res.Status set, where there is no lower point.
 func (m *Minimiser) step(ctx context.Context, s Surface, x []float64, set Settings, res *Result) (bool, error) {

@@ -53,6 +53,14 @@ func lindhRow(number int) int {
 	return 2
 }
 
+// lindhStrength is rho for atoms of two numbers at a distance: 1 at the
+// reference length, and bounded where atoms clash.
+func lindhStrength(za, zb int, r float64) float64 {
+	a, b := lindhRow(za), lindhRow(zb)
+	r0 := lindhLength[a][b]
+	return math.Exp(lindhAlpha[a][b] * math.Min(0.5, r0*r0-r*r))
+}
+
 func (m *model) ready() bool { return m != nil && m.usable }
 
 // prepareModel builds the model at x, or drops it where numbers is nil or it
@@ -90,9 +98,7 @@ func (m *model) strengths(x []float64, numbers []int) {
 	}
 	for i := range n {
 		for j := range i {
-			a, b := lindhRow(numbers[i]), lindhRow(numbers[j])
-			r, r0 := geom.Distance(x, i, j), lindhLength[a][b]
-			rho := math.Exp(lindhAlpha[a][b] * math.Min(0.5, r0*r0-r*r)) // bounded where atoms clash
+			rho := lindhStrength(numbers[i], numbers[j], geom.Distance(x, i, j))
 			m.rho[i*n+j], m.rho[j*n+i] = rho, rho
 			if rho > rhoBond {
 				m.near[i] = append(m.near[i], j)
