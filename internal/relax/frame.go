@@ -102,17 +102,12 @@ func (f *frame) down(s *scheme, q, d []float64) {
 func (f *frame) up(s *scheme, d, v []float64) {
 	clear(d)
 	for c := range s.coords {
-		f.addRow(d, s, c, v[c])
-	}
-}
-
-// addRow adds v times row c of B to d.
-func (f *frame) addRow(d []float64, s *scheme, c int, v float64) {
-	row := &f.rows[c]
-	for k, a := range s.coords[c].depends() {
-		d[3*a] += v * row[3*k]
-		d[3*a+1] += v * row[3*k+1]
-		d[3*a+2] += v * row[3*k+2]
+		row := &f.rows[c]
+		for k, a := range s.coords[c].depends() {
+			d[3*a] += v[c] * row[3*k]
+			d[3*a+1] += v[c] * row[3*k+1]
+			d[3*a+2] += v[c] * row[3*k+2]
+		}
 	}
 }
 
@@ -142,24 +137,32 @@ func (f *frame) square(s *scheme, a, w []float64, ridge float64) {
 	f.hold(a, ridge)
 }
 
-// project writes the lower triangle of B^T H B into a, likewise; h is m*m and
-// scratch has m*n numbers.
+// project writes the lower triangle of B^T H B into a, likewise; h is m*m, and
+// scratch has 2*m*n numbers. Whole rows are added at a time: B has twelve
+// numbers in a row, H has as many as there are coordinates.
 func (f *frame) project(s *scheme, a, h, scratch []float64, ridge float64) {
 	n, m := f.n, len(s.coords)
-	clear(a)
+	bh, hb := scratch[:n*m], scratch[n*m:2*n*m]
+	clear(bh)
 	for r := range m {
-		hb := scratch[r*n : r*n+n]
-		clear(hb)
-		for c, v := range h[r*m : r*m+m] {
-			if v != 0 { // as most are until much is learned
-				f.addRow(hb, s, c, v)
-			}
-		}
-		row := &f.rows[r]
 		for k, p := range s.coords[r].depends() {
 			for e := range 3 {
 				i := 3*p + e
-				floats.AddScaled(a[i*n:i*n+i+1], row[3*k+e], hb[:i+1])
+				floats.AddScaled(bh[i*m:i*m+m], f.rows[r][3*k+e], h[r*m:r*m+m])
+			}
+		}
+	}
+	for i := range n {
+		for r, v := range bh[i*m : i*m+m] {
+			hb[r*n+i] = v
+		}
+	}
+	clear(a)
+	for r := range m {
+		for k, p := range s.coords[r].depends() {
+			for e := range 3 {
+				i := 3*p + e
+				floats.AddScaled(a[i*n:i*n+i+1], f.rows[r][3*k+e], hb[r*n:r*n+i+1])
 			}
 		}
 	}

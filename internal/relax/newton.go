@@ -20,7 +20,7 @@ type newton struct {
 	walker      walker
 	dq, gq, gq2 []float64 // step and gradients in internal coordinates
 	solved      []float64
-	hb          []float64 // m*n, scratch
+	hb          []float64 // 2*m*n, scratch
 	radius      float64
 }
 
@@ -56,7 +56,7 @@ func (w *newton) begin(x, grad []float64, numbers []int) error {
 	m := len(s.coords)
 	w.curvature.guess(s.stiffness)
 	w.dq, w.gq, w.gq2 = sized(w.dq, m), sized(w.gq, m), sized(w.gq2, m)
-	w.hb = sized(w.hb, m*len(x))
+	w.hb = sized(w.hb, 2*m*len(x))
 	w.radius = firstRadius
 	return w.inner(w.gq, w.here, grad)
 }

@@ -7,8 +7,8 @@ import (
 )
 
 const (
-	walks      = 6     // corrections of a step at most
-	closeToEnd = 0.002 // bohr: such a correction is the last
+	walks      = 6    // corrections of a step at most
+	closeToEnd = 0.01 // bohr: such a correction is the last
 )
 
 // A walker turns steps in internal coordinates into geometries: atoms that a
