@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"math"
+	"slices"
 	"testing"
 
 	"gonum.org/v1/gonum/floats"
@@ -89,6 +90,7 @@ func TestSchemesAreComplete(t *testing.T) {
 			0, 0, 0, 1.8, 0, 0, -0.5, 1.7, 0, 5.5, 0.1, 0, 6.1, 1.2, 1.3, 6, 0.9, -1.5,
 		}, false},
 		{"a flat cross", []int{54, 9, 9, 9, 9}, []float64{0, 0, 0, 3.7, 0, 0, -3.7, 0, 0, 0, 3.7, 0, 0, -3.7, 0}, false},
+		{"a flat kite", []int{54, 9, 9, 9, 9}, []float64{0, 0, 0, 3.4, 1.5, 0, -3.4, 1.5, 0, 0, 3.7, 0, 0, -3.7, 0}, true},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			w := newNewton(len(c.numbers))
@@ -98,10 +100,9 @@ func TestSchemesAreComplete(t *testing.T) {
 			if !w.complete() {
 				t.Error("a motion is missing")
 			}
-			for i := range w.scheme.coords {
-				if w.scheme.coords[i].kind == place && !c.places {
-					t.Fatal("it has Cartesian coordinates")
-				}
+			isPlace := func(c coordinate) bool { return c.kind == place }
+			if got := slices.ContainsFunc(w.scheme.coords, isPlace); got != c.places {
+				t.Errorf("Cartesian coordinates: %v, want %v", got, c.places)
 			}
 		})
 	}
