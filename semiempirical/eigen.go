@@ -34,11 +34,15 @@ func newOrbitals(n int, alpha, beta, kT float64) *orbitals {
 		alpha: alpha, beta: beta, kT: kT,
 		occAlpha: make([]float64, n), occBeta: make([]float64, n), weights: make([]float64, n),
 	}
-	if occ := int(alpha); alpha == beta && occ < n {
+	if occ := int(alpha); alpha == beta && occ < n && n >= followFrom {
 		o.near = newSubspace(n, occ)
 	}
 	return o
 }
+
+// followFrom is the number of functions from which on following the occupied
+// orbitals costs less than a solution from the start.
+const followFrom = 40
 
 // overlap takes in the overlap matrix of a new geometry.
 func (o *orbitals) overlap(s []float64) error {
@@ -58,12 +62,13 @@ const smallestPivot = 1e-7
 
 // solve finds the orbitals of a Fock matrix and fills them. Where a closed
 // shell with a gap was solved before at this geometry, only the occupied space
-// is followed, to within tol (0: never); then orbital energies are still those
-// of the last full solution.
+// is followed, to within tol (0: never); then energy and c are still those of the
+// last full solution.
 func (o *orbitals) solve(f []float64, tol float64) error {
 	if o.solved && tol > 0 {
 		if steps, ok := o.near.solve(o, f, tol); ok {
 			o.isNear = true
+			o.entropy = 0
 			o.solved = steps < tiresome
 			return nil
 		}
@@ -74,7 +79,7 @@ func (o *orbitals) solve(f []float64, tol float64) error {
 	o.fill()
 	o.isNear = false
 	if o.solved = o.near != nil; o.solved {
-		o.near.start(f)
+		o.near.start()
 	}
 	return nil
 }
@@ -131,6 +136,10 @@ func (o *orbitals) gap() (gap float64, ok bool) {
 	top := int(o.alpha + 0.5)
 	if top < 1 || top >= o.n {
 		return 0, false
+	}
+	if o.isNear {
+		filled, empty := edges(o.near.level, o.near.occupied)
+		return empty - filled, true
 	}
 	return o.energy[top] - o.energy[top-1], true
 }

@@ -26,11 +26,17 @@ func BenchmarkSurface(b *testing.B) {
 	for _, name := range benchmarked {
 		m := named(b, name)
 		for _, around := range []string{"none", "water"} {
-			path := relaxationPath(b, m, around)
+			var path [][]float64 // made when it is wanted
 			for _, accuracy := range []float64{1, 0.1} {
-				t := timing{molecule: m, solvent: around, accuracy: accuracy, path: path}
 				for _, start := range []string{"new", "cold", "warm"} {
 					b.Run(fmt.Sprintf("molecule=%s/solvent=%s/accuracy=%g/start=%s", name, around, accuracy, start), func(b *testing.B) {
+						if start == "warm" && path == nil {
+							path = relaxationPath(b, m, around)
+						}
+						t := timing{molecule: m, solvent: around, accuracy: accuracy, path: path}
+						if start != "warm" {
+							t.path = [][]float64{m.coordinates()}
+						}
 						t.run(b, start)
 					})
 				}

@@ -75,10 +75,10 @@ func (c *cycle) step(in []float64) (scf.Output, error) {
 func (c *cycle) setTolerance(residual float64) {
 	c.tolerance = 0
 	if residual < followBelow {
-		c.tolerance = max(1e-4*residual, 1e-13)
+		c.tolerance = min(max(1e-4*residual, 1e-13), 1e-6)
 	}
 }
 
 // followBelow is the residual below which the occupied orbitals are followed
 // from cycle to cycle.
-const followBelow = 1e-2
+const followBelow = 5e-2

@@ -19,6 +19,7 @@ type tile struct {
 type Workspace struct {
 	a, b, edge []float64
 	scaled     []float64
+	half       []float64
 }
 
 var workspaces = sync.Pool{New: func() any { return new(Workspace) }}

@@ -3,9 +3,6 @@ package linalg
 import (
 	"fmt"
 	"math"
-
-	"gonum.org/v1/gonum/blas"
-	lapack "gonum.org/v1/gonum/lapack/gonum"
 )
 
 // Generalised solves F c = e S c for symmetric F and positive definite S of one
@@ -51,16 +48,11 @@ func (g *Generalised) Factor(s []float64) error {
 		return nil
 	}
 	copy(g.inverse, s)
-	var impl lapack.Implementation
-	if !impl.Dpotrf(blas.Lower, n, g.inverse, n) {
+	pivot, ok := g.work.InverseFactor(g.inverse, n)
+	if !ok {
 		return g.findPivot(s)
 	}
-	g.pivot = g.inverse[0] * g.inverse[0]
-	for i := range n {
-		g.pivot = min(g.pivot, g.inverse[i*n+i]*g.inverse[i*n+i])
-		clear(g.inverse[i*n+i+1 : (i+1)*n])
-	}
-	impl.Dtrtri(blas.Lower, blas.NonUnit, n, g.inverse, n)
+	g.pivot = pivot
 	return nil
 }
 
@@ -124,10 +116,7 @@ const triangleBlock = 48
 // transform computes the lower triangle of inverse F inverse^T, in b.
 func (g *Generalised) transform(f []float64) {
 	n := g.n
-	for from := 0; from < n; from += triangleBlock {
-		to := min(from+triangleBlock, n)
-		g.work.Gemm(false, false, to-from, n, to, 1, g.inverse[from*n:], n, f, n, 0, g.a[from*n:], n)
-	}
+	g.work.LowerTimes(g.a, g.inverse, f, n, n)
 	for from := 0; from < n; from += triangleBlock {
 		to := min(from+triangleBlock, n)
 		g.work.Gemm(false, true, n-from, to-from, to, 1, g.a[from*n:], n, g.inverse[from*n:], n, 0, g.b[from*n+from:], n)

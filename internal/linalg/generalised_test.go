@@ -132,6 +132,43 @@ func TestFactorRefuses(t *testing.T) {
 	}
 }
 
+// Inverse factors, products with a triangle and congruences of all sizes of
+// blocks, by their definitions.
+func TestInverseFactor(t *testing.T) {
+	everyKernel(t, func(t *testing.T) {
+		for _, n := range []int{0, 1, 24, 25, 31, 100, 131} {
+			s := overlapLike(n, 1.1)
+			x := slices.Clone(s)
+			for i := range n {
+				for j := i + 1; j < n; j++ {
+					x[i*n+j] = math.NaN() // is not read
+				}
+			}
+			var w Workspace
+			smallest, ok := w.InverseFactor(x, n)
+			if !ok || n > 0 && !(smallest > 0 && smallest <= 1) {
+				t.Fatalf("n = %d: smallest pivot %g", n, smallest)
+			}
+			one, product, want := make([]float64, n*n), make([]float64, n*n), make([]float64, n*n)
+			w.Congruence(one, x, s, n)
+			w.LowerTimes(product, x, s, n, n)
+			gemmSlow(false, false, n, n, n, 1, x, n, s, n, 0, want, n)
+			for i := range n {
+				one[i*n+i]--
+				for j := range n {
+					product[i*n+j] -= want[i*n+j]
+					if j > i && x[i*n+j] != 0 {
+						t.Fatalf("n = %d: the factor is no triangle", n)
+					}
+				}
+			}
+			if d, e := largest(one), largest(product); n > 0 && !(d <= 1e-12 && e <= 1e-12) {
+				t.Errorf("n = %d: X S X^T - 1 is %.1e, X S by blocks off by %.1e", n, d, e)
+			}
+		}
+	})
+}
+
 func BenchmarkGeneralised(b *testing.B) {
 	for _, k := range available() {
 		for _, n := range []int{60, 120, 240} {
