@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 
+	"torsieve/internal/linalg"
 	"torsieve/internal/scf"
 )
 
@@ -24,38 +25,56 @@ const remembered = 80
 // what was taken along is of no use.
 const warmCycles = 50
 
+// A way is how the moments became self-consistent.
+type way struct {
+	cycles      int     // of all attempts
+	cautious    bool    // the usual mixing did not do
+	hottest     float64 // kelvin: electrons were heated so far; 0: they were not
+	temperature float64 // kelvin: of the answer
+}
+
 // converge makes the moments self-consistent and keeps them in start: from
 // what is known of the last geometry, or from the neutral guess, or with
-// cautious mixing. It returns the number of cycles of all attempts, and whether
-// caution was needed.
-func (s *Surface) converge(ctx context.Context) (cycles int, cautious bool, err error) {
+// cautious mixing, or by way of hotter electrons.
+func (s *Surface) converge(ctx context.Context) (way, error) {
+	w := way{temperature: s.options.Temperature}
+	s.heat(w.temperature)
 	if s.warm {
 		s.mixer.Continue(remembered)
-		cycles, err = s.iterate(ctx, min(warmCycles, s.options.MaxCycles))
+		s.cycle.tolerance = firstTolerance
+		err := s.attempt(ctx, &w, min(warmCycles, s.options.MaxCycles))
 		if err == nil || ctx.Err() != nil {
-			return cycles, false, err
+			return w, err
 		}
 	}
 	for _, factor := range []float64{damping, cautiousDamping} {
-		s.mixer.Restart(factor)
+		w.cautious = factor == cautiousDamping
+		s.begin(factor)
 		s.guess()
-		var more int
-		more, err = s.iterate(ctx, s.options.MaxCycles)
-		cycles += more
-		if !unsettled(err) {
-			return cycles, factor == cautiousDamping, err
+		if err := s.attempt(ctx, &w, s.options.MaxCycles); !unsettled(err) {
+			return w, err
 		}
 	}
-	return cycles, true, fmt.Errorf("%w (%d cycles)", ErrNotConverged, cycles)
+	err := s.throughHeat(ctx, &w)
+	if unsettled(err) {
+		err = fmt.Errorf("%w (%d cycles)", ErrNotConverged, w.cycles)
+	}
+	return w, err
 }
 
 // unsettled says whether another way of mixing may help.
 func unsettled(err error) bool {
-	return errors.Is(err, scf.ErrNotConverged) || errors.Is(err, scf.ErrNotFinite)
+	return errors.Is(err, scf.ErrNotConverged) || errors.Is(err, scf.ErrNotFinite) || errors.Is(err, linalg.ErrNotFinite)
 }
 
-// iterate runs the self-consistency from start, with the mixer as it is.
-func (s *Surface) iterate(ctx context.Context, maxCycles int) (cycles int, err error) {
+// begin forgets what cycles before have shown.
+func (s *Surface) begin(factor float64) {
+	s.mixer.Restart(factor)
+	s.cycle.tolerance = 0
+}
+
+// attempt runs the self-consistency from start, with the mixer as it is.
+func (s *Surface) attempt(ctx context.Context, w *way, maxCycles int) error {
 	loop := scf.Loop{
 		Step:    s.cycle.step,
 		Mixer:   s.mixer,
@@ -63,11 +82,12 @@ func (s *Surface) iterate(ctx context.Context, maxCycles int) (cycles int, err e
 		MaxIter: maxCycles,
 	}
 	state, it, err := loop.Solve(ctx, s.start)
+	w.cycles += it.N
 	s.warm = err == nil
 	if s.warm {
 		copy(s.start, state)
 	}
-	return it.N, err
+	return err
 }
 
 // guess spreads the charge evenly over the atoms and, on each, over the shells

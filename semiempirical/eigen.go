@@ -22,6 +22,9 @@ type orbitals struct {
 	weights           []float64
 	entropy           float64 // -T S, hartree
 
+	s        []float64 // overlap matrix of the geometry
+	factored bool      // solver knows it
+
 	near   *subspace // for Fock matrices close to the one that was solved last; nil where spins differ
 	solved bool      // near may be used
 	isNear bool      // near, not c, holds the occupied orbitals
@@ -44,15 +47,30 @@ func newOrbitals(n int, alpha, beta, kT float64) *orbitals {
 // orbitals costs less than a solution from the start.
 const followFrom = 40
 
-// overlap takes in the overlap matrix of a new geometry.
-func (o *orbitals) overlap(s []float64) error {
+// overlap takes in the overlap matrix of a new geometry, which must stay as it
+// is until the next. warm says that the geometry is close to the last, so that
+// the occupied orbitals may be followed from there.
+func (o *orbitals) overlap(s []float64, warm bool) error {
+	o.s, o.factored = s, false
+	if warm && o.solved && o.near.carry(o, s) {
+		return nil
+	}
 	o.solved = false
-	if err := o.solver.Factor(s); err != nil {
+	return o.factor()
+}
+
+// factor prepares for full solutions, once a geometry.
+func (o *orbitals) factor() error {
+	if o.factored {
+		return nil
+	}
+	if err := o.solver.Factor(o.s); err != nil {
 		return fmt.Errorf("%w (%w)", ErrSingular, err)
 	}
 	if o.solver.SmallestPivot() < smallestPivot {
 		return ErrSingular
 	}
+	o.factored = true
 	return nil
 }
 
@@ -72,6 +90,9 @@ func (o *orbitals) solve(f []float64, tol float64) error {
 			o.solved = steps < tiresome
 			return nil
 		}
+	}
+	if err := o.factor(); err != nil {
+		return err
 	}
 	if err := o.solver.Solve(f, o.energy, o.c); err != nil {
 		return err

@@ -10,7 +10,7 @@ import (
 )
 
 // ErrNotConverged says that the charges did not become self-consistent, with
-// the ordinary mixing and then with a cautious one.
+// the ordinary mixing, with a cautious one, and with hotter electrons.
 var ErrNotConverged = fmt.Errorf("semiempirical: charges not self-consistent: %w", scf.ErrNotConverged)
 
 // ErrSingular says that two basis functions are as good as equal.
@@ -51,4 +51,14 @@ type CloseAtomsError struct {
 func (e *CloseAtomsError) Error() string {
 	return fmt.Sprintf("semiempirical: atoms %d and %d are %.3f angstrom apart, nearer than any bond",
 		e.I+1, e.J+1, e.Distance/units.Angstrom)
+}
+
+// A NotFiniteError names a coordinate that is no number or infinite.
+type NotFiniteError struct {
+	Atom int // from 0
+	Axis int // 0, 1, 2: x, y, z
+}
+
+func (e *NotFiniteError) Error() string {
+	return fmt.Sprintf("semiempirical: atom %d: coordinate %c is not a finite number", e.Atom+1, "xyz"[e.Axis])
 }

@@ -19,6 +19,8 @@ func TestNewRefuses(t *testing.T) {
 		says                 string
 	}{
 		{"francium", []int{9, 87}, 0, 1, Options{}, "atom 2 is Fr"},
+		{"no atoms", nil, 0, 1, Options{}, "no electrons"},
+		{"negative number", []int{-6}, 0, 1, Options{}, "atomic number -6"},
 		{"ghost atom", []int{0}, 0, 1, Options{}, "atomic number 0"},
 		{"beyond the table", []int{200}, 0, 1, Options{}, "atomic number 200"},
 		{"bare proton", []int{1}, 1, 1, Options{}, "no electrons"},
@@ -66,7 +68,9 @@ func TestGeometriesRefused(t *testing.T) {
 		t.Errorf("atoms on one another: %v", err)
 	}
 	for _, bad := range []float64{math.NaN(), math.Inf(1)} {
-		if _, err := s.Energy(t.Context(), []float64{0, 0, 0, 0, 0, 2, 0, bad, 0}); err == nil || !strings.Contains(err.Error(), "atom 3") {
+		var notFinite *NotFiniteError
+		_, err := s.Energy(t.Context(), []float64{0, 0, 0, 0, 0, 2, 0, bad, 0})
+		if !errors.As(err, &notFinite) || notFinite.Atom != 2 || notFinite.Axis != 1 || !strings.Contains(err.Error(), "atom 3: coordinate y") {
 			t.Errorf("coordinate %g: %v", bad, err)
 		}
 	}
@@ -90,8 +94,8 @@ func TestCyclesRunOut(t *testing.T) {
 		t.Fatal(err)
 	}
 	_, err = s.Energy(t.Context(), m.coordinates())
-	if !errors.Is(err, ErrNotConverged) || !errors.Is(err, scf.ErrNotConverged) || !strings.Contains(err.Error(), "4 cycles") {
-		t.Errorf("error %v, want ErrNotConverged after 2 and 2 cycles", err)
+	if !errors.Is(err, ErrNotConverged) || !errors.Is(err, scf.ErrNotConverged) || !strings.Contains(err.Error(), "14 cycles") {
+		t.Errorf("error %v, want ErrNotConverged after 2 cycles of each mixing and at five temperatures", err)
 	}
 }
 

@@ -1,7 +1,6 @@
 package semiempirical
 
 import (
-	"fmt"
 	"math"
 
 	"torsieve/internal/units"
@@ -24,15 +23,15 @@ func newGeometry(atoms int) *geometry {
 	return &geometry{x: make([]float64, 3*atoms), v: make([][3]float64, n), r: make([]float64, n)}
 }
 
-// set takes in new coordinates; they must be finite, and no two atoms may lie
-// on one another.
+// set takes in new coordinates; they must be finite (*NotFiniteError), and no
+// two atoms may lie on one another (*CloseAtomsError).
 func (g *geometry) set(x []float64) error {
 	if len(x) != len(g.x) {
 		panic("semiempirical: want three coordinates for each atom")
 	}
 	for i, c := range x {
 		if math.IsNaN(c) || math.IsInf(c, 0) {
-			return fmt.Errorf("semiempirical: atom %d: coordinate %c is not a finite number", i/3+1, "xyz"[i%3])
+			return &NotFiniteError{Atom: i / 3, Axis: i % 3}
 		}
 	}
 	copy(g.x, x)

@@ -164,7 +164,7 @@ func TestDensityFedTerms(t *testing.T) {
 			allNear(t, "dipole", c.out.dipole, ref.AtomicDipoles, 2e-8)
 			allNear(t, "quadrupole", c.out.quadrupole, ref.AtomicQuadrupoles, 2e-8)
 
-			if err := c.orbitals.overlap(m.hamiltonian.s); err != nil {
+			if err := c.orbitals.overlap(m.hamiltonian.s, false); err != nil {
 				t.Fatal(err)
 			}
 			out, err := c.step(c.out.vec)

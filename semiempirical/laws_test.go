@@ -163,6 +163,36 @@ func TestWarmAndColdStarts(t *testing.T) {
 	near(t, "sum of parts", energy, first.Energy, 1e-12)
 }
 
+// Orbitals that are followed from one geometry to the next, over small steps and
+// one that is too large for it, give what a start from none gives; some of the
+// geometries need no full solution.
+func TestOrbitalsAreCarried(t *testing.T) {
+	for _, name := range []string{"pdb-1pa9", "csd-VIMYUL"} {
+		m := named(t, name)
+		warm, cold, followed := m.surface(t, 1e-5), m.surface(t, 1e-5), 0
+		x := m.coordinates()
+		grad, want := make([]float64, len(x)), make([]float64, len(x))
+		mustGradient(t, warm, grad, x)
+		for k, step := range []float64{0.02, 0.05, 0.03, 0.4, 0.02} {
+			for i := range x {
+				x[i] += step * math.Sin(float64(7*i+11*k))
+			}
+			p := mustGradient(t, warm, grad, x)
+			if !warm.cycle.orbitals.factored {
+				followed++
+			}
+			cold.Reset()
+			q := mustGradient(t, cold, want, x)
+			near(t, name+" energy", p.Energy, q.Energy, 2e-10)
+			allNear(t, name+" gradient", grad, want, 1e-8)
+			allNear(t, name+" charges", p.Charges, q.Charges, 1e-8)
+		}
+		if followed < 2 {
+			t.Errorf("%s: orbitals were carried to %d of 5 geometries", name, followed)
+		}
+	}
+}
+
 // A start that is of no use is given up for the neutral guess.
 func TestUselessStart(t *testing.T) {
 	m := named(t, "glycine")

@@ -15,7 +15,7 @@ type Options struct {
 	Accuracy float64
 
 	Temperature float64 // of the electrons, kelvin; 300
-	MaxCycles   int     // 250, and as many again with cautious mixing
+	MaxCycles   int     // 250 in each attempt; heat.go has more limits
 
 	// Solvent is what surrounds the molecule, by any name that solvent.Find
 	// knows; empty or "none" is the gas phase.

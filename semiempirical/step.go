@@ -82,3 +82,7 @@ func (c *cycle) setTolerance(residual float64) {
 // followBelow is the residual below which the occupied orbitals are followed
 // from cycle to cycle.
 const followBelow = 5e-2
+
+// firstTolerance is for the first cycle that follows orbitals from another
+// geometry, whose residual is not known yet.
+const firstTolerance = 1e-6

@@ -39,8 +39,26 @@ func newSubspace(n, occupied int) *subspace {
 	}
 }
 
-// start says that the known orbitals are new.
+// start says that the known orbitals are those of a full solution.
 func (s *subspace) start() { clear(s.x) }
+
+// carry makes the known orbitals orthonormal with the overlap matrix of a
+// geometry close to their own, by the Cholesky factor of their overlaps, which
+// leaves each where it was but for what it has of those before. ok is false
+// where that is no small change; then the orbitals are as they were.
+func (s *subspace) carry(o *orbitals, overlap []float64) (ok bool) {
+	o.work.Congruence(s.f, o.c, overlap, s.n)
+	if smallest, ok := o.work.InverseFactor(s.f, s.n); !ok || smallest < leastLeft {
+		return false
+	}
+	o.work.LowerTimes(s.work, s.f, o.c, s.n, s.n)
+	copy(o.c, s.work)
+	return true
+}
+
+// leastLeft is the smallest share of an orbital that must be left beside the
+// others at the next geometry.
+const leastLeft = 0.5
 
 // Limits of subspace.solve.
 const (

@@ -63,8 +63,8 @@ func (s *Surface) Reset() { s.warm = false }
 
 // Energy returns the energy at x (3N, bohr) with its parts, the charges and
 // the dipole (of an ion: about the origin). Errors: *CloseAtomsError,
-// *solvent.GeometryError, ErrSingular, ErrNotConverged, an error for coordinates
-// that are not finite, and ctx's.
+// *NotFiniteError, *solvent.GeometryError, ErrSingular, ErrNotConverged, and
+// ctx's.
 func (s *Surface) Energy(ctx context.Context, x []float64) (molecule.Point, error) {
 	return s.point(ctx, nil, x)
 }
@@ -81,10 +81,10 @@ func (s *Surface) point(ctx context.Context, grad, x []float64) (molecule.Point,
 	if err := s.model.update(x, s.parts, grad != nil); err != nil {
 		return molecule.Point{}, err
 	}
-	if err := s.cycle.orbitals.overlap(s.model.hamiltonian.s); err != nil {
+	if err := s.cycle.orbitals.overlap(s.model.hamiltonian.s, s.warm); err != nil {
 		return molecule.Point{}, err
 	}
-	it, cautious, err := s.converge(ctx)
+	w, err := s.converge(ctx)
 	if err != nil {
 		return molecule.Point{}, err
 	}
@@ -94,8 +94,8 @@ func (s *Surface) point(ctx context.Context, grad, x []float64) (molecule.Point,
 		s.repulsion = s.model.repulsion.energy(s.model.geometry, nil)
 	}
 	p := s.collect()
-	p.Iterations = it
-	p.Warnings = s.warnings(cautious)
+	p.Iterations = w.cycles
+	p.Warnings = s.warnings(w)
 	return p, nil
 }
 
@@ -119,17 +119,18 @@ func (s *Surface) gradient(grad []float64) {
 // collect makes a point of the converged cycle.
 func (s *Surface) collect() molecule.Point {
 	m, c := s.model, s.cycle
-	p := molecule.Point{Parts: []molecule.Part{
-		{Name: "repulsion", Energy: s.repulsion},
-		{Name: "core Hamiltonian", Energy: c.core},
-	}}
+	constants := m.solventConstants()
+	p := molecule.Point{Parts: make([]molecule.Part, 0, 4+len(s.parts)+len(constants))}
+	p.Parts = append(p.Parts,
+		molecule.Part{Name: "repulsion", Energy: s.repulsion},
+		molecule.Part{Name: "core Hamiltonian", Energy: c.core})
 	for i, part := range s.parts {
 		p.Parts = append(p.Parts, molecule.Part{Name: part.name(), Energy: c.parts[i]})
 	}
 	p.Parts = append(p.Parts,
 		molecule.Part{Name: "three-body dispersion", Energy: m.dispersion.ThreeBody()},
 		molecule.Part{Name: "electronic entropy", Energy: c.orbitals.entropy})
-	p.Parts = append(p.Parts, m.solventConstants()...)
+	p.Parts = append(p.Parts, constants...)
 	for _, part := range p.Parts {
 		p.Energy += part.Energy
 	}
@@ -146,12 +147,17 @@ func (s *Surface) collect() molecule.Point {
 // smallGap in hartree: below it, one set of orbitals is a doubtful picture.
 const smallGap = 0.5 * units.ElectronVolt
 
-func (s *Surface) warnings(cautious bool) []string {
+func (s *Surface) warnings(way way) []string {
 	var w []string
 	if gap, ok := s.cycle.orbitals.gap(); ok && gap < smallGap {
 		w = append(w, fmt.Sprintf("gap between filled and empty orbitals is only %.2f eV: the energy is less reliable", gap/units.ElectronVolt))
 	}
-	if cautious {
+	switch usual := s.options.Temperature; {
+	case way.temperature > usual:
+		w = append(w, fmt.Sprintf("charges became self-consistent only with electrons at %.4g K instead of %.4g K: do not compare the energy with others", way.temperature, usual))
+	case way.hottest > 0:
+		w = append(w, fmt.Sprintf("charges became self-consistent at %.4g K only by way of electrons at %.4g K", usual, way.hottest))
+	case way.cautious:
 		w = append(w, "charges became self-consistent only with cautious mixing")
 	}
 	return w
