@@ -10,14 +10,20 @@
 // Units are bohr, hartree and the elementary charge; coordinates are flat.
 //
 // The surface is summed over 230 directions that are fixed in space, as the
-// parameters want it. So the energy changes when a molecule is turned: by 1e-5
-// to 3e-5 hartree as a rule, by 1e-4 (0.06 kcal/mol) at worst, seen with seven
-// molecules of 3 to 69 atoms in a hundred orientations each. The gradient is
-// that of the energy as it is computed. Where a point of the surface comes into
-// a sphere's soft border, the second derivative jumps; where 1e-6 of a point is
-// left, it is dropped, and the energy jumps by up to 1e-9 hartree, the gradient
-// by up to 3e-6 hartree/bohr: the noise floor of a relaxation and of second
-// derivatives from differences.
+// parameters want it. So turning a molecule changes what is computed. Of 14
+// ligands of 16 to 85 atoms in water, in 30 random orientations each (the full
+// test of package semiempirical): the energy has an rms deviation of 2e-5 hartree
+// (0.013 kcal/mol), and two orientations differ by up to 1.2e-4 hartree (0.08
+// kcal/mol; 2e-4 is the limit of the test); a component of the gradient has an rms
+// deviation of 2e-5 and a largest of 4e-4 hartree/bohr (limit 1e-3). Energies
+// that differ by less say nothing about which of two shapes is lower, unless the
+// molecules lie alike in space.
+//
+// The gradient is that of the energy as it is computed. Where a point of the
+// surface comes into a sphere's soft border, the second derivative jumps; where
+// 1e-6 of a point is left, it is dropped, and the energy jumps by up to 1e-9
+// hartree, the gradient by up to 3e-6 hartree/bohr: the noise floor of a
+// relaxation and of second derivatives from differences.
 package solvent
 
 // A Model is the solvation of one molecule. Call Update for each geometry, then
