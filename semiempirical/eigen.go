@@ -45,7 +45,7 @@ func newOrbitals(n int, alpha, beta, kT float64) *orbitals {
 
 // followFrom is the number of functions from which on following the occupied
 // orbitals costs less than a solution from the start.
-const followFrom = 40
+const followFrom = 64
 
 // overlap takes in the overlap matrix of a new geometry, which must stay as it
 // is until the next. warm says that the geometry is close to the last, so that

@@ -75,13 +75,13 @@ func (c *cycle) step(in []float64) (scf.Output, error) {
 func (c *cycle) setTolerance(residual float64) {
 	c.tolerance = 0
 	if residual < followBelow {
-		c.tolerance = min(max(1e-4*residual, 1e-13), 1e-6)
+		c.tolerance = max(1e-3*residual, 1e-13)
 	}
 }
 
 // followBelow is the residual below which the occupied orbitals are followed
 // from cycle to cycle.
-const followBelow = 5e-2
+const followBelow = 0.1
 
 // firstTolerance is for the first cycle that follows orbitals from another
 // geometry, whose residual is not known yet.

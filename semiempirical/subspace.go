@@ -168,8 +168,8 @@ func (s *subspace) orbitals(o *orbitals) (ok bool) {
 func (s *subspace) energyDensity(o *orbitals, w, f []float64) {
 	n, occ := s.n, s.occupied
 	cf := s.work[:occ*n]
-	o.work.Gemm(false, false, occ, n, n, 1, s.c, n, f, n, 0, cf, n)
-	o.work.Gemm(false, true, occ, occ, n, 1, cf, n, s.c, n, 0, s.inner, occ)
-	o.work.Gemm(false, false, occ, n, occ, 2, s.inner, occ, s.c, n, 0, cf, n)
-	o.work.Gemm(true, false, n, n, occ, 1, s.c, n, cf, n, 0, w, n)
+	o.work.Gemm(false, false, occ, n, n, 2, s.c, n, f, n, 0, cf, n)
+	o.work.SymmetricProduct(s.inner, cf, s.c, occ, n)
+	o.work.Gemm(false, false, occ, n, occ, 1, s.inner, occ, s.c, n, 0, cf, n)
+	o.work.SymmetricOuter(w, cf, s.c, occ, n)
 }

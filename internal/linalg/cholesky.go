@@ -93,15 +93,15 @@ func (w *Workspace) LowerTimes(c, l, b []float64, m, n int) {
 func (w *Workspace) Congruence(c, a, f []float64, n int) {
 	w.scaled = grow(w.scaled, n*n)
 	w.Gemm(false, false, n, n, n, 1, a, n, f, n, 0, w.scaled, n)
-	w.lowerProduct(c, w.scaled, a, n, n)
+	w.SymmetricProduct(c, w.scaled, a, n, n)
 }
 
-// lowerProduct computes C = A B^T, which the caller knows to be symmetric; A
-// and B have m rows of k numbers.
-func (w *Workspace) lowerProduct(c, a, b []float64, m, k int) {
-	const block = 96
-	for from := 0; from < m; from += block {
-		to := min(from+block, m)
+// SymmetricProduct computes C = A B^T, m rows of m numbers, which the caller
+// knows to be symmetric; A and B have m rows of k numbers. C is exactly
+// symmetric.
+func (w *Workspace) SymmetricProduct(c, a, b []float64, m, k int) {
+	for from := 0; from < m; from += symmetricBlock {
+		to := min(from+symmetricBlock, m)
 		w.Gemm(false, true, to-from, to, k, 1, a[from*k:], k, b, k, 0, c[from*m:], m)
 	}
 	mirror(c, m)

@@ -108,13 +108,23 @@ func (w *Workspace) WeightedOuter(p, c, weights []float64, n int) {
 			w.scaled[k*n+i] = f * v
 		}
 	}
-	const block = 96
-	for from := 0; from < n; from += block {
-		to := min(from+block, n)
-		w.Gemm(true, false, to-from, to, rows, 1, w.scaled[from:], n, c, n, 0, p[from*n:], n)
+	w.SymmetricOuter(p, w.scaled, c, rows, n)
+}
+
+// SymmetricOuter computes P = sum_k a_k b_k^T, a_k and b_k being rows of n
+// numbers, of which the caller knows that the sum is symmetric. P holds n*n
+// numbers and is exactly symmetric.
+func (w *Workspace) SymmetricOuter(p, a, b []float64, rows, n int) {
+	for from := 0; from < n; from += symmetricBlock {
+		to := min(from+symmetricBlock, n)
+		w.Gemm(true, false, to-from, to, rows, 1, a[from:], n, b, n, 0, p[from*n:], n)
 	}
 	mirror(p, n)
 }
+
+// symmetricBlock is the number of rows in which symmetric products are done, to
+// leave out most of the half above the diagonal.
+const symmetricBlock = 96
 
 // mirror copies the lower triangle onto the upper one.
 func mirror(p []float64, n int) {
