@@ -2,9 +2,11 @@ package basis
 
 import (
 	"bytes"
+	"compress/gzip"
 	"embed"
 	"encoding/json"
 	"fmt"
+	"io"
 	"maps"
 	"slices"
 	"strconv"
@@ -12,7 +14,7 @@ import (
 	"sync"
 )
 
-//go:embed data/*.json
+//go:embed data/*.json data/*.json.gz
 var files embed.FS
 
 // known lists every set: its published name and its decoder, which runs once.
@@ -71,7 +73,7 @@ func plain(name string) string {
 
 func once(file string) func() (*Set, error) {
 	return sync.OnceValues(func() (*Set, error) {
-		text, err := files.ReadFile("data/" + file + ".json")
+		text, err := read(file)
 		if err == nil {
 			var s *Set
 			if s, err = decode(text); err == nil {
@@ -82,9 +84,27 @@ func once(file string) func() (*Set, error) {
 	})
 }
 
+// read returns the text of a data file, which may be packed.
+func read(file string) ([]byte, error) {
+	text, err := files.ReadFile("data/" + file + ".json")
+	if err == nil {
+		return text, nil
+	}
+	packed, err := files.Open("data/" + file + ".json.gz")
+	if err != nil {
+		return nil, err
+	}
+	defer packed.Close()
+	z, err := gzip.NewReader(packed)
+	if err != nil {
+		return nil, err
+	}
+	return io.ReadAll(z)
+}
+
 // fileSet is a data file as it stands.
 type fileSet struct {
-	Schema, Name, Role, Description, Source string
+	Schema, Name, Role, Description, Revision, Source string
 
 	References map[string]string
 	Elements   map[string]fileElement

@@ -54,6 +54,7 @@ func NewRepulsion(shells []Shell) *Repulsion {
 func (r *Repulsion) Place(x []float64, threshold float64) {
 	r.threshold = threshold
 	r.makePairs(x)
+	r.expandPairs()
 	r.batch.cut, r.quartet.cut = 0, 0 // bounds are square roots: nothing in them is too small
 	r.bounds()
 	r.batch.cut, r.quartet.cut = primitiveShare*threshold, primitiveShare*threshold
@@ -200,14 +201,18 @@ func share(bra, ket *shellPair, ab, cd bool) float64 {
 // bounds computes the Schwarz bound of every pair.
 func (r *Repulsion) bounds() {
 	for k := range r.pairs {
-		p := &r.pairs[k]
-		v := r.one(p, p)
-		largest := 0.0
-		for f := range p.nf {
-			largest = max(largest, v[f*p.nf+f])
-		}
-		p.bound = math.Sqrt(largest)
+		r.pairs[k].bound = r.schwarz(&r.pairs[k])
 	}
+}
+
+// schwarz computes the bound of one pair.
+func (r *Repulsion) schwarz(p *shellPair) float64 {
+	v := r.one(p, p)
+	largest := 0.0
+	for f := range p.nf {
+		largest = max(largest, v[f*p.nf+f])
+	}
+	return math.Sqrt(largest)
 }
 
 // one returns the integrals of one quartet, nf_bra by nf_ket, without any

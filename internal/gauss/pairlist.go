@@ -70,7 +70,6 @@ func (r *Repulsion) makePairs(x []float64) {
 			r.pairs = append(r.pairs, p)
 		}
 	}
-	r.expandPairs()
 }
 
 // expandPairs makes the Hermite matrices where a general class may ask for

@@ -1,0 +1,5 @@
+//go:build !amd64
+
+package gauss
+
+func laneKernels() map[string]laneKernel { return nil }
