@@ -18,6 +18,7 @@ type operand struct {
 	x          []float64
 	ld         int
 	transposed bool
+	rows       []int32 // which rows, where not all in turn; then alpha is 1
 }
 
 // A product is C += alpha op(A) op(B).
@@ -41,7 +42,7 @@ func (w *Workspace) blocked(t tile, p product) {
 			for i0 := 0; i0 < p.m; i0 += blockRows {
 				m := min(blockRows, p.m-i0)
 				w.a = grow(w.a, roundUp(m, t.rows)*k)
-				packPanels(w.a, operand{p.a.x, p.a.ld, !p.a.transposed}, k0, k, i0, m, t.rows, p.alpha)
+				packPanels(w.a, operand{p.a.x, p.a.ld, !p.a.transposed, p.a.rows}, k0, k, i0, m, t.rows, p.alpha)
 				w.tiles(t, m, n, k, p.c[i0*p.ldc+j0:], p.ldc)
 			}
 		}
@@ -86,6 +87,10 @@ func packPanels(dst []float64, o operand, k0, k, j0, n, width int, alpha float64
 		columns := min(width, n-j)
 		if columns < width {
 			clear(panel)
+		}
+		if o.rows != nil {
+			packGathered(panel, o.x[j0+j:], o.rows[k0:k0+k], o.ld, columns, width)
+			continue
 		}
 		if o.transposed {
 			packColumns(panel, o.x[(j0+j)*o.ld+k0:], o.ld, k, columns, width, alpha)

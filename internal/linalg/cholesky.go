@@ -1,108 +1,108 @@
 package linalg
 
-import "math"
+import (
+	"math"
 
-// factorBlock is the size from which on a matrix is factorised in two halves.
-const factorBlock = 24
+	gonum "gonum.org/v1/gonum/blas/gonum"
+)
 
-// InverseFactor turns the symmetric positive definite matrix a, n rows of n
-// numbers of which the lower triangle is read, into the inverse of its lower
-// Cholesky factor, zeros above the diagonal. It returns the smallest pivot, the
-// square of the smallest diagonal element of the factor; where ok is false the
-// matrix is not positive definite, and a is spoilt.
-func (w *Workspace) InverseFactor(a []float64, n int) (smallest float64, ok bool) {
-	checkMatrix(n, n, a, n)
-	w.half = grow(w.half, (n-n/2)*n/2)
-	return w.inverseFactor(a, n, n)
-}
+const (
+	choleskyBlock = 48
+	solveBlock    = 16 // rows that are solved one by one
+)
 
-// inverseFactor works on n rows that are ld apart. From the inverse factor I of
-// the first half, with the rows B below it: the factor's L = B I^T, the rest
-// less L L^T has the inverse factor J, and between them stands -J L I. All but
-// the smallest blocks are matrix products.
-func (w *Workspace) inverseFactor(a []float64, n, ld int) (smallest float64, ok bool) {
-	if n <= factorBlock {
-		return inverseFactorSmall(a, n, ld)
+// Cholesky overwrites the lower triangle of the symmetric a (n*n numbers) with L,
+// L L^T = a, and the upper one with zeros. Only the lower triangle is read.
+//
+// Where a pivot is below tiny times the diagonal element that it came from, the
+// row belongs to a combination that the rows before it make up already: it is
+// left out. L then has one on the diagonal there and zeros below, and the row's
+// number is in dropped; the caller clears that row of whatever it solves for.
+// Errors: ErrNotFinite.
+func (w *Workspace) Cholesky(a []float64, n int, tiny float64) (dropped []int, err error) {
+	if len(a) != n*n {
+		panic("linalg: matrix of the wrong size")
 	}
-	h := n / 2 &^ 7
-	r := n - h
-	below, rest := a[h*ld:], a[h*ld+h:]
-	first, ok := w.inverseFactor(a, h, ld)
-	if !ok {
-		return 0, false
+	diagonal := make([]float64, n)
+	for i := range diagonal {
+		diagonal[i] = a[i*n+i]
 	}
-	half := w.half[:r*h]
-	w.Gemm(false, true, r, h, h, 1, below, ld, a, ld, 0, half, h)
-	for i := range r {
-		copy(below[i*ld:i*ld+h], half[i*h:(i+1)*h])
-	}
-	w.Gemm(false, true, r, r, h, -1, half, h, below, ld, 1, rest, ld)
-	second, ok := w.inverseFactor(rest, r, ld)
-	if !ok {
-		return 0, false
-	}
-	w.Gemm(false, false, r, h, h, 1, below, ld, a, ld, 0, half, h)
-	w.Gemm(false, false, r, h, r, -1, rest, ld, half, h, 0, below, ld)
-	for i := range h {
-		clear(a[i*ld+h : i*ld+n])
-	}
-	return min(first, second), true
-}
-
-// inverseFactorSmall does so number by number.
-func inverseFactorSmall(a []float64, n, ld int) (smallest float64, ok bool) {
-	smallest = math.Inf(1)
-	for i := range n {
-		row := a[i*ld : i*ld+n]
-		for j := range i {
-			other := a[j*ld : j*ld+j]
-			row[j] = (row[j] - dot(row[:j], other)) / a[j*ld+j]
-		}
-		pivot := row[i] - dot(row[:i], row[:i])
-		if !(pivot > 0) {
-			return 0, false
-		}
-		smallest = min(smallest, pivot)
-		row[i] = math.Sqrt(pivot)
-		clear(row[i+1:])
-	}
-	for j := range n {
-		a[j*ld+j] = 1 / a[j*ld+j]
-		for i := j + 1; i < n; i++ {
-			var sum float64
-			for k := j; k < i; k++ {
-				sum += a[i*ld+k] * a[k*ld+j]
+	for k := 0; k < n; k += choleskyBlock {
+		end := min(k+choleskyBlock, n)
+		for j := k; j < end; j++ {
+			pivot := a[j*n+j] - dot(a[j*n+k:j*n+j], a[j*n+k:j*n+j])
+			if math.IsNaN(pivot) || math.IsInf(pivot, 0) {
+				return nil, ErrNotFinite
 			}
-			a[i*ld+j] = -sum / a[i*ld+i]
+			if !(pivot > tiny*diagonal[j]) {
+				dropped = append(dropped, j)
+				clear(a[j*n : j*n+j])
+				a[j*n+j] = 1
+				for i := j + 1; i < n; i++ {
+					a[i*n+j] = 0
+				}
+				continue
+			}
+			root := math.Sqrt(pivot)
+			a[j*n+j] = root
+			row := a[j*n+k : j*n+j]
+			for i := j + 1; i < n; i++ {
+				a[i*n+j] = (a[i*n+j] - dot(a[i*n+k:i*n+j], row)) / root
+			}
+		}
+		w.updateTrailing(a, n, k, end)
+	}
+	for i := range n {
+		clear(a[i*n+i+1 : (i+1)*n])
+	}
+	return dropped, nil
+}
+
+// updateTrailing takes the product of columns k..end off the triangle below them.
+func (w *Workspace) updateTrailing(a []float64, n, k, end int) {
+	const block = 192
+	for i := end; i < n; i += block {
+		rows := min(block, n-i)
+		w.Gemm(false, true, rows, i+rows-end, end-k, -1, a[i*n+k:], n, a[end*n+k:], n, 1, a[i*n+end:], n)
+	}
+}
+
+// SolveLower overwrites b, n rows of columns numbers ldb apart, with the solution
+// X of L X = b, l holding the lower triangular L row by row.
+func (w *Workspace) SolveLower(l []float64, n int, b []float64, columns, ldb int) {
+	checkMatrix(n, n, l, n)
+	checkMatrix(n, columns, b, ldb)
+	w.solveLower(l, n, 0, n, b, columns, ldb)
+}
+
+// solveLower solves for rows lo..hi, from which those before are taken off.
+func (w *Workspace) solveLower(l []float64, n, lo, hi int, b []float64, columns, ldb int) {
+	if hi-lo <= solveBlock {
+		for i := lo; i < hi; i++ {
+			row := b[i*ldb : i*ldb+columns]
+			for j := lo; j < i; j++ {
+				gonum.Implementation{}.Daxpy(columns, -l[i*n+j], b[j*ldb:j*ldb+columns], 1, row, 1)
+			}
+			gonum.Implementation{}.Dscal(columns, 1/l[i*n+i], row, 1)
+		}
+		return
+	}
+	mid := lo + (hi-lo)/2/solveBlock*solveBlock
+	if mid == lo {
+		mid = lo + solveBlock
+	}
+	w.solveLower(l, n, lo, mid, b, columns, ldb)
+	w.Gemm(false, false, hi-mid, columns, mid-lo, -1, l[mid*n+lo:], n, b[lo*ldb:], ldb, 1, b[mid*ldb:], ldb)
+	w.solveLower(l, n, mid, hi, b, columns, ldb)
+}
+
+// SolveLowerTransposed overwrites the vector x with the solution of L^T y = x.
+func SolveLowerTransposed(l []float64, n int, x []float64) {
+	for i := n - 1; i >= 0; i-- {
+		x[i] /= l[i*n+i]
+		v := x[i]
+		for j, c := range l[i*n : i*n+i] {
+			x[j] -= v * c
 		}
 	}
-	return smallest, true
-}
-
-// LowerTimes computes C = L B, L being a lower triangle, m rows of m numbers
-// with zeros above the diagonal, and B and C m rows of n numbers.
-func (w *Workspace) LowerTimes(c, l, b []float64, m, n int) {
-	for from := 0; from < m; from += triangleBlock {
-		to := min(from+triangleBlock, m)
-		w.Gemm(false, false, to-from, n, to, 1, l[from*m:], m, b, n, 0, c[from*n:], n)
-	}
-}
-
-// Congruence computes the symmetric C = A F A^T for a symmetric F; all are n
-// rows of n numbers. C is exactly symmetric.
-func (w *Workspace) Congruence(c, a, f []float64, n int) {
-	w.scaled = grow(w.scaled, n*n)
-	w.Gemm(false, false, n, n, n, 1, a, n, f, n, 0, w.scaled, n)
-	w.SymmetricProduct(c, w.scaled, a, n, n)
-}
-
-// SymmetricProduct computes C = A B^T, m rows of m numbers, which the caller
-// knows to be symmetric; A and B have m rows of k numbers. C is exactly
-// symmetric.
-func (w *Workspace) SymmetricProduct(c, a, b []float64, m, k int) {
-	for from := 0; from < m; from += symmetricBlock {
-		to := min(from+symmetricBlock, m)
-		w.Gemm(false, true, to-from, to, k, 1, a[from*k:], k, b, k, 0, c[from*m:], m)
-	}
-	mirror(c, m)
 }

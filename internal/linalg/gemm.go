@@ -55,7 +55,7 @@ func (w *Workspace) Gemm(transA, transB bool, m, n, k int, alpha float64, a []fl
 		return
 	}
 	if active.gemm.micro != nil {
-		w.blocked(active.gemm, product{m, n, k, alpha, operand{a, lda, transA}, operand{b, ldb, transB}, c, ldc})
+		w.blocked(active.gemm, product{m, n, k, alpha, operand{a, lda, transA, nil}, operand{b, ldb, transB, nil}, c, ldc})
 		return
 	}
 	gonum.Implementation{}.Dgemm(trans(transA), trans(transB), m, n, k, alpha, a, lda, b, ldb, 1, c, ldc)
