@@ -25,12 +25,12 @@ type atomKey struct {
 }
 
 // atomDensities keeps what atomDensity made: the same for all molecules.
-var atomDensities sync.Map // atomKey to func() ([]float64, error)
+var atomDensities sync.Map // atomKey to func() (*start, error)
 
 // atomDensity returns the density matrix of one spherical atom in the set, row
 // by row over the functions of the atom, both spins together.
-func atomDensity(set *basis.Set, z int) ([]float64, error) {
-	once, _ := atomDensities.LoadOrStore(atomKey{set.Name, z}, sync.OnceValues(func() ([]float64, error) {
+func atomDensity(set *basis.Set, z int) (*start, error) {
+	once, _ := atomDensities.LoadOrStore(atomKey{set.Name, z}, sync.OnceValues(func() (*start, error) {
 		shells, err := set.Shells([]int{z})
 		if err != nil {
 			return nil, err
@@ -39,9 +39,10 @@ func atomDensity(set *basis.Set, z int) ([]float64, error) {
 		if err != nil {
 			return nil, fmt.Errorf("hf: atom %s in %s: %w", element.Symbol(z), set.Name, err)
 		}
-		return p, nil
+		f, err := factorise(p, gauss.Offsets(shells)[len(shells)])
+		return &start{p, f}, err
 	}))
-	return once.(func() ([]float64, error))()
+	return once.(func() (*start, error))()
 }
 
 // subshells lists n and l in the order in which atoms fill them.

@@ -26,11 +26,11 @@ func randomSymmetric(rng *rand.Rand, n int) []float64 {
 func TestBuildMatchesPlainSums(t *testing.T) {
 	s := find(t, "CH3OH")
 	for _, basisName := range []string{"MINIX", "6-31G*", "def2-SVP"} {
-		surface, err := New(s.numbers(t), 0, 1, Options{Method: "hf", Basis: basisName})
+		surface, err := New(s.numbers(t), 0, 1, Options{Method: "hf", Basis: basisName, TwoElectron: "exact"})
 		if err != nil {
 			t.Fatal(err)
 		}
-		f, x := surface.fock, s.coordinates()
+		f, x := exactOf(t, surface), s.coordinates()
 		n := f.n
 		all := plainIntegrals(surface.shells, x, n)
 		rng := rand.New(rand.NewPCG(7, 8))
@@ -76,6 +76,16 @@ func TestBuildMatchesPlainSums(t *testing.T) {
 	}
 }
 
+// exactOf returns the builder of a surface with four-centre integrals.
+func exactOf(t testing.TB, s *Surface) *fockBuilder {
+	t.Helper()
+	e, ok := s.engine.(*exactEngine)
+	if !ok {
+		t.Fatalf("engine %T, want an exact one", s.engine)
+	}
+	return e.fockBuilder
+}
+
 // plainIntegrals lists all n^4 integrals.
 func plainIntegrals(shells []gauss.Shell, x []float64, n int) []float64 {
 	all := make([]float64, n*n*n*n)
@@ -110,7 +120,7 @@ func TestBuildAllocations(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	f := surface.fock
+	f := exactOf(t, surface)
 	if err := f.place(t.Context(), s.coordinates(), 1e-10); err != nil {
 		t.Fatal(err)
 	}
@@ -134,7 +144,7 @@ func benchmarkCase(b *testing.B) (*fockBuilder, []float64) {
 	if err != nil {
 		b.Fatal(err)
 	}
-	return surface.fock, s.coordinates()
+	return exactOf(b, surface), s.coordinates()
 }
 
 func BenchmarkIntegrals(b *testing.B) {

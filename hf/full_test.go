@@ -40,3 +40,17 @@ func TestDrugLike(t *testing.T) {
 		}
 	})
 }
+
+func TestAllFittedSmallSystems(t *testing.T) {
+	entries(t, "fitted-small-systems.json.gz",
+		func(_ *referenceSystem, r *referenceResult) bool { return r.Functions > 40 },
+		func(t *testing.T, s *referenceSystem, r *referenceResult) { check(t, s, r, 0.01, 1e-8) })
+}
+
+// The reference leaves out combinations of fitting functions that have eigenvalues
+// below a threshold of its metric, which moves bromine compounds by 7e-7 hartree.
+func TestFittedDrugLike(t *testing.T) {
+	entries(t, "fitted-drug-like.json.gz",
+		func(*referenceSystem, *referenceResult) bool { return true },
+		func(t *testing.T, s *referenceSystem, r *referenceResult) { check(t, s, r, 0.01, 1e-6) })
+}

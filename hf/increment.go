@@ -6,6 +6,7 @@ import "context"
 // the change of the density makes: small changes need few integrals. Rounding
 // and neglect would pile up, so now and then it begins anew.
 type increment struct {
+	n        int
 	builds   int
 	total    []float64
 	spins    [][]float64
@@ -18,25 +19,25 @@ type increment struct {
 	anewEach int
 }
 
-func newIncrement(n, spins int) *increment {
-	m := func() []float64 { return make([]float64, n*n) }
-	inc := &increment{total: m(), j: m(), dTotal: m(), dj: m(), anewEach: 8}
-	for range spins {
+func newIncrement(n int) *increment { return &increment{n: n, anewEach: 8} }
+
+// reserve makes room for matrices of so many sets of orbitals.
+func (inc *increment) reserve(spins int) {
+	m := func() []float64 { return make([]float64, inc.n*inc.n) }
+	if inc.total == nil {
+		inc.total, inc.j, inc.dTotal, inc.dj = m(), m(), m(), m()
+	}
+	for len(inc.spins) < spins {
 		inc.spins, inc.ks = append(inc.spins, m()), append(inc.ks, m())
 		inc.dSpins, inc.dks = append(inc.dSpins, m()), append(inc.dks, m())
 	}
-	return inc
 }
 
-// forget makes the next build a whole one. A nil increment has nothing to
-// forget.
-func (inc *increment) forget() {
-	if inc != nil {
-		inc.builds = 0
-	}
-}
+// forget makes the next build a whole one.
+func (inc *increment) forget() { inc.builds = 0 }
 
 func (inc *increment) build(ctx context.Context, f *fockBuilder, total []float64, spins [][]float64, j []float64, ks [][]float64) error {
+	inc.reserve(len(spins))
 	if inc.builds%inc.anewEach == 0 {
 		clear(inc.total)
 		clear(inc.j)
@@ -50,7 +51,7 @@ func (inc *increment) build(ctx context.Context, f *fockBuilder, total []float64
 	for s := range spins {
 		subtract(inc.dSpins[s], spins[s], inc.spins[s])
 	}
-	if err := f.build(ctx, inc.dTotal, inc.dSpins, inc.dj, inc.dks); err != nil {
+	if err := f.build(ctx, inc.dTotal, inc.dSpins[:len(spins)], inc.dj, inc.dks[:len(spins)]); err != nil {
 		return err
 	}
 	accumulate(j, inc.j, inc.dj)

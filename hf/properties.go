@@ -11,7 +11,7 @@ import (
 // Source: R. S. Mulliken, J. Chem. Phys. 1955, 23, 1833, doi:10.1063/1.1740588.
 func (s *Surface) mulliken(p, overlap []float64) []float64 {
 	q := append([]float64(nil), s.nuclei...)
-	n := s.fock.n
+	n := s.offsets[len(s.shells)]
 	for i := range s.shells {
 		sh := &s.shells[i]
 		for m := s.offsets[i]; m < s.offsets[i+1]; m++ {

@@ -47,7 +47,7 @@ func readPublished(t *testing.T) publishedFile {
 func energyOf(t *testing.T, basisName string, charge int, atoms []string, x []float64) float64 {
 	t.Helper()
 	s := referenceSystem{Atoms: atoms}
-	surface, err := New(s.numbers(t), charge, 1, Options{Method: "hf", Basis: basisName, Accuracy: 0.01})
+	surface, err := New(s.numbers(t), charge, 1, Options{Method: "hf", Basis: basisName, Accuracy: 0.01, TwoElectron: "exact"})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -129,12 +129,12 @@ func heliumHydride(t *testing.T, w *workedExample) float64 {
 	}
 	x := []float64{0, 0, 0, 0, 0, 1.4632}
 	s := &Surface{numbers: []int{2, 1}, nuclei: []float64{2, 1}, charge: 1, occupied: []int{1}, accuracy: 0.01,
-		shells: shells, offsets: gauss.Offsets(shells), fock: newFockBuilder(shells, 1<<20)}
+		shells: shells, offsets: gauss.Offsets(shells), engine: newExactEngine(newFockBuilder(shells, 1<<20))}
 	f, one, err := s.prepare(t.Context(), x, 2/1.4632)
 	if err != nil {
 		t.Fatal(err)
 	}
-	if _, err := f.converge(t.Context(), 1e-4, func() { f.guess(make([]float64, 4)) }); err != nil {
+	if _, err := f.converge(t.Context(), 1e-4, func() { f.guess(&start{p: make([]float64, 4)}) }); err != nil {
 		t.Fatal(err)
 	}
 	near := func(what string, got, want float64) {
@@ -147,7 +147,7 @@ func heliumHydride(t *testing.T, w *workedExample) float64 {
 	near("electronic energy", f.parts.sum(), w.Electronic)
 	near("lowest level", f.levels[0], w.Levels[0])
 	near("highest level", f.levels[1], w.Levels[1])
-	near("coefficient of He", math.Sqrt(f.densities[0][0]), w.Occupied[0])
-	near("coefficient of H", math.Sqrt(f.densities[0][3]), w.Occupied[1])
+	near("coefficient of He", math.Sqrt(f.densities.spins[0][0]), w.Occupied[0])
+	near("coefficient of H", math.Sqrt(f.densities.spins[0][3]), w.Occupied[1])
 	return f.out.Energy
 }

@@ -18,12 +18,11 @@ import (
 // R. K. Nesbet, J. Chem. Phys. 1954, 22, 571.
 type field struct {
 	ctx       context.Context
-	fock      *fockBuilder
+	engine    engine
 	basis     *orthogonal
 	core      []float64 // kinetic energy and nuclear attraction
 	repulsion float64   // of the nuclei, hartree
 	occupied  []int     // orbitals of each spin
-	each      float64   // electrons in an occupied orbital: 2 closed-shell, 1
 
 	// How the next density is made; see converge.go.
 	damping float64 // share of the old density
@@ -34,20 +33,18 @@ type field struct {
 	residual float64 // largest element of a commutator
 	gap      float64 // between occupied and empty levels of the given state, hartree
 
-	densities [][]float64 // by spin, one electron an orbital, n by n
-	total     []float64   // of both spins
+	densities density
 	projector [][]float64 // densities in the orthonormal basis
 	started   bool        // there are densities
 	coulomb   []float64
 	exchange  [][]float64
 	levels    []float64
 	z, a      []float64
-	orbitals  []float64
 	matrix    []float64
 	out       scf.Output
 	eigen     *linalg.Eigen
 	work      linalg.Workspace
-	increment *increment
+	old       *mixture
 }
 
 // electronic holds the parts of the electronic energy, hartree.
@@ -57,26 +54,24 @@ type electronic struct {
 
 func (e electronic) sum() float64 { return e.core + e.coulomb + e.exchange }
 
-func newField(fock *fockBuilder, basis *orthogonal, core []float64, repulsion float64, occupied []int) *field {
+func newField(e engine, basis *orthogonal, core []float64, repulsion float64, occupied []int) *field {
 	n, m := basis.n, basis.rows
-	f := &field{fock: fock, basis: basis, core: core, repulsion: repulsion, occupied: occupied, each: 1}
-	if len(occupied) == 1 {
-		f.each = 2
-	}
+	f := &field{engine: e, basis: basis, core: core, repulsion: repulsion, occupied: occupied}
 	matrices := func(size int) (out [][]float64) {
 		for range occupied {
 			out = append(out, make([]float64, size))
 		}
 		return out
 	}
-	f.densities, f.exchange, f.projector = matrices(n*n), matrices(n*n), matrices(m*m)
-	f.total, f.coulomb, f.matrix = make([]float64, n*n), make([]float64, n*n), make([]float64, n*n)
-	f.levels, f.z, f.a, f.orbitals = make([]float64, m), make([]float64, m*m), make([]float64, m*m), make([]float64, m*n)
+	f.densities = density{each: 1, total: make([]float64, n*n), spins: matrices(n * n), factors: make([]factor, len(occupied))}
+	if len(occupied) == 1 {
+		f.densities.each = 2
+	}
+	f.exchange, f.projector = matrices(n*n), matrices(m*m)
+	f.coulomb, f.matrix = make([]float64, n*n), make([]float64, n*n)
+	f.levels, f.z, f.a = make([]float64, m), make([]float64, m*m), make([]float64, m*m)
 	f.out.State, f.out.Residual = make([]float64, m*m*len(occupied)), make([]float64, m*m*len(occupied))
 	f.eigen = linalg.NewEigen(m)
-	if !fock.complete() {
-		f.increment = newIncrement(n, len(occupied))
-	}
 	return f
 }
 
@@ -84,7 +79,7 @@ func newField(fock *fockBuilder, basis *orthogonal, core []float64, repulsion fl
 func (f *field) start(ctx context.Context) ([]float64, error) {
 	f.started, f.damping, f.shift = false, 0, 0
 	f.ctx = ctx
-	f.increment.forget()
+	f.engine.forget()
 	if err := f.build(); err != nil {
 		return nil, err
 	}
@@ -93,6 +88,9 @@ func (f *field) start(ctx context.Context) ([]float64, error) {
 
 // step is the scf.Step.
 func (f *field) step(in []float64) (scf.Output, error) {
+	if f.started && f.damping > 0 {
+		f.keep()
+	}
 	if err := f.density(in); err != nil {
 		return scf.Output{}, err
 	}
@@ -108,7 +106,7 @@ func (f *field) density(in []float64) error {
 	n, m := f.basis.n, f.basis.rows
 	f.gap = math.Inf(1)
 	for s, occupied := range f.occupied {
-		p, q := f.densities[s], f.projector[s]
+		p, q := f.densities.spins[s], f.projector[s]
 		copy(f.a, in[s*m*m:(s+1)*m*m])
 		if f.started && f.shift > 0 { // empty levels move up by the shift
 			for i, v := range q {
@@ -124,13 +122,11 @@ func (f *field) density(in []float64) error {
 		if occupied > 0 && occupied < m {
 			f.gap = min(f.gap, f.levels[occupied]-f.levels[occupied-1])
 		}
-		old := 0.0
-		if f.started {
-			old = f.damping
-		}
-		f.basis.orbitals(f.orbitals, f.z, occupied)
-		f.work.Gemm(true, false, n, n, occupied, 1-old, f.orbitals, n, f.orbitals, n, old, p, n)
-		f.work.Gemm(true, false, m, m, occupied, 1-old, f.z, m, f.z, m, old, q, m)
+		c := &f.densities.factors[s]
+		c.rows, c.c = occupied, resize(c.c, occupied*n)
+		f.basis.orbitals(c.c, f.z, occupied)
+		f.work.Gemm(true, false, n, n, occupied, 1, c.c, n, c.c, n, 0, p, n)
+		f.work.Gemm(true, false, m, m, occupied, 1, f.z, m, f.z, m, 0, q, m)
 	}
 	f.started = true
 	return nil
@@ -139,18 +135,15 @@ func (f *field) density(in []float64) error {
 // build makes the Fock matrices and the energy of the densities.
 func (f *field) build() error {
 	m := f.basis.rows
-	clear(f.total)
-	for _, p := range f.densities {
-		for i, v := range p {
-			f.total[i] += f.each * v
-		}
-	}
-	if err := f.twoElectron(); err != nil {
+	d := &f.densities
+	d.sum()
+	if err := f.engine.build(f.ctx, d, f.coulomb, f.exchange); err != nil {
 		return err
 	}
-	f.parts = electronic{core: inner(f.total, f.core), coulomb: 0.5 * inner(f.total, f.coulomb)}
+	f.mix()
+	f.parts = electronic{core: inner(d.total, f.core), coulomb: 0.5 * inner(d.total, f.coulomb)}
 	for s, k := range f.exchange {
-		f.parts.exchange -= 0.5 * f.each * inner(f.densities[s], k)
+		f.parts.exchange -= 0.5 * d.each * inner(d.spins[s], k)
 		for i, h := range f.core {
 			f.matrix[i] = h + f.coulomb[i] - k[i]
 		}
@@ -160,13 +153,14 @@ func (f *field) build() error {
 	return nil
 }
 
-// twoElectron fills f.coulomb and f.exchange. Where each build computes the
-// integrals anew, it is the change since the last build that they are for.
-func (f *field) twoElectron() error {
-	if f.increment == nil {
-		return f.fock.build(f.ctx, f.total, f.densities, f.coulomb, f.exchange)
+// sum makes the total of the spins.
+func (d *density) sum() {
+	clear(d.total)
+	for _, p := range d.spins {
+		for i, v := range p {
+			d.total[i] += d.each * v
+		}
 	}
-	return f.increment.build(f.ctx, f.fock, f.total, f.densities, f.coulomb, f.exchange)
 }
 
 // commutators writes F P - P F of each spin into the residual.

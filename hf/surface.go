@@ -27,6 +27,11 @@ type Options struct {
 	// Basis is a name that basis.Load knows. "" is MINIX for hf-3c, which has
 	// no other, and def2-SVP else.
 	Basis string
+	// TwoElectron says how electrons repel one another: "exact" by four-centre
+	// integrals, "fitted" by density fitting, which moves totals by up to a
+	// millihartree and conformers against each other by hundredths of a kcal/mol.
+	// "auto", the default, is exact in MINIX and fitted else.
+	TwoElectron string
 	// Accuracy scales the convergence limits: 1, the default, ends when the
 	// energy changes by less than 1e-7 hartree and the commutator is below
 	// 1e-5. Below 1 also smaller integrals count.
@@ -61,7 +66,7 @@ type Surface struct {
 	set      *basis.Set
 	shells   []gauss.Shell
 	offsets  []int
-	fock     *fockBuilder
+	engine   engine
 	terms    []term
 }
 
@@ -96,13 +101,33 @@ func New(numbers []int, charge, multiplicity int, o Options) (*Surface, error) {
 	if s.terms, err = terms(numbers, o.Method, set.Name); err != nil {
 		return nil, &Unsupported{Reason: err.Error(), Err: err}
 	}
-	matrices := matrixBytes(s.offsets[len(s.shells)], len(s.occupied))
-	if matrices > o.MemoryBytes {
-		return nil, &Unsupported{Reason: fmt.Sprintf("Hartree-Fock in %s needs at least %d MB for this molecule, %d MB are allowed",
-			set.Name, matrices>>20+1, o.MemoryBytes>>20)}
+	s.engine, err = s.newEngine(o)
+	return s, err
+}
+
+// newEngine returns what computes the repulsion of electrons.
+func (s *Surface) newEngine(o Options) (engine, error) {
+	least := matrixBytes(s.offsets[len(s.shells)], len(s.occupied))
+	var auxiliary []gauss.Shell
+	left := o.MemoryBytes - least
+	if o.TwoElectron == twoElectronFitted {
+		set, err := basis.FieldFitting()
+		if err != nil {
+			return nil, err
+		}
+		if auxiliary, err = set.Shells(s.numbers); err != nil {
+			return nil, &Unsupported{Reason: "density fitting: " + err.Error() + "; exact integrals need no fitting set", Err: err}
+		}
+		least += directBytes(s.offsets[len(s.shells)], gauss.Offsets(auxiliary)[len(auxiliary)], 1)
 	}
-	s.fock = newFockBuilder(s.shells, o.MemoryBytes-matrices)
-	return s, nil
+	if least > o.MemoryBytes {
+		return nil, &Unsupported{Reason: fmt.Sprintf("Hartree-Fock in %s needs at least %d MB for this molecule, %d MB are allowed",
+			s.set.Name, least>>20+1, o.MemoryBytes>>20)}
+	}
+	if auxiliary != nil {
+		return newFittedEngine(s.shells, auxiliary, left), nil
+	}
+	return newExactEngine(newFockBuilder(s.shells, left)), nil
 }
 
 // settle fills in defaults and loads the basis.
@@ -130,6 +155,9 @@ func (o Options) settle() (Options, *basis.Set, error) {
 	if o.Method == "hf-3c" && set.Name != "MINIX" {
 		return o, nil, fmt.Errorf("hf: hf-3c is defined in MINIX only, not in %s", set.Name)
 	}
+	if o.TwoElectron, err = settleTwoElectron(o.TwoElectron, set.Name); err != nil {
+		return o, nil, err
+	}
 	if o.Accuracy == 0 {
 		o.Accuracy = 1
 	}
@@ -140,6 +168,26 @@ func (o Options) settle() (Options, *basis.Set, error) {
 		o.MemoryBytes = defaultMemory
 	}
 	return o, set, nil
+}
+
+const (
+	twoElectronAuto   = "auto"
+	twoElectronExact  = "exact"
+	twoElectronFitted = "fitted"
+)
+
+// settleTwoElectron replaces "auto" by what it stands for in a basis.
+func settleTwoElectron(name, basis string) (string, error) {
+	switch name {
+	case twoElectronExact, twoElectronFitted:
+		return name, nil
+	case "", twoElectronAuto:
+		if basis == "MINIX" {
+			return twoElectronExact, nil
+		}
+		return twoElectronFitted, nil
+	}
+	return "", fmt.Errorf("hf: no two-electron method %q; there are auto, exact and fitted", name)
 }
 
 // occupy deals the electrons out to the spins.
@@ -227,11 +275,11 @@ func (s *Surface) Energy(ctx context.Context, x []float64) (molecule.Point, erro
 		return molecule.Point{}, err
 	}
 	f := r.field
-	kinetic := inner(f.total, r.one.Kinetic)
+	kinetic := inner(f.densities.total, r.one.Kinetic)
 	p := molecule.Point{
 		Iterations: r.iterations,
-		Charges:    s.mulliken(f.total, r.one.Overlap),
-		Dipole:     s.dipole(f.total, r.one.Dipole, x),
+		Charges:    s.mulliken(f.densities.total, r.one.Overlap),
+		Dipole:     s.dipole(f.densities.total, r.one.Dipole, x),
 		Warnings:   s.doubts(r, kinetic),
 		Parts: []molecule.Part{
 			{Name: "nuclear repulsion", Energy: repulsion},
@@ -278,7 +326,7 @@ func (s *Surface) solve(ctx context.Context, x []float64, repulsion float64) (*r
 // prepare computes the integrals at x.
 func (s *Surface) prepare(ctx context.Context, x []float64, repulsion float64) (*field, *gauss.OneElectron, error) {
 	one := gauss.NewOneElectron(s.shells, x)
-	n := s.fock.n
+	n := s.offsets[len(s.shells)]
 	orthogonal, err := newOrthogonal(one.Overlap, n)
 	if err != nil {
 		return nil, nil, err
@@ -290,8 +338,8 @@ func (s *Surface) prepare(ctx context.Context, x []float64, repulsion float64) (
 	for i, t := range one.Kinetic {
 		core[i] += t
 	}
-	if err := s.fock.place(ctx, x, integralCut*min(1, max(s.accuracy, 1e-2))); err != nil {
+	if err := s.engine.place(ctx, x, integralCut*min(1, max(s.accuracy, 1e-2))); err != nil {
 		return nil, nil, err
 	}
-	return newField(s.fock, orthogonal, core, repulsion, s.occupied), one, nil
+	return newField(s.engine, orthogonal, core, repulsion, s.occupied), one, nil
 }

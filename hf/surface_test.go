@@ -143,7 +143,7 @@ func TestDirectMatchesStored(t *testing.T) {
 		s := find(t, c.name)
 		numbers := s.numbers(t)
 		energy := func(memory int64) (float64, *fockBuilder) {
-			o := Options{Method: "hf", Basis: c.basis, Accuracy: 0.01, MemoryBytes: memory}
+			o := Options{Method: "hf", Basis: c.basis, Accuracy: 0.01, MemoryBytes: memory, TwoElectron: "exact"}
 			surface, err := New(numbers, 0, c.mult, o)
 			if err != nil {
 				t.Fatal(err)
@@ -152,7 +152,7 @@ func TestDirectMatchesStored(t *testing.T) {
 			if err != nil {
 				t.Fatal(err)
 			}
-			return p.Energy, surface.fock
+			return p.Energy, exactOf(t, surface)
 		}
 		want, all := energy(0)
 		if !all.complete() {
@@ -257,6 +257,7 @@ func TestRefusals(t *testing.T) {
 		{name: "method", numbers: []int{2}, mult: 1, want: `no method "dft"`, o: Options{Method: "dft"}, notTyped: true},
 		{name: "basis", numbers: []int{2}, mult: 1, want: `no basis set "cc-pvdz"`, o: Options{Method: "hf", Basis: "cc-pvdz"}, notTyped: true},
 		{name: "hf-3c elsewhere", numbers: []int{2}, mult: 1, want: "in MINIX only", o: Options{Basis: "def2-svp"}, notTyped: true},
+		{name: "two-electron", numbers: []int{2}, mult: 1, want: `no two-electron method "best"`, o: Options{TwoElectron: "best"}, notTyped: true},
 		{name: "accuracy", numbers: []int{2}, mult: 1, want: "above 0", o: Options{Accuracy: math.NaN()}, notTyped: true},
 	} {
 		t.Run(c.name, func(t *testing.T) {
@@ -330,7 +331,7 @@ func TestMemoryEstimate(t *testing.T) {
 
 // Water in the smallest basis, at a geometry that many have computed.
 func ExampleSurface_Energy() {
-	s, err := New([]int{8, 1, 1}, 0, 1, Options{Method: "hf", Basis: "STO-3G"})
+	s, err := New([]int{8, 1, 1}, 0, 1, Options{Method: "hf", Basis: "STO-3G", TwoElectron: "exact"})
 	if err != nil {
 		fmt.Println(err)
 		return

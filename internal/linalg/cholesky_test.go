@@ -118,7 +118,7 @@ func TestGather(t *testing.T) {
 		}
 		var w Workspace
 		got := make([]float64, m*n)
-		w.Gather(m, n, a, ra, lda, b, rb, ldb, got, n)
+		w.Gather(m, n, a, ra, lda, b, rb, ldb, 0, got, n)
 		for i := range want {
 			if math.Abs(got[i]-want[i]) > 1e-11 {
 				t.Fatalf("%s: element %d is %g, want %g", k.name, i, got[i], want[i])

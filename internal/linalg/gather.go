@@ -1,15 +1,15 @@
 package linalg
 
-// Gather computes C = sum over k of a_k b_k^T, where a_k is row rowsA[k] of a, m
+// Gather computes C = beta C + sum over k of a_k b_k^T, where a_k is row rowsA[k] of a, m
 // numbers, b_k row rowsB[k] of b, n numbers, and C has m rows; lda, ldb and ldc
 // are the distances between rows in memory. It is the product of two matrices of
 // chosen rows that need not stand together.
-func (w *Workspace) Gather(m, n int, a []float64, rowsA []int32, lda int, b []float64, rowsB []int32, ldb int, c []float64, ldc int) {
+func (w *Workspace) Gather(m, n int, a []float64, rowsA []int32, lda int, b []float64, rowsB []int32, ldb int, beta float64, c []float64, ldc int) {
 	checkMatrix(m, n, c, ldc)
 	if len(rowsA) != len(rowsB) {
 		panic("linalg: matrix of the wrong size")
 	}
-	scaleMatrix(m, n, 0, c, ldc)
+	scaleMatrix(m, n, beta, c, ldc)
 	if m == 0 || n == 0 || len(rowsA) == 0 {
 		return
 	}

@@ -1,0 +1,83 @@
+package hf
+
+import (
+	"fmt"
+	"testing"
+	"time"
+
+	"torsieve/internal/linalg"
+)
+
+// Each single point is reported with its atoms and functions, and with the time
+// of one product of matrices of 500 rows measured beside it: the ratio says how far a
+// run is from what products alone would take, whatever the machine.
+func BenchmarkEnergy(b *testing.B) {
+	for _, c := range []struct {
+		method, basis string
+		atoms         []int
+	}{
+		{"hf-3c", "MINIX", []int{20, 30, 40, 50, 60}},
+		{"hf", "def2-SVP", []int{20, 30, 40, 50}},
+		{"hf", "def2-TZVP", []int{20, 30}},
+		{"mp2", "def2-SVP", []int{20, 40}},
+	} {
+		for _, atoms := range c.atoms {
+			b.Run(fmt.Sprintf("%s/%s/%d", c.method, c.basis, atoms), func(b *testing.B) {
+				benchmarkEnergy(b, c.method, c.basis, atoms)
+			})
+		}
+	}
+}
+
+func benchmarkEnergy(b *testing.B, method, basisName string, atoms int) {
+	s := ofSize(b, atoms)
+	surface, err := New(s.numbers(b), 0, 1, Options{Method: method, Basis: basisName, MemoryBytes: 12 << 30})
+	if err != nil {
+		b.Fatal(err)
+	}
+	product := productSeconds()
+	iterations := 0
+	for b.Loop() {
+		p, err := surface.Energy(b.Context(), s.coordinates())
+		if err != nil {
+			b.Fatal(err)
+		}
+		iterations = p.Iterations
+	}
+	seconds := b.Elapsed().Seconds() / float64(b.N)
+	product = min(product, productSeconds())
+	b.ReportMetric(seconds, "s")
+	b.ReportMetric(seconds/product, "products500")
+	b.ReportMetric(0.25/product, "GFLOP/s")
+	b.ReportMetric(float64(atoms), "atoms")
+	b.ReportMetric(float64(surface.offsets[len(surface.shells)]), "functions")
+	b.ReportMetric(float64(iterations), "iterations")
+}
+
+// ofSize returns the benchmark molecule of that many atoms.
+func ofSize(b *testing.B, atoms int) *referenceSystem {
+	for _, s := range readReference(b, "benchmark-molecules.json.gz") {
+		if len(s.Atoms) == atoms {
+			return &s
+		}
+	}
+	b.Fatalf("no molecule of %d atoms", atoms)
+	return nil
+}
+
+// productSeconds is the time of one product of matrices of 500 rows, the best of
+// several.
+func productSeconds() float64 {
+	const n = 500
+	x, y := make([]float64, n*n), make([]float64, n*n)
+	for i := range x {
+		x[i] = float64(i%7) - 3
+	}
+	best := time.Hour
+	for range 20 {
+		start := time.Now()
+		linalg.Gemm(false, false, n, n, n, 1, x, n, x, n, 0, y, n)
+		best = min(best, time.Since(start))
+	}
+	return best.Seconds()
+}
