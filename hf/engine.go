@@ -30,6 +30,8 @@ type engine interface {
 	place(ctx context.Context, x []float64, threshold float64) error
 	// forget drops what is left of builds of an earlier run of densities.
 	forget()
+	// release gives up memory that the next place makes anew.
+	release()
 	// build writes the Coulomb matrix of d.total into j and the exchange matrix
 	// of each of d.spins into ks, all n by n and symmetric.
 	build(ctx context.Context, d *density, j []float64, ks [][]float64) error
@@ -53,6 +55,8 @@ func (e *exactEngine) place(ctx context.Context, x []float64, threshold float64)
 }
 
 func (e *exactEngine) forget() { e.increment.forget() }
+
+func (e *exactEngine) release() { e.values = nil }
 
 func (e *exactEngine) build(ctx context.Context, d *density, j []float64, ks [][]float64) error {
 	if e.complete() {

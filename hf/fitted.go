@@ -39,6 +39,7 @@ type fittedEngine struct {
 	orbitals       []float64 // n rows of occupied orbitals
 	half           []float64 // X
 	g, packed      []float64
+	direct         halfTransform
 	work           linalg.Workspace
 }
 
@@ -46,6 +47,7 @@ func newFittedEngine(shells, auxiliary []gauss.Shell, budget int64) *fittedEngin
 	f := &fittedEngine{fit: gauss.NewFitting(shells, auxiliary), budget: budget}
 	f.pairs.offsets = gauss.Offsets(shells)
 	f.n, f.aux = f.pairs.offsets[len(shells)], f.fit.Functions()
+	f.direct = halfTransform{fit: f.fit, offsets: f.pairs.offsets, aux: f.aux}
 	return f
 }
 
@@ -56,6 +58,8 @@ const (
 )
 
 func (f *fittedEngine) forget() {}
+
+func (f *fittedEngine) release() { f.blocks, f.chunk, f.columns, f.half = nil, nil, nil, nil }
 
 func (f *fittedEngine) place(ctx context.Context, x []float64, threshold float64) error {
 	f.fit.Place(x, threshold)
@@ -68,7 +72,8 @@ func (f *fittedEngine) place(ctx context.Context, x []float64, threshold float64
 	}
 	f.width = blockWidth(f.aux)
 	if f.stored = storedBytes(f.n, f.aux, f.pairs.rows()) <= f.budget; !f.stored {
-		f.blocks, f.chunk, f.columns = nil, nil, nil
+		f.release()
+		f.direct.place()
 		return nil
 	}
 	return f.fill(ctx)
@@ -266,7 +271,7 @@ func (f *fittedEngine) exchange(ctx context.Context, block []float64, c *factor,
 			f.work.Gather(rows, f.width, f.orbitals[i:], partner, c.rows, block, row, f.width, 0, f.half[m*one:], f.width)
 		}
 		f.sumHalf(i, rows, f.width, c.rows, each)
-		addSquare(&f.work, k, f.half, f.n, one)
+		f.work.AddSquare(k, f.half, f.n, one)
 	}
 	return nil
 }
@@ -284,15 +289,5 @@ func (f *fittedEngine) sumHalf(first, rows, width, all int, each float64) {
 		for i, c := range f.orbitals[m*all+first:][:rows] {
 			gonum.Implementation{}.Daxpy(width, each*c, f.half[(m*rows+i)*width:], 1, f.g, 1)
 		}
-	}
-}
-
-// addSquare adds the lower triangle of X X^T, X having n rows of k numbers, to
-// the n by n matrix c.
-func addSquare(w *linalg.Workspace, c, x []float64, n, k int) {
-	const rows = 96
-	for i := 0; i < n; i += rows {
-		end := min(i+rows, n)
-		w.Gemm(false, true, end-i, end, k, 1, x[i*k:], k, x, k, 1, c[i*n:], n)
 	}
 }

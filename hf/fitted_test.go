@@ -31,14 +31,19 @@ func TestFittedDirectMatchesStored(t *testing.T) {
 		}
 		e := surface.engine.(*fittedEngine)
 		var want float64
-		for i, budget := range []int64{e.budget, directBytes(e.n, e.aux, 100), directBytes(e.n, e.aux, 2)} {
-			e.budget = budget
+		for i := range 3 {
+			switch i {
+			case 1:
+				e.budget = storedBytes(e.n, e.aux, e.pairs.rows()) - 1
+			case 2:
+				e.budget = directBytes(e.n, e.aux, 2)
+			}
 			p, err := surface.Energy(t.Context(), s.coordinates())
 			if err != nil {
 				t.Fatal(err)
 			}
 			if e.stored != (i == 0) {
-				t.Fatalf("%s: stored is %v with %d bytes", c.name, e.stored, budget)
+				t.Fatalf("%s: stored is %v with %d bytes", c.name, e.stored, e.budget)
 			}
 			if i == 0 {
 				want = p.Energy

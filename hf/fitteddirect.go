@@ -43,7 +43,7 @@ func (f *fittedEngine) buildDirect(ctx context.Context, d *density, ks [][]float
 				return err
 			}
 			f.sumHalf(i, rows, f.aux, c.rows, d.each)
-			addSquare(&f.work, ks[s], f.half, f.n, rows*f.aux)
+			f.work.AddSquare(ks[s], f.half, f.n, rows*f.aux)
 		}
 	}
 	linalg.SolveLowerTransposed(f.lower, f.aux, f.g)
@@ -67,64 +67,18 @@ func (f *fittedEngine) halfDirect(ctx context.Context, first, rows, all int) err
 	one := rows * f.aux
 	f.half = resize(f.half, f.n*one)
 	clear(f.half)
-	shells := len(f.pairs.offsets) - 1
-	ofShell := make([][]int, shells)
-	for k := range f.fit.Pairs() {
-		i, j := f.fit.Pair(k)
-		ofShell[i] = append(ofShell[i], k)
-		if i != j {
-			ofShell[j] = append(ofShell[j], k)
-		}
-	}
-	for s, pairs := range ofShell {
+	for s := range len(f.pairs.offsets) - 1 {
 		if err := ctx.Err(); err != nil {
 			return err
 		}
-		f.shellDirect(s, pairs, first, rows, all)
 		lo, hi := f.pairs.offsets[s], f.pairs.offsets[s+1]
 		n := (hi - lo) * rows
 		x := f.half[lo*one : hi*one]
+		f.direct.add(x, s, f.orbitals[first:], rows, all)
 		f.columns = resize(f.columns, n*f.aux)
 		transpose(f.columns, n, x, f.aux, n, f.aux)
 		f.solve(f.columns, n)
 		transpose(x, f.aux, f.columns, n, f.aux, n)
 	}
 	return nil
-}
-
-// shellDirect adds the integrals of the pairs of shell s, some at a time, times
-// the orbitals, to the rows of its functions.
-func (f *fittedEngine) shellDirect(s int, pairs []int, first, rows, all int) {
-	lo, hi := f.pairs.offsets[s], f.pairs.offsets[s+1]
-	var partner []int32
-	at := make([][]int32, hi-lo)
-	one, used := rows*f.aux, 0
-	flush := func() {
-		for a := range at {
-			f.work.Gather(rows, f.aux, f.orbitals[first:], partner, all, f.chunk, at[a], f.aux, 1, f.half[(lo+a)*one:], f.aux)
-			at[a] = at[a][:0]
-		}
-		partner, used = partner[:0], 0
-	}
-	f.chunk = resize(f.chunk, (chunkRows+maxBlock)*f.aux)
-	for _, k := range pairs {
-		if used+f.fit.Size(k) > chunkRows+maxBlock {
-			flush()
-		}
-		f.fit.Integrals(f.chunk[used*f.aux:], f.aux, k)
-		i, j := f.fit.Pair(k)
-		nj := f.pairs.offsets[j+1] - f.pairs.offsets[j]
-		other, step, stride := j, nj, 1
-		if i != s {
-			other, step, stride = i, 1, nj
-		}
-		for b := range f.pairs.offsets[other+1] - f.pairs.offsets[other] {
-			partner = append(partner, int32(f.pairs.offsets[other]+b))
-			for a := range at {
-				at[a] = append(at[a], int32(used+a*step+b*stride))
-			}
-		}
-		used += f.fit.Size(k)
-	}
-	flush()
 }

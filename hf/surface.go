@@ -21,8 +21,10 @@ import (
 // Options are the settings of a surface. The zero value is HF-3c.
 type Options struct {
 	// Method is "hf-3c" (Hartree-Fock in MINIX with dispersion, counterpoise
-	// and short-range terms; the default), "hf-d3" (with D3(BJ) dispersion) or
-	// "hf".
+	// and short-range terms; the default), "hf-d3" (with D3(BJ) dispersion),
+	// "hf", or for closed shells second-order perturbation theory with a frozen
+	// core: "mp2", "scs-mp2" (spin components scaled) or "sos-mp2" (opposite spins
+	// only, scaled).
 	Method string
 	// Basis is a name that basis.Load knows. "" is MINIX for hf-3c, which has
 	// no other, and def2-SVP else.
@@ -67,6 +69,7 @@ type Surface struct {
 	shells   []gauss.Shell
 	offsets  []int
 	engine   engine
+	beyond   *correlation // or nil
 	terms    []term
 }
 
@@ -101,15 +104,18 @@ func New(numbers []int, charge, multiplicity int, o Options) (*Surface, error) {
 	if s.terms, err = terms(numbers, o.Method, set.Name); err != nil {
 		return nil, &Unsupported{Reason: err.Error(), Err: err}
 	}
+	if s.beyond, err = newCorrelation(numbers, s.occupied, o, set); err != nil {
+		return nil, err
+	}
 	s.engine, err = s.newEngine(o)
 	return s, err
 }
 
 // newEngine returns what computes the repulsion of electrons.
 func (s *Surface) newEngine(o Options) (engine, error) {
-	least := matrixBytes(s.offsets[len(s.shells)], len(s.occupied))
+	matrices := matrixBytes(s.offsets[len(s.shells)], len(s.occupied))
 	var auxiliary []gauss.Shell
-	left := o.MemoryBytes - least
+	least, left := matrices, o.MemoryBytes-matrices
 	if o.TwoElectron == twoElectronFitted {
 		set, err := basis.FieldFitting()
 		if err != nil {
@@ -119,6 +125,11 @@ func (s *Surface) newEngine(o Options) (engine, error) {
 			return nil, &Unsupported{Reason: "density fitting: " + err.Error() + "; exact integrals need no fitting set", Err: err}
 		}
 		least += directBytes(s.offsets[len(s.shells)], gauss.Offsets(auxiliary)[len(auxiliary)], 1)
+	}
+	if s.beyond != nil {
+		s.accuracy *= orbitalShare
+		s.beyond.budget = left
+		least = max(least, s.beyond.least(matrices, s.offsets[len(s.shells)], s.occupied[0]))
 	}
 	if least > o.MemoryBytes {
 		return nil, &Unsupported{Reason: fmt.Sprintf("Hartree-Fock in %s needs at least %d MB for this molecule, %d MB are allowed",
@@ -141,12 +152,12 @@ func (o Options) settle() (Options, *basis.Set, error) {
 		if o.Basis == "" {
 			o.Basis = "MINIX"
 		}
-	case "hf-d3", "hf":
+	case "hf-d3", "hf", "mp2", "scs-mp2", "sos-mp2":
 		if o.Basis == "" {
 			o.Basis = "def2-SVP"
 		}
 	default:
-		return o, nil, fmt.Errorf("hf: no method %q; there are hf-3c, hf-d3 and hf", o.Method)
+		return o, nil, fmt.Errorf("hf: no method %q; there are hf-3c, hf-d3, hf, mp2, scs-mp2 and sos-mp2", o.Method)
 	}
 	set, err := basis.Load(o.Basis)
 	if err != nil {
@@ -289,6 +300,12 @@ func (s *Surface) Energy(ctx context.Context, x []float64) (molecule.Point, erro
 			{Name: "exchange", Energy: f.parts.exchange},
 		},
 	}
+	if s.beyond != nil {
+		s.engine.release()
+		if err := s.beyond.add(ctx, &p, s, f, x); err != nil {
+			return molecule.Point{}, err
+		}
+	}
 	for _, t := range s.terms {
 		p.Parts = append(p.Parts, molecule.Part{Name: t.name, Energy: t.energy(x)})
 	}
@@ -308,6 +325,8 @@ type result struct {
 // integralCut is the size of integrals, in hartree, that are left out at
 // accuracy 1.
 const integralCut = 1e-10
+
+func (s *Surface) threshold() float64 { return integralCut * min(1, max(s.accuracy, 1e-2)) }
 
 func (s *Surface) solve(ctx context.Context, x []float64, repulsion float64) (*result, error) {
 	f, one, err := s.prepare(ctx, x, repulsion)
@@ -338,7 +357,7 @@ func (s *Surface) prepare(ctx context.Context, x []float64, repulsion float64) (
 	for i, t := range one.Kinetic {
 		core[i] += t
 	}
-	if err := s.engine.place(ctx, x, integralCut*min(1, max(s.accuracy, 1e-2))); err != nil {
+	if err := s.engine.place(ctx, x, s.threshold()); err != nil {
 		return nil, nil, err
 	}
 	return newField(s.engine, orthogonal, core, repulsion, s.occupied), one, nil

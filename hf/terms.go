@@ -8,7 +8,7 @@ import "torsieve/internal/dispersion"
 // doi:10.1002/jcc.23317; Hartree-Fock with D3(BJ), S. Grimme, S. Ehrlich, L.
 // Goerigk, J. Comput. Chem. 2011, 32, 1456, doi:10.1002/jcc.21759.
 func terms(numbers []int, method, basis string) ([]term, error) {
-	if method == "hf" {
+	if method != "hf-3c" && method != "hf-d3" {
 		return nil, nil
 	}
 	for _, z := range numbers {

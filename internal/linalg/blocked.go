@@ -49,6 +49,27 @@ func (w *Workspace) blocked(t tile, p product) {
 	}
 }
 
+// square is blocked for the lower triangle of X X^T: each number of X is packed
+// once a side, and blocks of C above the diagonal are left out.
+func (w *Workspace) square(t tile, c, x []float64, n, k int) {
+	w.edge = grow(w.edge, t.rows*t.columns)
+	o := operand{x: x, ld: k, transposed: true}
+	for k0 := 0; k0 < k; k0 += blockK {
+		depth := min(blockK, k-k0)
+		for j0 := 0; j0 < n; j0 += blockColumns {
+			columns := min(blockColumns, n-j0)
+			w.b = grow(w.b, roundUp(columns, t.columns)*depth)
+			packPanels(w.b, o, k0, depth, j0, columns, t.columns, 1)
+			for i0 := j0 / blockRows * blockRows; i0 < n; i0 += blockRows {
+				rows := min(blockRows, n-i0)
+				w.a = grow(w.a, roundUp(rows, t.rows)*depth)
+				packPanels(w.a, o, k0, depth, i0, rows, t.rows, 1)
+				w.tiles(t, rows, min(columns, i0+rows-j0), depth, c[i0*n+j0:], n)
+			}
+		}
+	}
+}
+
 func roundUp(n, multiple int) int { return (n + multiple - 1) / multiple * multiple }
 
 // tiles multiplies the packed blocks into m rows and n columns of C.

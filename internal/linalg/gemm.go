@@ -90,6 +90,25 @@ func trans(t bool) blas.Transpose {
 	return blas.NoTrans
 }
 
+// AddSquare adds the lower triangle of X X^T, X having n rows of k numbers, to the
+// lower triangle of C, n by n. What is above the diagonal may change too.
+func (w *Workspace) AddSquare(c, x []float64, n, k int) {
+	checkMatrix(n, k, x, k)
+	checkMatrix(n, n, c, n)
+	if n == 0 || k == 0 {
+		return
+	}
+	if active.gemm.micro != nil {
+		w.square(active.gemm, c, x, n, k)
+		return
+	}
+	const block = 96
+	for from := 0; from < n; from += block {
+		to := min(from+block, n)
+		w.Gemm(false, true, to-from, to, k, 1, x[from*k:], k, x, k, 1, c[from*n:], n)
+	}
+}
+
 // WeightedOuter computes P = sum_k weights[k] c_k c_k^T, c_k being the row
 // c[k*n:(k+1)*n]: a density matrix, if the weights are occupations. Rows of
 // weight zero cost nothing if they come last. P holds n*n numbers and is

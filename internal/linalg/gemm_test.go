@@ -3,6 +3,7 @@ package linalg
 import (
 	"fmt"
 	"math"
+	"math/rand/v2"
 	"testing"
 
 	"gonum.org/v1/gonum/blas"
@@ -160,6 +161,33 @@ func BenchmarkGemm(b *testing.B) {
 				flops := 2 * float64(n) * float64(n) * float64(n)
 				b.ReportMetric(flops*float64(b.N)/b.Elapsed().Seconds()/1e9, "GFLOP/s")
 			})
+		}
+	}
+}
+
+func TestAddSquare(t *testing.T) {
+	for _, kern := range available() {
+		defer func(old *kernel) { active = old }(active)
+		active = kern
+		for _, size := range [][2]int{{1, 1}, {50, 300}, {201, 257}} {
+			n, k := size[0], size[1]
+			r := rand.New(rand.NewPCG(7, uint64(n)))
+			x, c := make([]float64, n*k), make([]float64, n*n)
+			for i := range x {
+				x[i] = r.NormFloat64()
+			}
+			for i := range c {
+				c[i] = 1
+			}
+			var w Workspace
+			w.AddSquare(c, x, n, k)
+			for i := range n {
+				for j := range i + 1 {
+					if want := 1 + inner(x[i*k:(i+1)*k], x[j*k:]); math.Abs(c[i*n+j]-want) > 1e-10 {
+						t.Fatalf("%s, n = %d: element %d, %d is %g, want %g", kern.name, n, i, j, c[i*n+j], want)
+					}
+				}
+			}
 		}
 	}
 }
