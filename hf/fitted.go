@@ -3,6 +3,7 @@ package hf
 import (
 	"context"
 	"fmt"
+	"runtime"
 
 	"torsieve/internal/gauss"
 	"torsieve/internal/linalg"
@@ -59,7 +60,15 @@ const (
 
 func (f *fittedEngine) forget() {}
 
-func (f *fittedEngine) release() { f.blocks, f.chunk, f.columns, f.half = nil, nil, nil, nil }
+// release collects what it gives up: what comes next is as large, and both at once
+// would break the budget.
+func (f *fittedEngine) release() {
+	if f.blocks == nil && f.half == nil {
+		return
+	}
+	f.blocks, f.chunk, f.columns, f.half = nil, nil, nil, nil
+	runtime.GC()
+}
 
 func (f *fittedEngine) place(ctx context.Context, x []float64, threshold float64) error {
 	f.fit.Place(x, threshold)
@@ -93,10 +102,14 @@ func (f *fittedEngine) fill(ctx context.Context) error {
 	count := (f.aux + f.width - 1) / f.width
 	size := f.pairs.rows() * f.width
 	if len(f.blocks) != count || cap(f.blocks[0]) < size {
-		f.blocks = nil // gives the old memory up before
+		f.release()
+		room := size
+		if more := f.pairs.rows() + f.pairs.rows()/32; storedBytes(f.n, f.aux, more) <= f.budget {
+			room = more * f.width // conformers of one molecule differ a little
+		}
 		f.blocks = make([][]float64, count)
 		for i := range f.blocks {
-			f.blocks[i] = make([]float64, size)
+			f.blocks[i] = make([]float64, room)
 		}
 	}
 	last := f.aux - (count-1)*f.width

@@ -117,14 +117,13 @@ func (s *Surface) newEngine(o Options) (engine, error) {
 	var auxiliary []gauss.Shell
 	least, left := matrices, o.MemoryBytes-matrices
 	if o.TwoElectron == twoElectronFitted {
-		set, err := basis.FieldFitting()
-		if err != nil {
+		var err error
+		if auxiliary, err = fieldFitting(s.numbers); err != nil {
 			return nil, err
 		}
-		if auxiliary, err = set.Shells(s.numbers); err != nil {
-			return nil, &Unsupported{Reason: "density fitting: " + err.Error() + "; exact integrals need no fitting set", Err: err}
-		}
-		least += directBytes(s.offsets[len(s.shells)], gauss.Offsets(auxiliary)[len(auxiliary)], 1)
+		pairs := gauss.PairBytes(s.shells)
+		least += pairs + directBytes(s.offsets[len(s.shells)], gauss.Offsets(auxiliary)[len(auxiliary)], 1)
+		left -= pairs
 	}
 	if s.beyond != nil {
 		s.accuracy *= orbitalShare

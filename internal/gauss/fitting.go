@@ -4,6 +4,7 @@ import (
 	"math"
 	"slices"
 	"sync"
+	"unsafe"
 
 	"torsieve/internal/linalg"
 )
@@ -40,6 +41,16 @@ type Fitting struct {
 // NewFitting returns an engine. The shells are kept, not copied.
 func NewFitting(orbital, auxiliary []Shell) *Fitting {
 	return &Fitting{rep: NewRepulsion(orbital), aux: newAuxiliarySet(auxiliary), lanes: activeLanes()}
+}
+
+// PairBytes is what an engine holds of the pairs of shells, at most.
+func PairBytes(shells []Shell) int64 {
+	primitives := 0
+	for i := range shells {
+		primitives += len(shells[i].Exps)
+	}
+	n, m := int64(len(shells)), int64(primitives)
+	return (n*(n+1)*int64(unsafe.Sizeof(shellPair{})) + m*(m+1)*int64(unsafe.Sizeof(primitive{}))) / 2
 }
 
 // Place takes the atoms to x (3N, bohr). Pairs of shells are left out from then
