@@ -28,15 +28,19 @@ type attempt struct {
 	damping float64 // while the commutator is above calm
 	shift   float64 // hartree, while the commutator is above near
 	plain   int     // iterations without extrapolation to begin with
+	smear   float64 // temperature of the occupations, hartree, while the commutator is above near
 }
 
-// The attempts, mild ones first. Shifts and damping vanish near convergence,
-// where they would only cost iterations.
+// The attempts, mild ones first. Shifts, damping and smearing vanish near
+// convergence, where they would only cost iterations. Smeared occupations let two
+// configurations that take turns settle first (A. D. Rabuck, G. E. Scuseria, J.
+// Chem. Phys. 1999, 110, 695).
 var attempts = []attempt{
 	{name: "DIIS"},
 	{name: "DIIS with damping and level shift", damping: 0.5, shift: 0.5},
 	{name: "level shift before DIIS", damping: 0.3, shift: 1, plain: 30},
 	{name: "strong level shift and damping before DIIS", damping: 0.7, shift: 3, plain: 60},
+	{name: "smeared occupations", damping: 0.3, smear: 0.05},
 }
 
 const (
@@ -79,7 +83,7 @@ func (f *field) try(ctx context.Context, way attempt, accuracy float64) (scf.Ite
 		Mixer:   mixer,
 		MaxIter: way.plain + maxIterations,
 		Done: func(it scf.Iteration) bool {
-			return math.Abs(it.Change) < 1e-7*accuracy && f.residual < 1e-5*accuracy && f.shift == 0 && f.damping == 0
+			return math.Abs(it.Change) < 1e-7*accuracy && f.residual < 1e-5*accuracy && f.shift == 0 && f.damping == 0 && f.smear == 0
 		},
 	}
 	_, it, err := loop.Solve(ctx, start)
@@ -105,11 +109,12 @@ func (g *guided) Next(in []float64, out scf.Output) []float64 {
 		g.rises = 0
 	}
 	g.n, g.last = g.n+1, out.Energy
-	f.damping, f.shift = 0, 0
+	f.damping, f.shift, f.smear = 0, 0, 0
 	if f.residual > calm {
 		f.damping = g.way.damping
 	}
 	if f.residual > near {
+		f.smear = g.way.smear
 		f.shift = g.way.shift
 		if f.gap < narrow || g.rises > 1 {
 			f.shift = max(f.shift, narrowShift)

@@ -23,9 +23,9 @@ func TestFittedDirectMatchesStored(t *testing.T) {
 	for _, c := range []struct {
 		name, basis string
 		mult        int
-	}{{"formamide", "def2-SVP", 1}, {"CH3OH", "def2-SVP", 3}, {"H2S", "def2-TZVP", 1}} {
+	}{{"H2CO", "def2-SVP", 1}, {"CH3OH", "MINIX", 3}, {"H2S", "def2-TZVP", 1}} {
 		s := find(t, c.name)
-		surface, err := New(s.numbers(t), 0, c.mult, Options{Method: "hf", Basis: c.basis, Accuracy: 0.01})
+		surface, err := New(s.numbers(t), 0, c.mult, Options{Method: "hf", Basis: c.basis, Accuracy: 0.01, TwoElectron: "fitted"})
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -48,6 +48,9 @@ func (s *Surface) doubts(r *result, kinetic float64) []string {
 	if s.charge != 0 {
 		out = append(out, "the dipole moment of an ion depends on the origin: given about the centre of mass")
 	}
+	if r.doubt != "" {
+		out = append(out, r.doubt)
+	}
 	if f.gap < 0.05 {
 		out = append(out, fmt.Sprintf("the gap between occupied and empty orbitals is only %.3f hartree: other states may lie near", f.gap))
 	}

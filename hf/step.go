@@ -27,6 +27,7 @@ type field struct {
 	// How the next density is made; see converge.go.
 	damping float64 // share of the old density
 	shift   float64 // added to empty levels, hartree
+	smear   float64 // temperature of the occupations, hartree; 0: the lowest levels are full
 
 	// What the last step found.
 	parts    electronic
@@ -39,6 +40,7 @@ type field struct {
 	coulomb   []float64
 	exchange  [][]float64
 	levels    []float64
+	filled    []float64 // occupations of the levels, 0 to 1
 	z, a      []float64
 	matrix    []float64
 	out       scf.Output
@@ -69,7 +71,8 @@ func newField(e engine, basis *orthogonal, core []float64, repulsion float64, oc
 	}
 	f.exchange, f.projector = matrices(n*n), matrices(m*m)
 	f.coulomb, f.matrix = make([]float64, n*n), make([]float64, n*n)
-	f.levels, f.z, f.a = make([]float64, m), make([]float64, m*m), make([]float64, m*m)
+	f.levels, f.filled = make([]float64, m), make([]float64, m)
+	f.z, f.a = make([]float64, m*m), make([]float64, m*m)
 	f.out.State, f.out.Residual = make([]float64, m*m*len(occupied)), make([]float64, m*m*len(occupied))
 	f.eigen = linalg.NewEigen(m)
 	return f
@@ -77,7 +80,7 @@ func newField(e engine, basis *orthogonal, core []float64, repulsion float64, oc
 
 // start makes the first state from the densities in f.densities.
 func (f *field) start(ctx context.Context) ([]float64, error) {
-	f.started, f.damping, f.shift = false, 0, 0
+	f.started, f.damping, f.shift, f.smear = false, 0, 0, 0
 	f.ctx = ctx
 	f.engine.forget()
 	if err := f.build(); err != nil {
@@ -103,12 +106,12 @@ func (f *field) step(in []float64) (scf.Output, error) {
 
 // density fills the lowest levels of the state.
 func (f *field) density(in []float64) error {
-	n, m := f.basis.n, f.basis.rows
+	m := f.basis.rows
 	f.gap = math.Inf(1)
 	for s, occupied := range f.occupied {
-		p, q := f.densities.spins[s], f.projector[s]
+		q := f.projector[s]
 		copy(f.a, in[s*m*m:(s+1)*m*m])
-		if f.started && f.shift > 0 { // empty levels move up by the shift
+		if f.started && f.shift > 0 && f.smear == 0 { // empty levels move up by the shift
 			for i, v := range q {
 				f.a[i] -= f.shift * v
 			}
@@ -122,14 +125,34 @@ func (f *field) density(in []float64) error {
 		if occupied > 0 && occupied < m {
 			f.gap = min(f.gap, f.levels[occupied]-f.levels[occupied-1])
 		}
-		c := &f.densities.factors[s]
-		c.rows, c.c = occupied, resize(c.c, occupied*n)
-		f.basis.orbitals(c.c, f.z, occupied)
-		f.work.Gemm(true, false, n, n, occupied, 1, c.c, n, c.c, n, 0, p, n)
-		f.work.Gemm(true, false, m, m, occupied, 1, f.z, m, f.z, m, 0, q, m)
+		f.fill(s, occupied)
 	}
 	f.started = true
 	return nil
+}
+
+// fill makes the density of one spin from the levels and their orbitals f.z, in
+// both bases.
+func (f *field) fill(spin, electrons int) {
+	n, m := f.basis.n, f.basis.rows
+	rows := electrons
+	if f.smear > 0 {
+		scf.Occupy(f.filled, f.levels, float64(electrons), f.smear)
+		for rows < m && f.filled[rows] > 1e-12 {
+			rows++
+		}
+		for k, w := range f.filled[:rows] {
+			root := math.Sqrt(w)
+			for i := range m {
+				f.z[k*m+i] *= root
+			}
+		}
+	}
+	c := &f.densities.factors[spin]
+	c.rows, c.c = rows, resize(c.c, rows*n)
+	f.basis.orbitals(c.c, f.z, rows)
+	f.work.Gemm(true, false, n, n, rows, 1, c.c, n, c.c, n, 0, f.densities.spins[spin], n)
+	f.work.Gemm(true, false, m, m, rows, 1, f.z, m, f.z, m, 0, f.projector[spin], m)
 }
 
 // build makes the Fock matrices and the energy of the densities.

@@ -319,6 +319,7 @@ type result struct {
 	field      *field
 	one        *gauss.OneElectron
 	iterations int
+	doubt      string // about the solution, or ""
 }
 
 // integralCut is the size of integrals, in hartree, that are left out at
@@ -337,7 +338,12 @@ func (s *Surface) solve(ctx context.Context, x []float64, repulsion float64) (*r
 		return nil, err
 	}
 	r := &result{field: f, one: one}
-	r.iterations, err = f.converge(ctx, s.accuracy, func() { f.guess(start) })
+	if r.iterations, err = f.converge(ctx, s.accuracy, func() { f.guess(start) }); err != nil {
+		return nil, err
+	}
+	more, doubt, err := f.settle(ctx, s.accuracy)
+	r.iterations += more
+	r.doubt = doubt
 	return r, err
 }
 
