@@ -72,8 +72,10 @@ func solventOf(t screen.Tier) string {
 
 // finalOptions choose the theory of the last tier.
 type finalOptions struct {
-	Final string `group:"Methods" help:"Method of the last tier: hf-3c, hf-d3 or hf." enum:"hf-3c,hf-d3,hf" default:"hf-3c"`
+	Final string `group:"Methods" help:"Method of the last tier: hf-3c, hf-d3, hf, mp2, scs-mp2 or sos-mp2." enum:"hf-3c,hf-d3,hf,mp2,scs-mp2,sos-mp2" default:"hf-3c"`
 	Basis string `group:"Methods" help:"Basis of the last tier (default: MINIX for hf-3c, def2-SVP for the others)." placeholder:"NAME"`
+
+	TwoElectron string `group:"Methods" name:"two-electron" help:"Electron repulsion of the last tier: auto (exact in MINIX, fitted else), exact or fitted." enum:"auto,exact,fitted" default:"auto"`
 }
 
 // coreOptions bound the work on one machine.

@@ -181,7 +181,7 @@ func (c *screenCommand) values() map[string]any {
 	return map[string]any{
 		"through": c.Through, "max-conformers": c.MaxConformers, "window": c.Window,
 		"temperature": c.Temperature, "thermal": c.Thermal, "accuracy": c.Accuracy,
-		"final": c.Final.Final, "basis": c.Final.Basis, "solvent": c.Solvent.Solvent,
+		"final": c.Final.Final, "basis": c.Final.Basis, "two-electron": c.Final.TwoElectron, "solvent": c.Solvent.Solvent,
 		"stereo": c.Intake.Stereo, "salts": c.Intake.Salts, "seed": c.Seed.Seed, "memory": int64(c.Memory.Memory),
 		"portable": c.Cores.Portable,
 		"format":   c.Input.Format, "id-field": c.Input.IDField,

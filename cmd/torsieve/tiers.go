@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strings"
 
 	"torsieve/forcefield"
 	"torsieve/hf"
@@ -194,7 +195,7 @@ type hfTier struct {
 }
 
 func newHFTier(o tierOptions) (screen.Tier, error) {
-	t := hfTier{options: hf.Options{Method: o.Final, Basis: o.Basis, Accuracy: o.Accuracy, MemoryBytes: surfaceBytes(o.Memory)}}
+	t := hfTier{options: hf.Options{Method: o.Final, Basis: o.Basis, TwoElectron: o.TwoElectron, Accuracy: o.Accuracy, MemoryBytes: surfaceBytes(o.Memory)}}
 	// A helium atom shows what is wrong with method and basis.
 	if _, err := hf.New([]int{2}, 0, 1, t.options); err != nil {
 		return nil, nothing(err, "")
@@ -228,6 +229,8 @@ func (t hfTier) Method() string {
 		return "HF-3c"
 	case "hf-d3":
 		return "HF-D3(BJ)/" + t.basis
+	case "mp2", "scs-mp2", "sos-mp2":
+		return strings.ToUpper(t.options.Method) + "/" + t.basis
 	}
 	return "HF/" + t.basis
 }

@@ -166,7 +166,9 @@ func (c check) compute(ctx context.Context) (float64, error) {
 	if c.Tier == tierForceField {
 		return c.relaxed(ctx, m)
 	}
-	tier, err := newTier(c.Tier, tierOptions{finalOptions: finalOptions{Final: c.Final, Basis: c.Basis}, Accuracy: 0.1, Solvent: c.Solvent})
+	tier, err := newTier(c.Tier, tierOptions{
+		finalOptions: finalOptions{Final: c.Final, Basis: c.Basis, TwoElectron: "exact"}, Accuracy: 0.1, Solvent: c.Solvent,
+	})
 	if err != nil {
 		return 0, err
 	}
