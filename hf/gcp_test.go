@@ -170,3 +170,30 @@ func TestCorrectionsFarApart(t *testing.T) {
 		t.Errorf("energy %g, gradient %v at 300 bohr", e, grad)
 	}
 }
+
+// hf-d3 carries the correction where it was published for the basis, and refuses
+// by name an element that it has no parameters for there.
+func TestCounterpoiseOfD3(t *testing.T) {
+	c := correctionCases(t)[0]
+	for basis, want := range map[string]float64{"def2-SVP": c.GCPSVP, "6-31G*": c.GCP631Gd, "6-31G**": 0} {
+		list, err := terms(c.numbers, "hf-d3", basis)
+		if err != nil {
+			t.Fatal(err)
+		}
+		sum := 0.0
+		for _, term := range list {
+			if term.name != "dispersion" {
+				sum += term.energy(c.x)
+			}
+		}
+		if math.Abs(sum-want) > 5e-9 {
+			t.Errorf("%s: %.10f hartree, want %.10f", basis, sum, want)
+		}
+	}
+	if _, err := New([]int{34, 1, 1}, 0, 1, Options{Method: "hf-d3", Basis: "6-31G*"}); err == nil || !strings.Contains(err.Error(), "no parameters for Se") {
+		t.Errorf("selenium in 6-31G*: %v", err)
+	}
+	if _, err := New([]int{6, 1, 1, 1, 53}, 0, 1, Options{Method: "hf-d3"}); err == nil || !strings.Contains(err.Error(), "I needs an effective core potential") {
+		t.Errorf("iodine: %v", err)
+	}
+}

@@ -21,8 +21,9 @@ import (
 // Options are the settings of a surface. The zero value is HF-3c.
 type Options struct {
 	// Method is "hf-3c" (Hartree-Fock in MINIX with dispersion, counterpoise
-	// and short-range terms; the default), "hf-d3" (with D3(BJ) dispersion),
-	// "hf", or for closed shells second-order perturbation theory with a frozen
+	// and short-range terms; the default), "hf-d3" (with D3(BJ)
+	// dispersion and, where it was published for the basis, the counterpoise
+	// correction), "hf", or for closed shells second-order perturbation theory with a frozen
 	// core: "mp2", "scs-mp2" (spin components scaled) or "sos-mp2" (opposite spins
 	// only, scaled).
 	Method string

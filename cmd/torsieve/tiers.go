@@ -228,6 +228,9 @@ func (t hfTier) Method() string {
 	case "hf-3c":
 		return "HF-3c"
 	case "hf-d3":
+		if hf.HasCounterpoise(t.basis) {
+			return "HF-D3(BJ)-gCP/" + t.basis
+		}
 		return "HF-D3(BJ)/" + t.basis
 	case "mp2", "scs-mp2", "sos-mp2":
 		return strings.ToUpper(t.options.Method) + "/" + t.basis
