@@ -184,7 +184,7 @@ func (f *Fitting) potentials(dst []float64, p *primitive, ch *auxiliaryChunk, de
 	copy(cur, f.g[top*n:][:n])
 	for m := top - 1; m >= 0; m-- {
 		copy(next, f.g[m*n:][:n])
-		f.lanes.raise(next[n:], cur, f.d, laneSteps()[:hermiteCount(top-m)-1], n)
+		f.lanes.raise(next[n:], cur, f.d, hermiteSteps()[1:hermiteCount(top-m)], n)
 		cur, next = next, cur
 	}
 	h := laneHarmonics(degree, ch.l)
@@ -247,15 +247,6 @@ func (f *Fitting) Metric(dst []float64) {
 		}
 	}
 }
-
-// laneSteps are hermiteSteps without the first, for lanes.
-var laneSteps = sync.OnceValue(func() []raiseStep {
-	var out []raiseStep
-	for _, s := range hermiteSteps()[1:hermiteCount(laneTop)] {
-		out = append(out, raiseStep{s.axis, s.down, s.down2, s.times})
-	}
-	return out
-})
 
 // A laneTable says how harmonics of derivatives are made of derivatives.
 type laneTable struct {

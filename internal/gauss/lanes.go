@@ -6,12 +6,6 @@ import "torsieve/internal/linalg"
 // and the loops of fitting integrals run over whole rows. Rows are stride numbers
 // long, a multiple of eight.
 
-// A raiseStep makes one row from earlier ones; see hermiteStep.
-type raiseStep struct {
-	axis, down, down2 int
-	times             float64
-}
-
 // A rowTerm is coef times row number row.
 type rowTerm struct {
 	row  int
@@ -21,8 +15,8 @@ type rowTerm struct {
 // laneKernel holds the inner loops over lanes.
 type laneKernel struct {
 	// raise writes rows next[k] = x[axis] cur[down] + times cur[down2], one for
-	// each step.
-	raise func(next, cur, x []float64, steps []raiseStep, stride int)
+	// each step; see hermiteStep.
+	raise func(next, cur, x []float64, steps []hermiteStep, stride int)
 	// combine writes row k of dst as the sum of counts[k] terms over rows of src.
 	combine func(dst, src []float64, terms []rowTerm, counts []int, stride int)
 }
@@ -39,7 +33,7 @@ func lanesFor(name string) laneKernel {
 	return portableLanes
 }
 
-func raiseGo(next, cur, x []float64, steps []raiseStep, stride int) {
+func raiseGo(next, cur, x []float64, steps []hermiteStep, stride int) {
 	for k := range steps {
 		s := &steps[k]
 		out := next[k*stride:][:stride]
@@ -61,8 +55,8 @@ func combineGo(dst, src []float64, terms []rowTerm, counts []int, stride int) {
 	}
 }
 
-// checkLanes panics where assembly would leave its slices.
-func checkRaise(next, cur, x []float64, steps []raiseStep, stride int) {
+// checkRaise panics where assembly would leave its slices.
+func checkRaise(next, cur, x []float64, steps []hermiteStep, stride int) {
 	if stride%8 != 0 || stride <= 0 || len(next) < len(steps)*stride || len(x) < 3*stride {
 		panic("gauss: rows of the wrong size")
 	}

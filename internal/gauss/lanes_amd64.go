@@ -12,12 +12,12 @@ func laneKernels() map[string]laneKernel {
 // bytes apart.
 //
 //go:noescape
-func raise512(next, cur, x *float64, steps *raiseStep, count, stride, groups int)
+func raise512(next, cur, x *float64, steps *hermiteStep, count, stride, groups int)
 
 // raise256 is raise512 for rows of 4 groups numbers.
 //
 //go:noescape
-func raise256(next, cur, x *float64, steps *raiseStep, count, stride, groups int)
+func raise256(next, cur, x *float64, steps *hermiteStep, count, stride, groups int)
 
 // combine512 is combineGo for rows > 0 rows of 8 groups numbers, stride bytes
 // apart.
@@ -30,14 +30,14 @@ func combine512(dst, src *float64, terms *rowTerm, counts *int, rows, stride, gr
 //go:noescape
 func combine256(dst, src *float64, terms *rowTerm, counts *int, rows, stride, groups int)
 
-func raiseAVX512(next, cur, x []float64, steps []raiseStep, stride int) {
+func raiseAVX512(next, cur, x []float64, steps []hermiteStep, stride int) {
 	if len(steps) > 0 {
 		checkRaise(next, cur, x, steps, stride)
 		raise512(&next[0], &cur[0], &x[0], &steps[0], len(steps), 8*stride, stride/8)
 	}
 }
 
-func raiseAVX2(next, cur, x []float64, steps []raiseStep, stride int) {
+func raiseAVX2(next, cur, x []float64, steps []hermiteStep, stride int) {
 	if len(steps) > 0 {
 		checkRaise(next, cur, x, steps, stride)
 		raise256(&next[0], &cur[0], &x[0], &steps[0], len(steps), 8*stride, stride/4)

@@ -1,6 +1,6 @@
 #include "textflag.h"
 
-// func raise512(next, cur, x *float64, steps *raiseStep, count, stride, groups int)
+// func raise512(next, cur, x *float64, steps *hermiteStep, count, stride, groups int)
 TEXT ·raise512(SB), NOSPLIT, $0-56
 	MOVQ next+0(FP), DI
 	MOVQ cur+8(FP), SI
@@ -40,7 +40,7 @@ lanes:
 	VZEROUPPER
 	RET
 
-// func raise256(next, cur, x *float64, steps *raiseStep, count, stride, groups int)
+// func raise256(next, cur, x *float64, steps *hermiteStep, count, stride, groups int)
 TEXT ·raise256(SB), NOSPLIT, $0-56
 	MOVQ next+0(FP), DI
 	MOVQ cur+8(FP), SI

@@ -13,12 +13,49 @@ func (w *Workspace) Gather(m, n int, a []float64, rowsA []int32, lda int, b []fl
 	if m == 0 || n == 0 || len(rowsA) == 0 {
 		return
 	}
+	checkRows(rowsA, len(a), lda, m)
+	checkRows(rowsB, len(b), ldb, n)
+	if active.gemm.gather != nil && n%active.gemm.columns == 0 {
+		w.inPlace(active.gemm, m, n, operand{a, lda, true, rowsA}, operand{b, ldb, false, rowsB}, c, ldc)
+		return
+	}
 	if active.gemm.micro != nil {
 		w.blocked(active.gemm, product{m, n, len(rowsA), 1,
 			operand{a, lda, true, rowsA}, operand{b, ldb, false, rowsB}, c, ldc})
 		return
 	}
 	w.gatherPortable(m, n, a, rowsA, lda, b, rowsB, ldb, c, ldc)
+}
+
+// checkRows panics where a row of n numbers leaves its matrix.
+func checkRows(rows []int32, length, ld, n int) {
+	for _, r := range rows {
+		if r < 0 || int(r)*ld+n > length {
+			panic("linalg: a row outside of its matrix")
+		}
+	}
+}
+
+// inPlace packs A and takes the rows of B, which are whole panels, from where they
+// are: each is used for few rows of C, and packing them would cost as much.
+func (w *Workspace) inPlace(t tile, m, n int, a, b operand, c []float64, ldc int) {
+	k := len(a.rows)
+	w.edge = grow(w.edge, t.rows*t.columns)
+	w.a = grow(w.a, roundUp(m, t.rows)*k)
+	packPanels(w.a, operand{a.x, a.ld, false, a.rows}, 0, k, 0, m, t.rows, 1)
+	for j := 0; j < n; j += t.columns {
+		for i := 0; i < m; i += t.rows {
+			if i+t.rows <= m {
+				t.gather(k, &w.a[i*k], &b.x[j], &b.rows[0], b.ld, &c[i*ldc+j], ldc)
+				continue
+			}
+			clear(w.edge)
+			t.gather(k, &w.a[i*k], &b.x[j], &b.rows[0], b.ld, &w.edge[0], t.columns)
+			for r := range m - i {
+				add(c[(i+r)*ldc+j:(i+r)*ldc+j+t.columns], w.edge[r*t.columns:])
+			}
+		}
+	}
 }
 
 // gatherPortable copies the rows, some at a time, and multiplies.

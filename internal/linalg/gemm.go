@@ -12,6 +12,9 @@ import (
 type tile struct {
 	rows, columns int
 	micro         func(k int, a, b, c *float64, ldc int)
+	// gather is micro for rows of B, a whole panel wide, that stand where rows
+	// says, ldb numbers apart.
+	gather func(k int, a, b *float64, rows *int32, ldb int, c *float64, ldc int)
 }
 
 // A Workspace is scratch memory for products, for one goroutine. The zero value

@@ -5,13 +5,13 @@ import "golang.org/x/sys/cpu"
 var (
 	avx512 = kernel{
 		name:   "avx512",
-		gemm:   tile{rows: 8, columns: 24, micro: microAVX512},
+		gemm:   tile{rows: 8, columns: 24, micro: microAVX512, gather: gatherAVX512},
 		rotate: rotate512,
 		update: update512,
 	}
 	avx2 = kernel{
 		name:   "avx2",
-		gemm:   tile{rows: 4, columns: 12, micro: microAVX2},
+		gemm:   tile{rows: 4, columns: 12, micro: microAVX2, gather: gatherAVX2},
 		rotate: rotate256,
 		update: update256,
 	}
@@ -39,6 +39,17 @@ func microAVX512(k int, a, b, c *float64, ldc int)
 //
 //go:noescape
 func microAVX2(k int, a, b, c *float64, ldc int)
+
+// gatherAVX512 is microAVX512 for rows of B that stand at rows[0], rows[1], ...
+// times ldb.
+//
+//go:noescape
+func gatherAVX512(k int, a, b *float64, rows *int32, ldb int, c *float64, ldc int)
+
+// gatherAVX2 is gatherAVX512 for 4 rows of 12 numbers.
+//
+//go:noescape
+func gatherAVX2(k int, a, b *float64, rows *int32, ldb int, c *float64, ldc int)
 
 // rotateAVX512 applies count > 0 rotations to 32 columns; see rotateGo.
 //
