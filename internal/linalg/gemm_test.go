@@ -183,7 +183,7 @@ func TestAddSquare(t *testing.T) {
 			w.AddSquare(c, x, n, k)
 			for i := range n {
 				for j := range i + 1 {
-					if want := 1 + inner(x[i*k:(i+1)*k], x[j*k:]); math.Abs(c[i*n+j]-want) > 1e-10 {
+					if want := 1 + dot(x[i*k:(i+1)*k], x[j*k:]); math.Abs(c[i*n+j]-want) > 1e-10 {
 						t.Fatalf("%s, n = %d: element %d, %d is %g, want %g", kern.name, n, i, j, c[i*n+j], want)
 					}
 				}
