@@ -25,7 +25,7 @@ const (
 	firstRadius = 0.6  // bohr and rad, torsions of a bond counting once
 	lastRadius  = 1e-4 // below it a step tells nothing
 	mostRadius  = 1.5
-	longestStep = 2.5  // bohr, of one atom
+	longestStep = 1.2  // bohr, of one atom
 	ridge       = 1e-6 // hartree/bohr^2, for the sake of the factorisation
 	lostPivot   = 1e-6 // of the metric: a motion that no coordinate has
 )
