@@ -9,12 +9,12 @@ import (
 
 // The first guess of the curvature along each internal coordinate. Stretches
 // and bends: R. Lindh, A. Bernhardsson, G. Karlstrom, P.-A. Malmqvist, Chem.
-// Phys. Lett. 1995, 241, 423, eq. 2 and 3. Torsions: T. H. Fischer, J. Almlof,
-// J. Phys. Chem. 1992, 96, 9768, eq. 12, for a bond as a whole. Constants of
-// both from memory; those of pyramids and places are ours, and so is the least
-// torsion: five times the published one, it takes a tenth of the gradients off
-// (ethane's curvature is 0.02 hartree/rad^2, from its barrier of 2.9 kcal/mol). A
-// minimum does not depend on them, only the way there.
+// Phys. Lett. 1995, 241, 423. Torsions: T. H. Fischer, J. Almlof, J. Phys. Chem.
+// 1992, 96, 9768, for a bond as a whole. Formulas and constants of both from
+// memory. The constants of pyramids and places are ours, and so is the least
+// torsion, five times the published one: with it ethane comes near the 0.02
+// hartree/rad^2 that its barrier of 2.9 kcal/mol means, and fewer gradients are
+// needed. A minimum does not depend on them, only the way there.
 const (
 	leastTorsion    = 0.008 // hartree/rad^2, of a bond
 	pyramidConstant = 0.02  // hartree
