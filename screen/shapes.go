@@ -24,14 +24,14 @@ func Shapes(ctx context.Context, l *Ligand, o generate.Options) (generate.Result
 }
 
 // RelaxDefaults says when a geometry of a quantum tier is done: when the learned
-// Hessian foresees less than 3e-7 hartree on the way to the minimum. Soft torsions
+// Hessian foresees less than 1e-7 hartree on the way to the minimum. Soft torsions
 // make the gradient alone a poor judge: at a root mean square of 1e-4
 // hartree/bohr a third of 98 conformers of twenty ligands were more than 1e-5
 // hartree too high. The gradient must be small as well, in case the Hessian has
 // learned too little. EnergyChange is for molecules that must go by L-BFGS.
 func RelaxDefaults() relax.Settings {
 	return relax.Settings{
-		RMSGradient: 4e-5, MaxGradient: 2e-4, Descent: 3e-7, EnergyChange: 1e-7,
+		RMSGradient: 2.5e-5, MaxGradient: 1e-4, Descent: 1e-7, EnergyChange: 1e-7,
 		MaxGradients: 500, Noise: 1e-7, Internal: true,
 	}
 }
