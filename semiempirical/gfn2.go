@@ -5,7 +5,10 @@
 //
 // Source: C. Bannwarth, S. Ehlert, S. Grimme, J. Chem. Theory Comput. 2019, 15,
 // 1652, doi:10.1021/acs.jctc.8b01176; solvents: package solvent. Both spins share
-// their orbitals; the energy is a free energy at the electronic temperature.
+// their orbitals; the energy is a free energy at the electronic temperature. What
+// does not become self-consistent gets more cautious mixing and then, for a while,
+// hotter electrons; an answer whose electrons could not be cooled again says so in
+// its warnings.
 //
 // A Surface is built from atomic numbers and a charge; it knows no bonds. Units
 // are bohr, hartree and the elementary charge.
