@@ -40,61 +40,81 @@ func turn(dst, x []float64, r *[3][3]float64, back bool) {
 	}
 }
 
+// A spread says how values scatter about their mean.
+type spread struct {
+	square, count float64 // sum of squared deviations; number of values
+	low, high     float64 // deviations
+}
+
+func (s *spread) add(d float64) {
+	s.square, s.count = s.square+d*d, s.count+1
+	s.low, s.high = min(s.low, d), max(s.high, d)
+}
+
+func (s *spread) merge(o spread) {
+	s.square, s.count = s.square+o.square, s.count+o.count
+	s.low, s.high = min(s.low, o.low), max(s.high, o.high)
+}
+
+func (s *spread) rms() float64 { return math.Sqrt(s.square / s.count) }
+
+func (s *spread) largest() float64 { return max(s.high, -s.low) }
+
+// turnAround computes a molecule in water in random orientations and returns the
+// spreads of the energy (hartree) and of the gradient's components, turned back.
+func turnAround(t *testing.T, m *referenceMolecule, turns int) (energy, gradient spread) {
+	t.Helper()
+	s, err := New(m.numbers(), m.Charge, 1, Options{Accuracy: 0.01, Solvent: "water"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	rng := rand.New(rand.NewPCG(7, uint64(len(m.X))))
+	x, turned, grad := m.coordinates(), make([]float64, len(m.X)), make([]float64, len(m.X))
+	energies, grads := make([]float64, turns), make([][]float64, turns)
+	mean, meanGrad := 0.0, make([]float64, len(x))
+	for k := range turns {
+		r := randomTurn(rng)
+		turn(turned, x, &r, false)
+		energies[k] = mustGradient(t, s, grad, turned).Energy
+		grads[k] = make([]float64, len(x))
+		turn(grads[k], grad, &r, true)
+		mean += energies[k] / float64(turns)
+		for i, g := range grads[k] {
+			meanGrad[i] += g / float64(turns)
+		}
+	}
+	for k, e := range energies {
+		energy.add(e - mean)
+		for i, g := range grads[k] {
+			gradient.add(g - meanGrad[i])
+		}
+	}
+	return energy, gradient
+}
+
 // The surface in a solvent is summed over directions fixed in space, so turning
-// a molecule changes its energy; package solvent says by how much at most. In the
-// gas nothing changes.
+// a molecule changes its energy; package solvent says by how much at most.
 func TestOrientationNoise(t *testing.T) {
-	const turns = 30
-	var sum, sumGrad, count, countGrad, widest, largest float64
+	var all, allGrad spread
+	widest := 0.0
 	for _, name := range []string{
 		"pdb-1ik4", "pdb-2hb1", "pdb-1pa9", "pdb-1r4p", "pdb-1p62", "csd-SLFNMF02", "pdb-1v48", "csd-BEHHOL10",
 		"pdb-1zvx", "csd-VIMYUL", "pdb-2j34", "pdb-1s3v", "pdb-2h42", "pdb-1d4l",
 	} {
 		m := named(t, name)
-		s, err := New(m.numbers(), m.Charge, 1, Options{Accuracy: 0.01, Solvent: "water"})
-		if err != nil {
-			t.Fatal(err)
-		}
-		rng := rand.New(rand.NewPCG(7, uint64(len(m.X))))
-		x, turned, grad := m.coordinates(), make([]float64, len(m.X)), make([]float64, len(m.X))
-		var energies []float64
-		grads := make([][]float64, turns)
-		mean, meanGrad := 0.0, make([]float64, len(x))
-		for k := range turns {
-			r := randomTurn(rng)
-			turn(turned, x, &r, false)
-			p := mustGradient(t, s, grad, turned)
-			energies, mean = append(energies, p.Energy), mean+p.Energy/turns
-			grads[k] = make([]float64, len(x))
-			turn(grads[k], grad, &r, true)
-			for i, g := range grads[k] {
-				meanGrad[i] += g / turns
-			}
-		}
-		low, high, square := math.Inf(1), math.Inf(-1), 0.0
-		for _, e := range energies {
-			low, high = min(low, e), max(high, e)
-			square += (e - mean) * (e - mean)
-		}
-		squareGrad, most := 0.0, 0.0
-		for _, g := range grads {
-			for i := range g {
-				d := g[i] - meanGrad[i]
-				squareGrad, most = squareGrad+d*d, max(most, math.Abs(d))
-			}
-		}
-		components := float64(turns * len(x))
+		e, g := turnAround(t, m, 30)
 		t.Logf("%-13s %2d atoms: rms %.4f, widest %.4f kcal/mol; gradient rms %.1e, largest %.1e hartree/bohr", name, len(m.Elements),
-			math.Sqrt(square/turns)/units.KcalPerMol, (high-low)/units.KcalPerMol, math.Sqrt(squareGrad/components), most)
-		sum, count, widest = sum+square, count+turns, max(widest, high-low)
-		sumGrad, countGrad, largest = sumGrad+squareGrad, countGrad+components, max(largest, most)
+			e.rms()/units.KcalPerMol, (e.high-e.low)/units.KcalPerMol, g.rms(), g.largest())
+		all.merge(e)
+		allGrad.merge(g)
+		widest = max(widest, e.high-e.low)
 	}
 	t.Logf("all: rms %.4f, widest %.4f kcal/mol; gradient rms %.1e, largest %.1e hartree/bohr",
-		math.Sqrt(sum/count)/units.KcalPerMol, widest/units.KcalPerMol, math.Sqrt(sumGrad/countGrad), largest)
+		all.rms()/units.KcalPerMol, widest/units.KcalPerMol, allGrad.rms(), allGrad.largest())
 	if widest == 0 || widest > 2e-4 {
 		t.Errorf("turning changes energies by up to %.1e hartree, where package solvent says 2e-4", widest)
 	}
-	if largest > 1e-3 {
-		t.Errorf("turning changes a component of the gradient by %.1e hartree/bohr, where package solvent says 1e-3", largest)
+	if allGrad.largest() > 1e-3 {
+		t.Errorf("turning changes a component of the gradient by %.1e hartree/bohr, where package solvent says 1e-3", allGrad.largest())
 	}
 }

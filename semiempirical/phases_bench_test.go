@@ -45,7 +45,7 @@ type phase struct {
 func phases(s *Surface, x, grad []float64) []phase {
 	m, c := s.model, s.cycle
 	o := c.orbitals
-	near := [2][]float64{shaken(c.fock, o.n, 1e-4), shaken(c.fock, o.n, 2e-4)}
+	near := [2][]float64{shaken(c.fock, o.n, 1e-5), shaken(c.fock, o.n, 2e-5)}
 	turn := 0
 	plain := func(f func()) func() error { return func() error { f(); return nil } }
 	return []phase{
