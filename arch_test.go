@@ -14,18 +14,20 @@ import (
 // mayImport is the architecture: each folder, and what of ours it may import.
 // A folder counts with all below it that has no entry of its own.
 var mayImport = map[string]string{
-	"internal":        "",
-	"molecule":        "internal",
-	"forcefield":      "internal molecule",
-	"semiempirical":   "internal molecule",
-	"hf":              "internal molecule",
-	"dedupe":          "internal molecule",
-	"screen/ensemble": "internal molecule",
-	"screen/generate": "internal molecule forcefield dedupe",
-	"screen":          "internal molecule dedupe screen/generate screen/ensemble screen/store",
-	"screen/store":    "internal",
-	"screen/tiertest": "internal molecule screen",
-	"screen/report":   "internal molecule screen screen/ensemble",
+	"internal":           "",
+	"molecule":           "internal",
+	"forcefield":         "internal molecule",
+	"semiempirical":      "internal molecule",
+	"hf":                 "internal molecule",
+	"dedupe":             "internal molecule",
+	"screen/store":       "internal",
+	"screen/ensemble":    "internal molecule",
+	"screen/promotion":   "internal",
+	"screen/calibration": "internal screen/ensemble screen/promotion",
+	"screen/generate":    "internal molecule forcefield dedupe",
+	"screen":             "internal molecule dedupe screen/generate screen/ensemble screen/store",
+	"screen/tiertest":    "internal molecule screen",
+	"screen/report":      "internal molecule screen screen/ensemble",
 	"cmd": "internal molecule forcefield semiempirical hf dedupe screen " +
 		"screen/generate screen/ensemble screen/report screen/store",
 }
