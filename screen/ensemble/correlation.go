@@ -1,0 +1,111 @@
+package ensemble
+
+import (
+	"cmp"
+	"fmt"
+	"math"
+	"slices"
+
+	"torsieve/internal/linalg"
+	"torsieve/internal/units"
+)
+
+// sharedWithin is the RMSD over which the errors of two shapes lose touch:
+// their correlation is exp(-(rmsd/1 A)^2). The form and the length are this
+// project's own choice.
+const sharedWithin = 1 * units.Angstrom
+
+// manyShared bounds the states whose errors are drawn together; the lowest come
+// first. Those beyond weigh little and have errors of their own.
+const manyShared = 400
+
+// A sharing turns independent numbers into correlated ones.
+type sharing struct {
+	which  []int     // the states that share, lowest first
+	factor []float64 // n*n: rows of length one, row i . row j the correlation
+	buffer []float64
+}
+
+// newSharing returns nil for nil distances.
+func newSharing(states []State, distances [][]float64) *sharing {
+	if distances == nil {
+		return nil
+	}
+	checkDistances(distances, len(states))
+	s := &sharing{which: make([]int, len(states))}
+	for i := range s.which {
+		s.which[i] = i
+	}
+	slices.SortStableFunc(s.which, func(a, b int) int { return cmp.Compare(states[a].Energy, states[b].Energy) })
+	s.which = s.which[:min(len(s.which), manyShared)]
+	n := len(s.which)
+	s.buffer = make([]float64, n)
+	kernel := make([]float64, n*n)
+	for a, i := range s.which {
+		for b, j := range s.which {
+			r := distances[i][j] / sharedWithin
+			kernel[a*n+b] = math.Exp(-r * r)
+		}
+	}
+	s.factor = root(kernel, n)
+	return s
+}
+
+func checkDistances(d [][]float64, n int) {
+	if len(d) != n {
+		panic(fmt.Sprintf("ensemble: distances of %d states, want %d", len(d), n))
+	}
+	for _, row := range d {
+		if len(row) != n {
+			panic(fmt.Sprintf("ensemble: distances to %d states, want %d", len(row), n))
+		}
+		for _, v := range row {
+			if !(v >= 0) || math.IsInf(v, 0) {
+				panic(fmt.Sprintf("ensemble: distance %g", v))
+			}
+		}
+	}
+}
+
+// root returns F with F F^T = kernel. The smallest RMSD over relabellings is no
+// metric, so that the kernel may have negative eigenvalues: they are cut off, and
+// the rows brought back to length one, which keeps the variances.
+func root(kernel []float64, n int) []float64 {
+	values := make([]float64, n)
+	if err := linalg.NewEigen(n).Solve(kernel, values, kernel); err != nil {
+		panic("ensemble: correlation of errors: " + err.Error()) // finite numbers of 0 to 1 do not come here
+	}
+	factor := make([]float64, n*n)
+	for i := range n {
+		row := factor[i*n : (i+1)*n]
+		var square float64
+		for k := range n {
+			row[k] = kernel[k*n+i] * math.Sqrt(math.Max(values[k], 0))
+			square += row[k] * row[k]
+		}
+		for k := range row {
+			row[k] /= math.Sqrt(square)
+		}
+	}
+	return factor
+}
+
+// mix replaces independent standard normal numbers, one per state, by correlated
+// ones.
+func (s *sharing) mix(z []float64) {
+	if s == nil {
+		return
+	}
+	n := len(s.which)
+	for a, i := range s.which {
+		s.buffer[a] = z[i]
+	}
+	for a, i := range s.which {
+		row := s.factor[a*n : (a+1)*n]
+		var sum float64
+		for k, v := range row {
+			sum += v * s.buffer[k]
+		}
+		z[i] = sum
+	}
+}
