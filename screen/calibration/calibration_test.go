@@ -125,3 +125,12 @@ func TestCoefficientError(t *testing.T) {
 		t.Errorf("%g", e)
 	}
 }
+
+// If y = 1.2 e + r, then 0.6 y + 0.3 e = 1.02 e + 0.6 r.
+func TestCombinedPair(t *testing.T) {
+	p := Pair{Slope: 1.2, SlopeSpread: 2, Residual: Law{Scale: 0.5, Freedom: 1}}
+	before, after := p.Prior(25, 5), p.Combined(0.6, 0.3).Prior(25, 5)
+	if math.Abs(after.Slope-1.02) > 1e-12 || math.Abs(after.Scale-0.6*before.Scale) > 1e-12 || math.Abs(after.SlopeSD-0.6*before.SlopeSD) > 1e-12 {
+		t.Errorf("%+v becomes %+v", before, after)
+	}
+}

@@ -1,6 +1,7 @@
 package calibration
 
 import (
+	"math"
 	"slices"
 
 	"torsieve/internal/units"
@@ -41,4 +42,13 @@ func (p Pair) Prior(heavy, rotors int) promotion.Prior {
 		Slope:   p.Slope,
 		SlopeSD: p.SlopeSpread * size,
 	}
+}
+
+// Combined returns the pair of the lower tier and a combination of both, upper
+// times the upper tier's energy plus lower times the lower one's: what promotion
+// should ask for where the combination is the final energy.
+func (p Pair) Combined(upper, lower float64) Pair {
+	p.Slope = upper*p.Slope + lower
+	p.Residual.Scale *= math.Abs(upper) // the spread of slopes is in units of the residual
+	return p
 }

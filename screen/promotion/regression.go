@@ -77,6 +77,7 @@ type fit struct {
 	upper   *mat.TriDense // precision = upper^T upper
 	scale   float64
 	freedom float64
+	heavy   float64 // probability that the residuals have heavy tails
 }
 
 // newFit learns from the candidates in known, whose energies at the higher tier
@@ -114,10 +115,13 @@ func newFit(d *design, p Prior, known []int, energies []float64) (f *fit, ok boo
 	f.upper = new(mat.TriDense)
 	cholesky.UTo(f.upper)
 	squares := p.Freedom * (p.Scale / units.KcalPerMol) * (p.Scale / units.KcalPerMol)
+	var residuals []float64
 	for k, i := range known {
 		r := (energies[k]-f.zero)/units.KcalPerMol - dot(d.row(i), f.mean)
 		squares += r * r
+		residuals = append(residuals, r)
 	}
+	f.heavy = heavyTails(residuals)
 	for k, v := range p.precisions(n) {
 		squares += v * (f.mean[k] - before[k]) * (f.mean[k] - before[k])
 	}

@@ -106,22 +106,3 @@ func TestDescriptorIsLearnt(t *testing.T) {
 		t.Errorf("scale %.3f with the descriptor, %.3f without; coefficient of a constant one %g", sharp, wide, with.mean[3])
 	}
 }
-
-// A heavy residual is a Student t of three degrees of freedom over its own
-// deviation, 3^1/2: quantiles of printed tables (0.765, 2.353 and 5.841 for
-// 75, 95 and 99.5 %), within four standard errors of 40000 draws.
-func TestHeavyResiduals(t *testing.T) {
-	source := rand.New(rand.NewPCG(1, 9))
-	const n = 40000
-	for _, tc := range []struct{ quantile, share float64 }{{0.765, 0.75}, {2.353, 0.95}, {5.841, 0.995}} {
-		below := 0.0
-		for range n {
-			if heavy(source) < tc.quantile/math.Sqrt(3) {
-				below++
-			}
-		}
-		if got := below / n; math.Abs(got-tc.share) > 4*math.Sqrt(tc.share*(1-tc.share)/n)+1e-4 {
-			t.Errorf("share under %g: %.4f, want %.4f", tc.quantile, got, tc.share)
-		}
-	}
-}
