@@ -10,10 +10,19 @@ import (
 	"torsieve/internal/units"
 )
 
-// sharedWithin is the RMSD over which the errors of two shapes lose touch:
-// their correlation is exp(-(rmsd/1 A)^2). The form and the length are this
-// project's own choice.
-const sharedWithin = 1 * units.Angstrom
+// Shared returns the correlation of the errors of two shapes whose RMSD over heavy
+// atoms and polar hydrogens is given in bohr:
+//
+//	0.78 exp(-r/0.05 A) + 0.22 exp(-(r/1.5 A)^2).
+//
+// Measured on 150 molecules of Folmsbee and Hutchison (2021), GFN2-xTB, PBEh-3c,
+// B3LYP-D3(BJ)/def2-SVP and GFN-FF against DLPNO-CCSD(T): over pairs of conformers
+// closer than 0.05 A the errors' correlation is about 0.6, at 0.1 to 0.2 A only
+// 0.25, and it fades to nothing at 2 A. The form is our own.
+func Shared(rmsd float64) float64 {
+	r := rmsd / units.Angstrom
+	return 0.78*math.Exp(-r/0.05) + 0.22*math.Exp(-r*r/(1.5*1.5))
+}
 
 // manyShared bounds the states whose errors are drawn together; the lowest come
 // first. Those beyond weigh little and have errors of their own.
@@ -43,8 +52,7 @@ func newSharing(states []State, distances [][]float64) *sharing {
 	kernel := make([]float64, n*n)
 	for a, i := range s.which {
 		for b, j := range s.which {
-			r := distances[i][j] / sharedWithin
-			kernel[a*n+b] = math.Exp(-r * r)
+			kernel[a*n+b] = Shared(distances[i][j])
 		}
 	}
 	s.factor = root(kernel, n)

@@ -35,10 +35,10 @@ func TestSimilarShapesShareTheirError(t *testing.T) {
 	if w := width(0); w > 1e-3 {
 		t.Errorf("identical shapes: bar of %.4f, want none", w)
 	}
-	apart, near := width(9), width(0.5)
+	apart, near := width(9), width(0.02)
 	independent := Bars(two, 298.15, someScatter, [2]uint64{1, 2})[0]
 	if math.Abs(apart-(independent.High-independent.Low)) > 0.03 || near > 0.8*apart {
-		t.Errorf("bars of %.3f far apart, %.3f at 0.5 A, %.3f independent", apart, near, independent.High-independent.Low)
+		t.Errorf("bars of %.3f far apart, %.3f at 0.02 A, %.3f independent", apart, near, independent.High-independent.Low)
 	}
 }
 
@@ -59,8 +59,9 @@ func TestCorrelationOfErrors(t *testing.T) {
 	}
 	// Standard errors of 4000 draws: 0.022 of a variance, at most that of a
 	// covariance; four of them are allowed.
-	variance, covariance := moments(pairs(3, func(i, j int) float64 { return 0.7 * units.Angstrom }))
-	if want := math.Exp(-0.49); math.Abs(covariance-want) > 0.09 || math.Abs(variance[0]-1) > 0.09 {
+	variance, covariance := moments(pairs(3, func(i, j int) float64 { return 0.02 * units.Angstrom }))
+	// 0.78 exp(-0.4) + 0.22 exp(-0.0002).
+	if want := 0.7428; math.Abs(covariance-want) > 0.09 || math.Abs(variance[0]-1) > 0.09 {
 		t.Errorf("variance %.3f, covariance %.3f, want 1 and %.3f", variance[0], covariance, want)
 	}
 	impossible := pairs(3, func(i, j int) float64 {
