@@ -24,6 +24,12 @@ func Shared(rmsd float64) float64 {
 	return 0.78*math.Exp(-r/0.05) + 0.22*math.Exp(-r*r/(1.5*1.5))
 }
 
+// usuallyShared is the mean of Shared over the pairs of conformers of the
+// molecules that scatters were fitted on (0.168). What errors share within a
+// molecule does not show in their deviation about its mean, which is what a
+// Scatter states: the errors themselves are larger.
+const usuallyShared = 0.168
+
 // manyShared bounds the states whose errors are drawn together; the lowest come
 // first. Those beyond weigh little and have errors of their own.
 const manyShared = 400
@@ -99,12 +105,16 @@ func root(kernel []float64, n int) []float64 {
 }
 
 // mix replaces independent standard normal numbers, one per state, by correlated
-// ones.
+// ones of variance 1/(1-usuallyShared).
 func (s *sharing) mix(z []float64) {
 	if s == nil {
 		return
 	}
 	n := len(s.which)
+	larger := 1 / math.Sqrt(1-usuallyShared)
+	for i := range z {
+		z[i] *= larger
+	}
 	for a, i := range s.which {
 		s.buffer[a] = z[i]
 	}

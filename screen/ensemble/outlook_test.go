@@ -36,7 +36,10 @@ func TestSimilarShapesShareTheirError(t *testing.T) {
 		t.Errorf("identical shapes: bar of %.4f, want none", w)
 	}
 	apart, near := width(9), width(0.02)
-	independent := Bars(two, 298.15, someScatter, [2]uint64{1, 2})[0]
+	// Far apart: independent errors of the deviation that sharing had hidden.
+	whole := someScatter
+	whole.Scale /= math.Sqrt(1 - usuallyShared)
+	independent := Bars(two, 298.15, whole, [2]uint64{1, 2})[0]
 	if math.Abs(apart-(independent.High-independent.Low)) > 0.03 || near > 0.8*apart {
 		t.Errorf("bars of %.3f far apart, %.3f at 0.02 A, %.3f independent", apart, near, independent.High-independent.Low)
 	}
@@ -47,7 +50,7 @@ func TestSimilarShapesShareTheirError(t *testing.T) {
 func TestCorrelationOfErrors(t *testing.T) {
 	three := states([]float64{0, 1, 2}, []float64{1, 1, 1})
 	moments := func(d [][]float64) (variance [3]float64, covariance float64) {
-		w := Imagine(three, Doubt{Scatter: Scatter{Scale: 1, Freedom: 1e9}, Distances: d}, [2]uint64{5, 6})
+		w := Imagine(three, Doubt{Scatter: Scatter{Scale: math.Sqrt(1 - usuallyShared), Freedom: 1e9}, Distances: d}, [2]uint64{5, 6})
 		for k := range draws {
 			row := w.row(k)
 			for i, v := range row {

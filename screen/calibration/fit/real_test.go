@@ -2,6 +2,7 @@ package main
 
 import (
 	"math"
+	"strconv"
 	"testing"
 
 	"torsieve/internal/units"
@@ -173,51 +174,106 @@ func sound(t *testing.T, set []molecule) []molecule {
 }
 
 // The bars of populations hold the reference's in nine of ten cases: fits to
-// other molecules, energies of the combination, the law's scatter.
+// other molecules, energies of the combination, the law's scatter, errors that
+// are independent or shared.
 func TestBarsHoldReferencePopulations(t *testing.T) {
+	near := distances(t)
 	for _, f := range finals {
 		sets, err := f.read(data, f.sets)
 		if err != nil {
 			t.Fatal(err)
 		}
-		var held, all, heldLarge, large, width float64
-		for fold := range folds {
-			fitted, err := fitCombination(without(sets, fold), f.alone)
-			if err != nil {
-				t.Fatal(err)
-			}
-			c := calibration.Combination{Tiers: f.tiers, Coefficients: fitted.coefficients, Residual: fitted.laws[0]}
-			for i, m := range sets[0] {
-				if i%folds != fold {
-					continue
+		for _, shared := range []bool{false, true} {
+			var n tally
+			for fold := range folds {
+				fitted, err := fitCombination(without(sets, fold), f.alone)
+				if err != nil {
+					t.Fatal(err)
 				}
-				bars := bars(t, c, m, uint64(i))
-				for k, p := range populations(m) {
-					b := bars[k]
-					inside := p >= b.Low && p <= b.High
-					all++
-					width += b.High - b.Low
-					if inside {
-						held++
+				c := calibration.Combination{Tiers: f.tiers, Coefficients: fitted.coefficients, Residual: fitted.laws[0]}
+				for i, m := range sets[0] {
+					if i%folds != fold {
+						continue
 					}
-					if b.High > 0.05 {
-						large++
-						if inside {
-							heldLarge++
-						}
+					var d [][]float64
+					if shared {
+						d = near[m.id]
 					}
+					n.add(populations(m), bars(t, c, m, d, uint64(i)))
 				}
 			}
-		}
-		t.Logf("%s: bars hold %.1f %% of %g populations, %.1f %% of the %g that may pass 5 %%; mean width %.3f",
-			f.method, 100*held/all, all, 100*heldLarge/large, large, width/all)
-		if share := heldLarge / large; math.Abs(share-0.9) > 0.05 {
-			t.Errorf("%s: bars hold %.1f %% of the populations, want 85 to 95", f.method, 100*share)
+			t.Logf("%s, shared errors %t: bars hold %.1f %% of %g populations, %.1f %% of the %g that may pass 5 %%; mean width %.3f",
+				f.method, shared, 100*n.held/n.all, n.all, 100*n.heldLarge/n.large, n.large, n.width/n.all)
+			if share := n.heldLarge / n.large; math.Abs(share-0.9) > 0.05 {
+				t.Errorf("%s, shared errors %t: bars hold %.1f %% of the populations, want 85 to 95", f.method, shared, 100*share)
+			}
 		}
 	}
 }
 
-func bars(t *testing.T, c calibration.Combination, m molecule, seed uint64) []ensemble.Bar {
+// A tally counts populations inside their bars; large ones are those whose bar
+// reaches above 5 %.
+type tally struct{ held, all, heldLarge, large, width float64 }
+
+func (n *tally) add(populations []float64, bars []ensemble.Bar) {
+	for k, p := range populations {
+		b := bars[k]
+		inside := p >= b.Low && p <= b.High
+		n.all++
+		n.width += b.High - b.Low
+		if inside {
+			n.held++
+		}
+		if b.High > 0.05 {
+			n.large++
+			if inside {
+				n.heldLarge++
+			}
+		}
+	}
+}
+
+// distances reads the RMSD of fh2020 in bohr, by molecule, of the conformers
+// that have a reference energy, in their order.
+func distances(t *testing.T) map[string][][]float64 {
+	t.Helper()
+	place := map[string]int{}
+	out := map[string][][]float64{}
+	records, err := readAll(data + "/fh2020.csv.gz")
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, r := range records[1:] {
+		if r[13] == "" || r[14] == "" && r[15] == "" {
+			continue
+		}
+		place[r[0]+" "+r[1]] = len(out[r[0]])
+		out[r[0]] = append(out[r[0]], nil)
+	}
+	for id, rows := range out {
+		for i := range rows {
+			out[id][i] = make([]float64, len(rows))
+		}
+	}
+	if records, err = readAll(data + "/fh2020-rmsd.csv.gz"); err != nil {
+		t.Fatal(err)
+	}
+	for _, r := range records[1:] {
+		i, known := place[r[0]+" "+r[1]]
+		j, alsoKnown := place[r[0]+" "+r[2]]
+		if !known || !alsoKnown {
+			continue
+		}
+		rmsd, err := strconv.ParseFloat(r[3], 64)
+		if err != nil {
+			t.Fatal(err)
+		}
+		out[r[0]][i][j], out[r[0]][j][i] = rmsd*units.Angstrom, rmsd*units.Angstrom
+	}
+	return out
+}
+
+func bars(t *testing.T, c calibration.Combination, m molecule, distances [][]float64, seed uint64) []ensemble.Bar {
 	t.Helper()
 	var tiers [][]float64
 	for _, column := range m.methods {
@@ -235,5 +291,10 @@ func bars(t *testing.T, c calibration.Combination, m molecule, seed uint64) []en
 	for i, e := range energies {
 		states[i] = ensemble.State{Energy: e, Copies: 1}
 	}
-	return ensemble.Bars(states, temperature, c.Scatter(m.heavy, m.rotors, tiers), [2]uint64{7, seed})
+	doubt := ensemble.Doubt{Scatter: c.Scatter(m.heavy, m.rotors, tiers), Distances: distances}
+	var out []ensemble.Bar
+	for _, p := range ensemble.Imagine(states, doubt, [2]uint64{7, seed}).At(temperature, nil).Populations() {
+		out = append(out, p.Bar)
+	}
+	return out
 }
