@@ -83,7 +83,7 @@ func frozen(z int) int {
 
 // orbitalShare tightens the convergence of the orbitals: the correlation energy
 // answers to them in first order, the energy of the field in second.
-const orbitalShare = 0.1
+const orbitalShare = 0.03
 
 // least returns the bytes of a run that takes two orbitals at a time.
 func (c *correlation) least(matrices int64, n, occupied int) int64 {

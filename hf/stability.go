@@ -238,15 +238,7 @@ func (s *stability) turned(x []float64) []factor {
 		z := s.z[spin]
 		rows := clone(z[:occupied*m])
 		s.f.work.Gemm(false, false, occupied, m, empty, 0.5, x, empty, z[occupied*m:], m, 1, rows, m)
-		var before [][]float64
-		for i := range occupied {
-			row := rows[i*m : (i+1)*m]
-			orthonormalise(row, before)
-			before = append(before, row)
-		}
-		c := factor{rows: occupied, c: make([]float64, occupied*s.f.basis.n)}
-		s.f.basis.orbitals(c.c, rows, occupied)
-		out = append(out, c)
+		out = append(out, s.f.orthonormal(rows, occupied))
 	})
 	return out
 }
@@ -276,13 +268,31 @@ func (f *field) settle(ctx context.Context, accuracy float64) (iterations int, d
 		if err != nil || value > unstable {
 			return iterations, doubt, err
 		}
-		start := s.turned(x)
+		start, before := s.turned(x), f.out.Energy
 		more, err := f.converge(ctx, accuracy, func() { f.begin(start) })
 		iterations += more
 		if err != nil {
 			return iterations, doubt, err
 		}
 		doubt = "the first solution was no minimum; the one given lies lower, and a lower one yet cannot be ruled out"
+		if f.out.Energy > before {
+			doubt = "the first solution was no minimum, and none that lies lower was found: the energy is in doubt"
+		}
 	}
 	return iterations, doubt, nil
+}
+
+// orthonormal makes rows over the orthonormal basis orthonormal, one after the
+// other, and returns them over functions.
+func (f *field) orthonormal(z []float64, rows int) factor {
+	m := f.basis.rows
+	var before [][]float64
+	for i := range rows {
+		row := z[i*m : (i+1)*m]
+		orthonormalise(row, before)
+		before = append(before, row)
+	}
+	c := factor{rows: rows, c: make([]float64, rows*f.basis.n)}
+	f.basis.orbitals(c.c, z, rows)
+	return c
 }
