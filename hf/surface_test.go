@@ -324,6 +324,25 @@ func TestMemoryEstimate(t *testing.T) {
 	if capped, err := MemoryEstimate(numbers, Options{MemoryBytes: 32 << 20}); err != nil || capped != 32<<20 {
 		t.Errorf("%d bytes of 32 MB allowed, %v", capped, err)
 	}
+	fitted, err := MemoryEstimate(numbers, Options{Method: "hf-d3"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	// 327 functions, 1680 fitting functions: at most 721 MB of fitted integrals.
+	if fitted < 512<<20 || fitted > 1<<30 {
+		t.Errorf("fitted: %d bytes", fitted)
+	}
+	least, err := MemoryEstimate(numbers, Options{Method: "hf-d3", MemoryBytes: 1 << 20})
+	if err != nil || least < 32<<20 || least > 256<<20 {
+		t.Errorf("fitted, the least: %d bytes, %v", least, err)
+	}
+	if _, err := New(numbers, s.Charge, 1, Options{Method: "hf-d3", MemoryBytes: least}); err != nil {
+		t.Errorf("what was estimated as the least does not do: %v", err)
+	}
+	var u *Unsupported
+	if _, err := New(numbers, s.Charge, 1, Options{Method: "hf-d3", MemoryBytes: least / 4}); !errors.As(err, &u) {
+		t.Errorf("a quarter of the least: %v", err)
+	}
 	if _, err := MemoryEstimate([]int{53}, Options{}); err == nil {
 		t.Error("no refusal of iodine")
 	}

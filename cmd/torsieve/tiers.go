@@ -196,6 +196,9 @@ type hfTier struct {
 
 func newHFTier(o tierOptions) (screen.Tier, error) {
 	t := hfTier{options: hf.Options{Method: o.Final, Basis: o.Basis, TwoElectron: o.TwoElectron, Accuracy: o.Accuracy, MemoryBytes: surfaceBytes(o.Memory)}}
+	if o.Final != "hf-3c" && o.Memory > 0 {
+		t.options.MemoryBytes = min(o.Memory/2, 8<<30) // fitted integrals that do not fit cost several times as much
+	}
 	// A helium atom shows what is wrong with method and basis.
 	if _, err := hf.New([]int{2}, 0, 1, t.options); err != nil {
 		return nil, nothing(err, "")
