@@ -1,8 +1,11 @@
 package hf
 
 import (
+	"context"
+	"errors"
 	"math"
 	"testing"
+	"time"
 )
 
 func TestFittedSmallSystems(t *testing.T) {
@@ -51,5 +54,52 @@ func TestFittedDirectMatchesStored(t *testing.T) {
 				t.Errorf("%s: computed anew, the energy differs by %.1e hartree", c.name, d)
 			}
 		}
+	}
+}
+
+// The same call gives the same bits, whatever geometry came between, where the
+// integrals are kept and where they are not; also after the correlation energy has
+// given them up.
+func TestFittedSameBits(t *testing.T) {
+	s := find(t, "H2CO")
+	x := s.coordinates()
+	far := clone(x)
+	far[0] += 0.7
+	far[5] -= 3
+	for _, method := range []string{"hf-d3", "scs-mp2"} {
+		for _, budget := range []int64{0, 1} {
+			surface, err := New(s.numbers(t), 0, 1, Options{Method: method})
+			if err != nil {
+				t.Fatal(err)
+			}
+			if budget > 0 {
+				surface.engine.(*fittedEngine).budget = budget
+			}
+			var energies []float64
+			for _, at := range [][]float64{x, far, x} {
+				p, err := surface.Energy(t.Context(), at)
+				if err != nil {
+					t.Fatal(err)
+				}
+				energies = append(energies, p.Energy)
+			}
+			if energies[0] != energies[2] || energies[0] == energies[1] {
+				t.Errorf("%s: %.17g, then %.17g; between them %.17g", method, energies[0], energies[2], energies[1])
+			}
+		}
+	}
+}
+
+// A context that ends stops a fitted run soon, in the integrals too.
+func TestFittedStops(t *testing.T) {
+	s := readReference(t, "drug-like.json")[0]
+	surface, err := New(s.numbers(t), s.Charge, 1, Options{Method: "hf-d3"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	ctx, cancel := context.WithTimeout(t.Context(), 50*time.Millisecond)
+	defer cancel()
+	if _, err := surface.Energy(ctx, s.coordinates()); !errors.Is(err, context.DeadlineExceeded) {
+		t.Errorf("error %v, want that of the context", err)
 	}
 }
