@@ -26,6 +26,7 @@ type auxiliarySet struct {
 // first on: all shells with the first component, then all with the second.
 type auxiliaryChunk struct {
 	l, first, stride int
+	plain            bool  // one primitive a shell
 	begin            []int // lanes of each shell; at the end the number of lanes
 	shells           []int // numbers in the given list
 	atoms            []int // of each lane
@@ -47,7 +48,10 @@ func newAuxiliarySet(shells []Shell) *auxiliarySet {
 		}
 		s.top = max(s.top, shells[i].L)
 	}
-	slices.SortStableFunc(order, func(i, j int) int { return cmp.Compare(shells[i].L, shells[j].L) })
+	slices.SortStableFunc(order, func(i, j int) int {
+		a, b := &shells[i], &shells[j]
+		return cmp.Or(cmp.Compare(a.L, b.L), cmp.Compare(min(len(a.Exps), 2), min(len(b.Exps), 2)))
+	})
 	for _, i := range order {
 		s.add(i)
 	}
@@ -59,12 +63,13 @@ func newAuxiliarySet(shells []Shell) *auxiliarySet {
 	return s
 }
 
-// add puts a shell into the last chunk, or a new one.
+// add puts a shell into the last chunk, or a new one. Shells of one primitive, which
+// most are, keep to themselves: their lanes need no summing.
 func (s *auxiliarySet) add(i int) {
 	sh := &s.shells[i]
 	k := len(s.chunks) - 1
-	if k < 0 || s.chunks[k].l != sh.L || len(s.chunks[k].q)+len(sh.Exps) > maxChunk {
-		s.chunks = append(s.chunks, auxiliaryChunk{l: sh.L})
+	if k < 0 || s.chunks[k].l != sh.L || s.chunks[k].plain != (len(sh.Exps) == 1) || len(s.chunks[k].q)+len(sh.Exps) > maxChunk {
+		s.chunks = append(s.chunks, auxiliaryChunk{l: sh.L, plain: len(sh.Exps) == 1})
 		k++
 	}
 	c := &s.chunks[k]

@@ -194,12 +194,11 @@ func (f *Fitting) potentials(dst []float64, p *primitive, ch *auxiliaryChunk, de
 // stand.
 func (ch *auxiliaryChunk) collect(dst []float64, ld int, out []float64, rows int) {
 	shells, components := len(ch.shells), 2*ch.l+1
-	plain := ch.begin[shells] == shells
 	for i := range rows {
 		for m := range components {
 			from := out[(i*components+m)*ch.stride:][:ch.stride]
 			to := dst[i*ld+ch.first+m*shells:][:shells]
-			if plain {
+			if ch.plain {
 				copy(to, from)
 				continue
 			}
