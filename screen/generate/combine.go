@@ -10,24 +10,34 @@ import (
 // assembled relaxes structures put together from fragments: all combinations
 // where they are few, otherwise samples.
 func (s *search) assembled(ctx context.Context) error {
-	if s.combinations() > float64(s.o.Exhaustive) {
-		return s.sampled(ctx)
-	}
-	leaves := s.enumerate()
-	s.result.Starts += int(s.combinations())
-	s.result.Complete = len(leaves) <= s.o.relaxations()
-	if !s.result.Complete {
-		leaves = s.lottery(leaves, s.o.relaxations())
-	}
-	for _, l := range leaves {
-		x := make([]float64, 3*s.m.NumAtoms())
-		s.assembly.force(l.recipe, x)
-		if err := s.add(ctx, x, l.recipe); err != nil {
-			return err
+	budget := s.o.relaxations()
+	if s.combinations() <= float64(s.o.Exhaustive) {
+		leaves := s.enumerate()
+		s.result.Starts += int(s.combinations())
+		limit := budget
+		if !s.o.Minima {
+			limit = budget / gridShare
+		}
+		s.result.Complete = len(leaves) <= limit
+		if !s.result.Complete {
+			leaves = s.lottery(leaves, limit)
+		}
+		for _, l := range leaves {
+			x := make([]float64, 3*s.m.NumAtoms())
+			s.assembly.force(l.recipe, x)
+			if err := s.add(ctx, x, l.recipe, false); err != nil {
+				return err
+			}
+		}
+		budget -= len(leaves)
+		if s.o.Minima {
+			return nil
 		}
 	}
-	return nil
+	return s.sampled(ctx, budget)
 }
+
+var gridShare = 2
 
 // lottery draws so many of the leaves, each with a chance that falls with its
 // cost, and keeps their order.
@@ -133,8 +143,7 @@ const batch = 50
 // sampled draws structures in batches until the budget is spent. The first
 // batches follow the table of torsions, the later ones also what turned out to
 // be low.
-func (s *search) sampled(ctx context.Context) error {
-	budget := s.o.relaxations()
+func (s *search) sampled(ctx context.Context, budget int) error {
 	for done := 0; done < budget; done += batch {
 		n := min(batch, budget-done)
 		grid := latin(stream(s.o.Seed, s.id, streamGrid, done), n, len(s.assembly.turns))
@@ -147,7 +156,7 @@ func (s *search) sampled(ctx context.Context) error {
 				continue
 			}
 			s.result.Embedded++
-			if err := s.add(ctx, x, rec); err != nil {
+			if err := s.add(ctx, x, rec, !s.o.Minima && holdThem); err != nil {
 				return err
 			}
 		}
@@ -155,3 +164,5 @@ func (s *search) sampled(ctx context.Context) error {
 	}
 	return nil
 }
+
+var holdThem = true

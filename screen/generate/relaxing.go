@@ -20,7 +20,7 @@ var (
 
 // add relaxes a start and keeps it if its stereo is still right. Only the end
 // of ctx is an error.
-func (s *search) add(ctx context.Context, x []float64, r recipe) error {
+func (s *search) add(ctx context.Context, x []float64, r recipe, held bool) error {
 	start := s.result.Starts
 	if err := s.charge(ctx, x); err != nil {
 		return err
@@ -29,7 +29,13 @@ func (s *search) add(ctx context.Context, x []float64, r recipe) error {
 	if !s.o.Minima {
 		set = barely
 	}
-	energy, err := s.relaxed(ctx, x, set)
+	var energy float64
+	var err error
+	if held {
+		energy, err = s.relaxedHeld(ctx, x, r, set)
+	} else {
+		energy, err = s.relaxed(ctx, x, set)
+	}
 	if ctx.Err() != nil {
 		return ctx.Err()
 	}

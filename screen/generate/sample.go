@@ -61,7 +61,7 @@ func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) b
 				if p == 0 && first != nil {
 					u = first[step.turn]
 				}
-				rec.angles[step.turn] = s.angle(step.turn, pick(s.states[step.turn], u), r)
+				rec.angles[step.turn] = s.angle(step.turn, u)
 			}
 			if added = s.a.put(k, rec, x); crowding+added < tooCrowded {
 				ok = true
@@ -77,27 +77,37 @@ func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) b
 	return true
 }
 
-// angle draws from a state, at most two standard deviations away.
-func (s *sampler) angle(turn, k int, r *rand.Rand) float64 {
+// angle draws a state and a place in it by a number in 0..1: the numbers that
+// fall to one state go through its distribution from one end to the other, at
+// most two standard deviations from the middle.
+func (s *sampler) angle(turn int, u float64) float64 {
+	k, share := pickShare(s.states[turn], u)
 	st := s.a.turns[turn].states[k]
-	return st.angle + st.spread*math.Max(-2, math.Min(2, r.NormFloat64()))*jitter
+	return st.angle + st.spread*math.Max(-2, math.Min(2, math.Sqrt2*math.Erfinv(2*share-1)))*jitter
 }
 
 // jitter is the share of a state's spread that is drawn; the force field moves
 // the rest.
-const jitter = 0.7
+var jitter = 0.7
 
 // pick returns the index in which the fraction u of the summed weights falls.
 func pick(weights []float64, u float64) int {
+	k, _ := pickShare(weights, u)
+	return k
+}
+
+// pickShare returns how far into its weight u falls, too, in 0..1.
+func pickShare(weights []float64, u float64) (k int, share float64) {
 	var sum float64
 	for _, w := range weights {
 		sum += w
 	}
 	u *= sum
 	for k, w := range weights {
-		if u -= w; u < 0 {
-			return k
+		if u < w {
+			return k, u / w
 		}
+		u -= w
 	}
-	return len(weights) - 1
+	return len(weights) - 1, 0.5
 }

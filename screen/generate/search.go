@@ -6,27 +6,29 @@ import (
 
 	"torsieve/dedupe"
 	"torsieve/forcefield"
+	"torsieve/internal/relax"
 	"torsieve/molecule"
 )
 
 // A search is one call of Conformers.
 type search struct {
-	m        *molecule.Molecule
-	id       string
-	o        Options
-	numbers  []int
-	held     []handedness
-	embedder *embedder
-	screen   *clashScreen
-	assembly *assembly // nil where the molecule could not be cut into fragments
-	sampler  *sampler
-	surface  *forcefield.Surface
-	soft     *forcefield.Surface
-	comparer *dedupe.Comparer
-	pool     []entry
-	charged  bool // the surface has its charges
-	result   Result
-	failure  error // of the last start that came to nothing
+	m         *molecule.Molecule
+	id        string
+	o         Options
+	numbers   []int
+	held      []handedness
+	embedder  *embedder
+	screen    *clashScreen
+	assembly  *assembly // nil where the molecule could not be cut into fragments
+	sampler   *sampler
+	surface   *forcefield.Surface
+	soft      *forcefield.Surface
+	comparer  *dedupe.Comparer
+	minimiser *relax.Minimiser // of structures whose rotors are held
+	pool      []entry
+	charged   bool // the surface has its charges
+	result    Result
+	failure   error // of the last start that came to nothing
 }
 
 // An entry is a relaxed structure.
@@ -126,7 +128,7 @@ func (s *search) given(ctx context.Context) error {
 		}
 		s.result.Starts++
 		s.result.Embedded++
-		if err := s.add(ctx, append([]float64(nil), x...), recipe{}); err != nil {
+		if err := s.add(ctx, append([]float64(nil), x...), recipe{}, false); err != nil {
 			return err
 		}
 	}

@@ -35,7 +35,7 @@ func (s *search) embedded(ctx context.Context) error {
 			continue
 		}
 		s.result.Embedded++
-		if err := s.add(ctx, x, recipe{}); err != nil {
+		if err := s.add(ctx, x, recipe{}, false); err != nil {
 			return err
 		}
 		if len(s.pool) == 0 && k >= hopeless {
