@@ -20,10 +20,6 @@ type Options struct {
 	Limit          int  // renumberings tried at most; beyond it an RMSD is an upper bound; 0: 10,000
 }
 
-// exactLimit is the number of renumberings beyond which equivalent end atoms are
-// assigned apart.
-const exactLimit = 120
-
 // A Comparer compares shapes of one molecule. It does not change and may be
 // shared between goroutines.
 type Comparer struct {
@@ -31,10 +27,12 @@ type Comparer struct {
 	atoms    []int   // the atoms compared
 	same     [][]int // renumberings that keep the stated stereo: atoms[k] of one shape lies on atoms[p[k]] of the other
 	inverse  [][]int // renumberings that turn all stated centres over; for mirror images
-	leaves   [][]int // sets of equivalent end atoms (indices into atoms), assigned after each renumbering
-	core     []int   // the rest of the indices, where there are leaves
+	blocks   []block // exchanges that go before each renumbering
+	core     []int   // places in no block
+	each     bool    // all combinations of the blocks' exchanges are tried
 	shared   bool    // same and inverse are one list
 	complete bool
+	classes  [][]int // places by class, for profiles
 }
 
 // NewComparer prepares for the shapes of m.
@@ -54,13 +52,9 @@ func NewComparer(m *molecule.Molecule, o Options) *Comparer {
 	if o.Limit == 0 {
 		o.Limit = 10000
 	}
-	maps, all := s.renumberings(nil, min(exactLimit, o.Limit))
-	if !all {
-		if leaves := s.leaves(); len(s.core(leaves)) >= 3 {
-			c.leaves, c.core = leaves, s.core(leaves)
-		}
-		maps, all = s.renumberings(c.leaves, o.Limit)
-	}
+	c.takeBlocks(s.blocks(), len(c.atoms))
+	c.classes = s.byClass()
+	maps, all := s.renumberings(c.blocks, o.Limit)
 	c.complete = all
 	c.same, c.inverse = s.byStereo(maps)
 	if o.Handed {
@@ -68,6 +62,28 @@ func NewComparer(m *molecule.Molecule, o Options) *Comparer {
 	}
 	c.shared = len(c.inverse) == len(c.same) && slices.EqualFunc(c.same, c.inverse, slices.Equal[[]int])
 	return c
+}
+
+// mostCombinations of the exchanges within blocks are tried one by one; where
+// there are more the blocks are improved in turn.
+const mostCombinations = 256
+
+func (c *Comparer) takeBlocks(blocks []block, places int) {
+	c.blocks = blocks
+	combinations := 1
+	inside := make([]bool, places)
+	for _, b := range blocks {
+		combinations = min(combinations*len(b.options), mostCombinations+1)
+		for _, k := range b.places {
+			inside[k] = true
+		}
+	}
+	c.each = combinations <= mostCombinations
+	for k, in := range inside {
+		if !in {
+			c.core = append(c.core, k)
+		}
+	}
 }
 
 func polar(m *molecule.Molecule, hydrogen int) bool {
@@ -89,7 +105,7 @@ func (c *Comparer) Mirrors() bool { return len(c.inverse) > 0 }
 
 // Exact says whether an RMSD is the smallest there is. For molecules with very
 // many equivalent atoms it is an upper bound.
-func (c *Comparer) Exact() bool { return c.complete && c.leaves == nil }
+func (c *Comparer) Exact() bool { return c.complete && c.each }
 
 // Clone returns c: a Comparer may be shared.
 func (c *Comparer) Clone() *Comparer { return c }

@@ -23,45 +23,14 @@ func newCloud(x []float64) cloud {
 	return k
 }
 
-// distances returns the RMSD of a and the renumbered b, and of a and the mirror
-// image of b, over all rotations.
-//
-// Source: D. L. Theobald, Acta Cryst. A 2005, 61, 478: the largest eigenvalue
-// of Horn's matrix by Newton steps from above on its characteristic polynomial;
-// for the mirror image only the linear term changes its sign.
-func distances(a, b cloud, p []int) (same, mirrored float64) {
-	n := len(p)
-	if n == 0 {
-		return 0, 0
-	}
-	var xx, xy, xz, yx, yy, yz, zx, zy, zz float64
-	for k, q := range p {
-		u, v := a.x[3*k:3*k+3:3*k+3], b.x[3*q:3*q+3:3*q+3]
-		xx += u[0] * v[0]
-		xy += u[0] * v[1]
-		xz += u[0] * v[2]
-		yx += u[1] * v[0]
-		yy += u[1] * v[1]
-		yz += u[1] * v[2]
-		zx += u[2] * v[0]
-		zy += u[2] * v[1]
-		zz += u[2] * v[2]
-	}
-	c2 := -2 * (xx*xx + xy*xy + xz*xz + yx*yx + yy*yy + yz*yz + zx*zx + zy*zy + zz*zz)
-	c1 := -8 * (xx*(yy*zz-yz*zy) - xy*(yx*zz-yz*zx) + xz*(yx*zy-yy*zx))
-	c0 := hornDeterminant(xx, xy, xz, yx, yy, yz, zx, zy, zz)
-	start := (a.g + b.g) / 2
-	rms := func(c1 float64) float64 {
-		return math.Sqrt(math.Max(0, a.g+b.g-2*newton(c2, c1, c0, start)) / float64(n))
-	}
-	return rms(c1), rms(-c1)
-}
-
 // newton finds the largest root of l^4 + c2 l^2 + c1 l + c0 from above, where
 // the polynomial rises and is convex. Twofold roots, of flat shapes, halve the
-// error with each step.
-func newton(c2, c1, c0, l float64) float64 {
+// error with each step. Below floor it stops: the root is lower still.
+func newton(c2, c1, c0, l, floor float64) float64 {
 	for range 60 {
+		if l < floor {
+			break
+		}
 		l2 := l * l
 		slope := 4*l2*l + 2*c2*l + c1
 		if slope <= 0 {

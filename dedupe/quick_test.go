@@ -25,6 +25,19 @@ func identity(n int) []int {
 	return p
 }
 
+// distances returns the RMSD of a and the renumbered b as they are, and mirrored.
+func distances(a, b cloud, p []int) (same, mirrored float64) {
+	var m moments
+	for k, q := range p {
+		m.add(a.x, b.x, k, q)
+	}
+	start := (a.g + b.g) / 2
+	rms := func(mirrored bool) float64 {
+		return math.Sqrt(math.Max(0, 2*(start-m.overlap(mirrored, start, math.Inf(-1)))) / float64(len(p)))
+	}
+	return rms(false), rms(true)
+}
+
 // The quick way meets the plain one, which has outside values of its own.
 func TestDistancesMatchSuperposition(t *testing.T) {
 	flat := randomPoints(9, 5)

@@ -2,7 +2,6 @@ package dedupe
 
 import (
 	"context"
-	"math"
 
 	"torsieve/internal/geom"
 )
@@ -11,7 +10,7 @@ import (
 // two shapes, and whether b had to be mirrored for it. Panics if a or b is not
 // a shape of the Comparer's molecule.
 func (c *Comparer) RMSD(a, b []float64) (rmsd float64, mirrored bool) {
-	f := c.best(c.take(a), c.take(b))
+	f := c.fitter().best(c.take(a), c.take(b))
 	return f.rmsd, f.mirrored
 }
 
@@ -24,12 +23,13 @@ func (c *Comparer) Distances(ctx context.Context, xs [][]float64) ([][]float64, 
 		clouds[i] = c.take(x)
 		out[i] = make([]float64, len(xs))
 	}
+	fit := c.fitter()
 	for i := range xs {
 		if ctx.Err() != nil {
 			return nil, ctx.Err()
 		}
 		for j := range i {
-			d := c.best(clouds[i], clouds[j]).rmsd
+			d := fit.best(clouds[i], clouds[j]).rmsd
 			out[i][j], out[j][i] = d, d
 		}
 	}
@@ -48,51 +48,10 @@ func (c *Comparer) take(x []float64) cloud {
 	return newCloud(out)
 }
 
-// A fit is the best way to lay one shape onto another.
-type fit struct {
-	rmsd     float64
-	mirrored bool
-	lays     []int
-}
-
-// exactly is the RMSD in bohr below which the quick formula has lost digits.
-const exactly = 0.05
-
-// best tries all renumberings.
-func (c *Comparer) best(a, b cloud) fit {
-	best := fit{rmsd: math.Inf(1)}
-	for _, p := range c.same {
-		same, mirrored := distances(a, b, p)
-		c.offer(&best, a, b, p, same, false)
-		if c.shared {
-			c.offer(&best, a, b, p, mirrored, true)
-		}
-	}
-	if !c.shared {
-		for _, p := range c.inverse {
-			_, mirrored := distances(a, b, p)
-			c.offer(&best, a, b, p, mirrored, true)
-		}
-	}
-	if best.rmsd < exactly {
-		best.rmsd = c.exact(a, b, best)
-	}
-	return best
-}
-
-func (c *Comparer) offer(best *fit, a, b cloud, p []int, rmsd float64, mirrored bool) {
-	if len(c.leaves) > 0 {
-		p, rmsd = c.assign(a, b, p, rmsd, mirrored)
-	}
-	if rmsd < best.rmsd {
-		*best = fit{rmsd, mirrored, p}
-	}
-}
-
 // exact computes the RMSD of a fit point by point.
-func (c *Comparer) exact(a, b cloud, f fit) float64 {
-	moved := renumbered(b.x, f.lays)
-	if f.mirrored {
+func (c *Comparer) exact(a, b cloud, mirrored bool, lays []int) float64 {
+	moved := renumbered(b.x, lays)
+	if mirrored {
 		mirror(moved)
 	}
 	return geom.Align(a.x, moved).RMSD
@@ -118,14 +77,11 @@ func mirror(x []float64) {
 // over all renumberings of the compared atoms.
 func (c *Comparer) Superpose(onto, x []float64) {
 	a, b := c.take(onto), c.take(x)
-	best := fit{rmsd: math.Inf(1)}
-	for _, p := range c.same {
-		same, _ := distances(a, b, p)
-		c.offer(&best, a, b, p, same, false)
-	}
+	f := c.fitter()
+	lays := f.lays(f.among(a, b, c.same, false))
 	var to, from []float64 // the compared atoms where they are
 	for k, i := range c.atoms {
-		j := c.atoms[best.lays[k]]
+		j := c.atoms[lays[k]]
 		to = append(to, onto[3*i:3*i+3]...)
 		from = append(from, x[3*j:3*j+3]...)
 	}
@@ -140,13 +96,10 @@ func (c *Comparer) SelfMirror(x []float64) (rmsd float64, ok bool) {
 		return 0, false
 	}
 	a := c.take(x)
-	best := fit{rmsd: math.Inf(1)}
-	for _, p := range c.inverse {
-		_, mirrored := distances(a, a, p)
-		c.offer(&best, a, a, p, mirrored, true)
-	}
+	f := c.fitter()
+	best := f.among(a, a, c.inverse, true)
 	if best.rmsd < exactly {
-		return c.exact(a, a, best), true
+		return c.exact(a, a, best.mirrored, f.lays(best)), true
 	}
 	return best.rmsd, true
 }

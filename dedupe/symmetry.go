@@ -39,115 +39,117 @@ func newSymmetry(m *molecule.Molecule, atoms []int) *symmetry {
 }
 
 // renumberings returns the permutations p of the places, in a fixed order, and
-// whether they are all: at most limit are. Of the places in leaves only the
-// anchors' images are searched: the k-th of a set goes to the k-th of its image.
-func (s *symmetry) renumberings(leaves [][]int, limit int) (maps [][]int, all bool) {
-	b := &backtrack{s: s, limit: limit, image: make([]int, len(s.atoms)), used: make([]bool, len(s.atoms))}
-	b.leaf = make([]bool, len(s.atoms))
-	for _, set := range leaves {
-		for _, k := range set {
-			b.leaf[k] = true
-		}
-	}
+// whether they are all: at most limit are. Of those that differ by exchanges
+// within blocks only the first is returned.
+func (s *symmetry) renumberings(blocks []block, limit int) (maps [][]int, all bool) {
+	b := newBacktrack(s, limit)
+	b.blocks = blocks
 	b.makeOrder()
+	b.closeBlocks()
 	b.extend(0)
-	for _, p := range b.found {
-		s.placeLeaves(p, leaves)
-	}
-	return b.found, len(b.found) < limit && b.steps < b.maxSteps()
-}
-
-// placeLeaves completes a renumbering of the other places.
-func (s *symmetry) placeLeaves(p []int, leaves [][]int) {
-	for _, set := range leaves {
-		anchor := p[s.neighbours[set[0]][0]]
-		for _, other := range leaves {
-			if s.neighbours[other[0]][0] == anchor && s.class[other[0]] == s.class[set[0]] {
-				for k := range set {
-					p[set[k]] = other[k]
-				}
-			}
-		}
-	}
-}
-
-// leaves returns the sets of equivalent end atoms on one neighbour.
-func (s *symmetry) leaves() [][]int {
-	var sets [][]int
-	for anchor := range s.atoms {
-		var byClass [][]int
-	next:
-		for _, k := range s.neighbours[anchor] {
-			if len(s.neighbours[k]) != 1 {
-				continue
-			}
-			for n, set := range byClass {
-				if s.class[set[0]] == s.class[k] {
-					byClass[n] = append(set, k)
-					continue next
-				}
-			}
-			byClass = append(byClass, []int{k})
-		}
-		for _, set := range byClass {
-			if len(set) > 1 && len(set) <= 4 {
-				sets = append(sets, set)
-			}
-		}
-	}
-	return sets
-}
-
-// core lists the places that are in no set of leaves.
-func (s *symmetry) core(leaves [][]int) []int {
-	var core []int
-	for k := range s.atoms {
-		if !slices.ContainsFunc(leaves, func(set []int) bool { return slices.Contains(set, k) }) {
-			core = append(core, k)
-		}
-	}
-	return core
+	return b.found, len(b.found) < limit && b.steps < b.most
 }
 
 // A backtrack is the search for renumberings: atoms in an order in which each
 // has a neighbour that is placed already.
 type backtrack struct {
-	s     *symmetry
-	leaf  []bool
-	order []int
-	from  []int // by position in order: a neighbour placed before, or -1
-	image []int
-	used  []bool
-	found [][]int
-	limit int
-	steps int
+	s      *symmetry
+	blocks []block
+	closes []int // by position in order: the block that is complete then, or -1; nil: none is looked at
+	order  []int
+	from   []int // by position in order: a neighbour placed before, or -1
+	image  []int
+	used   []bool // places that are images
+	placed []bool // places that have images
+	found  [][]int
+	limit  int
+	steps  int
+	most   int
+	stay   bool // each place is tried where it is first
 }
 
-func (b *backtrack) maxSteps() int { return 200*b.limit + 100000 }
+func newBacktrack(s *symmetry, limit int) *backtrack {
+	n := len(s.atoms)
+	return &backtrack{s: s, limit: limit, most: 200*limit + 100000,
+		image: make([]int, n), used: make([]bool, n), placed: make([]bool, n)}
+}
 
-func (b *backtrack) makeOrder() {
+// makeOrder walks from the first places given, all of them, to their
+// neighbours and on.
+func (b *backtrack) makeOrder(first ...int) {
 	seen := make([]bool, len(b.s.atoms))
+	visit := func(k, from int) {
+		seen[k] = true
+		b.order, b.from = append(b.order, k), append(b.from, from)
+	}
+	if len(first) > 0 {
+		b.walk(first, seen, visit)
+	}
 	for start := range b.s.atoms {
-		if seen[start] || b.leaf[start] {
-			continue
+		if !seen[start] {
+			b.walk([]int{start}, seen, visit)
 		}
-		seen[start] = true
-		b.order, b.from = append(b.order, start), append(b.from, -1)
-		for at := len(b.order) - 1; at < len(b.order); at++ {
-			for _, j := range b.s.neighbours[b.order[at]] {
-				if !seen[j] && !b.leaf[j] {
-					seen[j] = true
-					b.order, b.from = append(b.order, j), append(b.from, b.order[at])
-				}
+	}
+}
+
+func (b *backtrack) walk(first []int, seen []bool, visit func(k, from int)) {
+	begin := len(b.order)
+	for len(b.order)-begin < len(first) { // next to something placed where that can be
+		next, near := -1, -1
+		for _, k := range first {
+			if seen[k] {
+				continue
+			}
+			if next < 0 {
+				next = k
+			}
+			if n := b.beside(k, seen); n >= 0 {
+				next, near = k, n
+				break
 			}
 		}
+		visit(next, near)
+	}
+	for at := begin; at < len(b.order); at++ {
+		for _, j := range b.s.neighbours[b.order[at]] {
+			if !seen[j] {
+				visit(j, b.order[at])
+			}
+		}
+	}
+}
+
+// beside returns a neighbour of k that has its image before k is tried, or -1.
+func (b *backtrack) beside(k int, seen []bool) int {
+	for _, j := range b.s.neighbours[k] {
+		if seen[j] || b.placed[j] {
+			return j
+		}
+	}
+	return -1
+}
+
+// closeBlocks notes after which place of the order each block is complete.
+func (b *backtrack) closeBlocks() {
+	b.closes = make([]int, len(b.order))
+	for k := range b.closes {
+		b.closes[k] = -1
+	}
+	for n, set := range b.blocks {
+		last := 0
+		for at, k := range b.order {
+			if slices.Contains(set.places, k) {
+				last = at
+			}
+		}
+		b.closes[last] = n
 	}
 }
 
 // extend places the atom at position k of the order, and all behind it.
 func (b *backtrack) extend(k int) {
 	b.steps++
-	if len(b.found) == b.limit || b.steps > b.maxSteps() {
+	if len(b.found) == b.limit || b.steps > b.most {
 		return
 	}
 	if k == len(b.order) {
@@ -155,30 +157,39 @@ func (b *backtrack) extend(k int) {
 		return
 	}
 	i := b.order[k]
+	if b.stay {
+		b.try(k, i, i)
+	}
 	if b.from[k] < 0 {
 		for j := range b.s.atoms {
-			b.try(k, i, j)
+			if !b.stay || j != i {
+				b.try(k, i, j)
+			}
 		}
 		return
 	}
 	for _, j := range b.s.neighbours[b.image[b.from[k]]] {
-		b.try(k, i, j)
+		if !b.stay || j != i {
+			b.try(k, i, j)
+		}
 	}
 }
 
 func (b *backtrack) try(k, i, j int) {
-	if b.used[j] || b.leaf[j] || b.s.class[i] != b.s.class[j] || !b.bondsKept(k, i, j) {
+	if b.used[j] || b.s.class[i] != b.s.class[j] || !b.bondsKept(i, j) {
 		return
 	}
-	b.image[i], b.used[j] = j, true
-	b.extend(k + 1)
-	b.used[j] = false
+	b.image[i], b.used[j], b.placed[i] = j, true, true
+	if b.closes == nil || b.closes[k] < 0 || b.blocks[b.closes[k]].lowest(b.image) {
+		b.extend(k + 1)
+	}
+	b.used[j], b.placed[i] = false, false
 }
 
 // bondsKept says whether every placed neighbour of i has its image bonded to j.
-func (b *backtrack) bondsKept(k, i, j int) bool {
+func (b *backtrack) bondsKept(i, j int) bool {
 	for _, n := range b.s.neighbours[i] {
-		if slices.Contains(b.order[:k], n) && !slices.Contains(b.s.neighbours[j], b.image[n]) {
+		if b.placed[n] && !slices.Contains(b.s.neighbours[j], b.image[n]) {
 			return false
 		}
 	}

@@ -48,10 +48,12 @@ func Unique(c *Comparer, xs [][]float64, energies []float64, t Thresholds) []Gro
 	}
 	slices.SortStableFunc(order, func(i, j int) int { return cmp.Compare(energies[i], energies[j]) })
 	var leaders []leader
+	fit := c.fitter()
 	for _, i := range order {
 		s := leader{energy: energies[i], x: c.take(xs[i])}
 		s.print = fingerprintOf(s.x.x)
-		k, mirrored := c.join(leaders, s, t)
+		s.profile = c.profileOf(s.x.x)
+		k, mirrored := fit.join(leaders, s, t)
 		if k < 0 {
 			s.group = Group{Keep: i}
 			leaders = append(leaders, s)
@@ -68,24 +70,25 @@ func Unique(c *Comparer, xs [][]float64, energies []float64, t Thresholds) []Gro
 }
 
 type leader struct {
-	energy float64
-	x      cloud
-	print  fingerprint
-	group  Group
+	energy  float64
+	x       cloud
+	print   fingerprint
+	profile profile
+	group   Group
 }
 
 // join returns the leader that s is the same as, -1 if there is none. Leaders
 // stand in the order of their energies, so those out of reach come first.
-func (c *Comparer) join(leaders []leader, s leader, t Thresholds) (k int, mirrored bool) {
+func (f *fitter) join(leaders []leader, s leader, t Thresholds) (k int, mirrored bool) {
 	first, _ := slices.BinarySearchFunc(leaders, s.energy-t.Energy, func(l leader, e float64) int {
 		return cmp.Compare(l.energy, e)
 	})
 	for k := first; k < len(leaders); k++ {
-		if leaders[k].print.apart(s.print) > t.RMSD {
+		if leaders[k].print.apart(s.print) > t.RMSD || leaders[k].profile.apart(s.profile) > t.RMSD {
 			continue
 		}
-		if f := c.best(leaders[k].x, s.x); f.rmsd <= t.RMSD && !math.IsNaN(f.rmsd) {
-			return k, f.mirrored
+		if b := f.best(leaders[k].x, s.x); b.rmsd <= t.RMSD && !math.IsNaN(b.rmsd) {
+			return k, b.mirrored
 		}
 	}
 	return -1, false

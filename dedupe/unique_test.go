@@ -92,7 +92,7 @@ func TestFingerprintIsABound(t *testing.T) {
 			}
 			b = newCloud(b.x)
 		}
-		rmsd := c.best(a, b).rmsd
+		rmsd := c.fitter().best(a, b).rmsd
 		if bound := fingerprintOf(a.x).apart(fingerprintOf(b.x)); bound > rmsd+1e-9 {
 			t.Errorf("seed %d: bound %g, RMSD %g", seed, bound, rmsd)
 		}
@@ -124,5 +124,31 @@ func BenchmarkUnique(b *testing.B) {
 	c := NewComparer(m, Options{PolarHydrogens: true})
 	for b.Loop() {
 		Unique(c, xs, make([]float64, len(xs)), DefaultThresholds())
+	}
+}
+
+// BenchmarkUniqueMany is a list as long as searches make them: 10,000 shapes,
+// 500 different ones and their like, of a ligand of 60 atoms, all of one energy,
+// so that each is compared with all leaders.
+func BenchmarkUniqueMany(b *testing.B) {
+	m, _, err := smiles.Parse("CC(C)(C)c1ccc(cc1)CCNC(=O)CCN(Cc1ccccc1)C(=O)C(F)(F)F")
+	if err != nil {
+		b.Fatal(err)
+	}
+	r := rand.New(rand.NewPCG(1, 1))
+	var xs [][]float64
+	for k := range 10000 {
+		x := randomPoints(m.NumAtoms(), uint64(k%500))
+		for i := range x {
+			x[i] += 0.05 * r.NormFloat64()
+		}
+		xs = append(xs, moved(x, uint64(k)))
+	}
+	b.ReportMetric(float64(m.NumAtoms()), "atoms")
+	c := NewComparer(m, Options{PolarHydrogens: true})
+	for b.Loop() {
+		if n := len(Unique(c, xs, make([]float64, len(xs)), DefaultThresholds())); n != 500 {
+			b.Fatalf("%d groups, want 500", n)
+		}
 	}
 }
