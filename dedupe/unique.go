@@ -51,8 +51,7 @@ func Unique(c *Comparer, xs [][]float64, energies []float64, t Thresholds) []Gro
 	fit := c.fitter()
 	for _, i := range order {
 		s := leader{energy: energies[i], x: c.take(xs[i])}
-		s.print = fingerprintOf(s.x.x)
-		s.profile = c.profileOf(s.x.x)
+		s.print, s.profile = fingerprintOf(s.x.x), c.profileOf(s.x.x)
 		k, mirrored := fit.join(leaders, s, t)
 		if k < 0 {
 			s.group = Group{Keep: i}
@@ -84,12 +83,47 @@ func (f *fitter) join(leaders []leader, s leader, t Thresholds) (k int, mirrored
 		return cmp.Compare(l.energy, e)
 	})
 	for k := first; k < len(leaders); k++ {
-		if leaders[k].print.apart(s.print) > t.RMSD || leaders[k].profile.apart(s.profile) > t.RMSD {
-			continue
-		}
-		if b := f.best(leaders[k].x, s.x); b.rmsd <= t.RMSD && !math.IsNaN(b.rmsd) {
-			return k, b.mirrored
+		if mirrored, same := f.alike(&leaders[k], &s, t.RMSD); same {
+			return k, mirrored
 		}
 	}
 	return -1, false
+}
+
+// A Collection sorts shapes into groups one by one, in the order in which they
+// come: unlike Unique it lets the first of a group lead it. One goroutine at a
+// time.
+type Collection struct {
+	fit     *fitter
+	t       Thresholds
+	leaders []leader
+}
+
+// NewCollection returns an empty collection of shapes of c's molecule.
+func NewCollection(c *Comparer, t Thresholds) *Collection { return &Collection{fit: c.fitter(), t: t} }
+
+// Add returns the number of the shape's group and whether that is a new one.
+func (k *Collection) Add(x []float64, energy float64) (group int, fresh bool) {
+	c := k.fit.c
+	s := leader{energy: energy, x: c.take(x)}
+	s.print, s.profile = fingerprintOf(s.x.x), c.profileOf(s.x.x)
+	for n := range k.leaders {
+		if math.Abs(k.leaders[n].energy-energy) <= k.t.Energy {
+			if _, same := k.fit.alike(&k.leaders[n], &s, k.t.RMSD); same {
+				return n, false
+			}
+		}
+	}
+	k.leaders = append(k.leaders, s)
+	return len(k.leaders) - 1, true
+}
+
+// alike says whether two shapes are within so many bohr of each other, the
+// cheap bounds first.
+func (f *fitter) alike(a, b *leader, limit float64) (mirrored, same bool) {
+	if a.print.apart(b.print) > limit || a.profile.apart(b.profile) > limit {
+		return false, false
+	}
+	best := f.best(a.x, b.x)
+	return best.mirrored, best.rmsd <= limit && !math.IsNaN(best.rmsd)
 }

@@ -7,37 +7,54 @@ import (
 	"slices"
 )
 
+// budget is how many structures are relaxed at most.
+func (s *search) budget() int {
+	if s.assembly == nil {
+		return s.o.relaxations(0)
+	}
+	return s.o.relaxations(len(s.assembly.turns))
+}
+
+// gridShare is the share of the budget, one in so many, that the grid may take
+// where no minima are asked for.
+const gridShare = 2
+
 // assembled relaxes structures put together from fragments: all combinations
-// where they are few, otherwise samples.
+// where they are few, and then samples of what lies beside them; otherwise
+// samples alone.
 func (s *search) assembled(ctx context.Context) error {
-	budget := s.o.relaxations()
-	if s.combinations() <= float64(s.o.Exhaustive) {
-		leaves := s.enumerate()
-		s.result.Starts += int(s.combinations())
+	budget := s.budget()
+	gridded := s.combinations() <= float64(s.o.Exhaustive)
+	if gridded {
 		limit := budget
 		if !s.o.Minima {
 			limit = budget / gridShare
 		}
-		s.result.Complete = len(leaves) <= limit
-		if !s.result.Complete {
-			leaves = s.lottery(leaves, limit)
+		spent, err := s.grid(ctx, limit)
+		if err != nil {
+			return err
 		}
-		for _, l := range leaves {
-			x := make([]float64, 3*s.m.NumAtoms())
-			s.assembly.force(l.recipe, x)
-			if err := s.add(ctx, x, l.recipe, false); err != nil {
-				return err
-			}
-		}
-		budget -= len(leaves)
-		if s.o.Minima {
-			return nil
-		}
+		budget -= spent
 	}
-	return s.sampled(ctx, budget)
+	return s.sampled(ctx, budget, gridded)
 }
 
-var gridShare = 2
+// grid relaxes all combinations, or so many of them, and returns how many.
+func (s *search) grid(ctx context.Context, limit int) (int, error) {
+	leaves := s.enumerate()
+	s.result.Starts += int(s.combinations())
+	if s.result.Complete = len(leaves) <= limit; !s.result.Complete {
+		leaves = s.lottery(leaves, limit)
+	}
+	for _, l := range leaves {
+		x := make([]float64, 3*s.m.NumAtoms())
+		s.assembly.force(l.recipe, x)
+		if err := s.add(ctx, x, l.recipe, false); err != nil {
+			return 0, err
+		}
+	}
+	return len(leaves), nil
+}
 
 // lottery draws so many of the leaves, each with a chance that falls with its
 // cost, and keeps their order.
@@ -136,33 +153,3 @@ func (s *search) fitIn(k, n int, rec recipe, x []float64) (crowding float64, ok 
 	}
 	return 0, false
 }
-
-// batch is how many structures are drawn between two looks at the energies.
-const batch = 50
-
-// sampled draws structures in batches until the budget is spent. The first
-// batches follow the table of torsions, the later ones also what turned out to
-// be low.
-func (s *search) sampled(ctx context.Context, budget int) error {
-	for done := 0; done < budget; done += batch {
-		n := min(batch, budget-done)
-		grid := latin(stream(s.o.Seed, s.id, streamGrid, done), n, len(s.assembly.turns))
-		from := len(s.pool)
-		for k := range n {
-			x := make([]float64, 3*s.m.NumAtoms())
-			rec, ok := s.sampler.draw(stream(s.o.Seed, s.id, streamDraw, done+k), grid[k], x)
-			s.result.Starts++
-			if !ok {
-				continue
-			}
-			s.result.Embedded++
-			if err := s.add(ctx, x, rec, !s.o.Minima && holdThem); err != nil {
-				return err
-			}
-		}
-		s.sampler.learn(s.pool[from:])
-	}
-	return nil
-}
-
-var holdThem = true

@@ -29,6 +29,7 @@ type Result struct {
 	Embedded   int         // of them without collisions
 	Relaxed    int         // of them relaxed with the right stereo
 	Found      int         // distinct shapes within the window, before the cap
+	Unseen     float64     // chance that one more start would have found a new shape, where starts were drawn
 	Complete   bool        // all combinations of states and ring shapes were tried, and no cap cut the list
 	Warnings   []string
 }

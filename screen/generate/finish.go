@@ -1,7 +1,6 @@
 package generate
 
 import (
-	"cmp"
 	"context"
 	"fmt"
 	"math"
@@ -26,18 +25,19 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	if !s.o.Minima {
 		early, late = byShape, byShape
 	}
-	kept := s.within(s.distinct(s.pool, nil, early))
-	s.result.Found = len(kept)
-	chosen, err := s.order(ctx, kept, s.o.Max)
-	if err != nil {
-		return Result{}, err
-	}
-	if len(chosen) < len(kept) {
-		s.result.Complete = false
-	}
-	list, err := s.tightened(ctx, chosen)
-	if err != nil {
-		return Result{}, err
+	list := s.within(s.distinct(s.pool, nil, early))
+	s.result.Found = len(list)
+	if s.o.Minima {
+		chosen, err := s.order(ctx, list, s.o.Max)
+		if err != nil {
+			return Result{}, err
+		}
+		if len(chosen) < len(list) {
+			s.result.Complete = false
+		}
+		if list, err = s.tightened(ctx, chosen); err != nil {
+			return Result{}, err
+		}
 	}
 	if s.o.MirrorImages {
 		list = s.bothHands(list, late.RMSD)
@@ -53,13 +53,9 @@ func (s *search) finish(ctx context.Context) (Result, error) {
 	return s.result, nil
 }
 
-// tightened relaxes candidates to the end, where that is asked for, and drops
-// those that have become the same.
+// tightened relaxes candidates to the end and drops those that have become the
+// same.
 func (s *search) tightened(ctx context.Context, chosen []candidate) ([]candidate, error) {
-	if !s.o.Minima {
-		slices.SortStableFunc(chosen, func(a, b candidate) int { return cmp.Compare(a.energy, b.energy) })
-		return chosen, nil
-	}
 	var final []entry
 	var hits []int
 	for _, c := range chosen {

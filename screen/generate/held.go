@@ -41,7 +41,7 @@ func (h *heldSurface) Gradient(ctx context.Context, grad, x []float64) (float64,
 
 // holding is how strongly rotors are held: as strongly as a threefold barrier of
 // three kcal/mol curves at its bottom.
-var holding = 13 * units.KcalPerMol
+const holding = 15 * units.KcalPerMol
 
 // relaxedHeld minimises x in place with the rotors drawn to the angles of r, and
 // returns the energy without the restraints.

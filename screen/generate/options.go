@@ -34,8 +34,9 @@ type Options struct {
 	// Field is the force field that shapes are relaxed in; forcefield.Defaults.
 	Field forcefield.Options
 
-	// Relaxations is how many structures are relaxed at most; 0: twice Max and
-	// at least 100.
+	// Relaxations is how many structures are relaxed at most. 0: twice Max and at
+	// least 100; without Minima 500 and 200 more for each rotor, at most 3000 and
+	// at most 40 Max. The search ends before where nothing new is to be expected.
 	Relaxations int
 
 	// Exhaustive is the largest number of combinations of torsion states and
@@ -52,13 +53,15 @@ func Defaults() Options {
 }
 
 // Spread returns the settings for a list that is to hold a shape from elsewhere,
-// a bound ligand say: spread wide in energy, of both hands, and only so far
-// relaxed as removes strain.
+// a bound ligand say: spread wide in energy, of both hands, only so far relaxed
+// as removes strain, and without charges, which in a vacuum fold a ligand onto
+// itself.
 func Spread() Options {
 	o := Defaults()
 	o.EnergyScale = 20 * units.KcalPerMol
 	o.MirrorImages = true
 	o.Minima = false
+	o.Field.Charges = "none"
 	return o
 }
 
@@ -77,12 +80,15 @@ func (o Options) Check() error {
 	return nil
 }
 
-// relaxations is the budget of minimisations.
-func (o Options) relaxations() int {
-	if o.Relaxations > 0 {
+// relaxations is the budget of minimisations for a molecule with so many rotors.
+func (o Options) relaxations(rotors int) int {
+	switch {
+	case o.Relaxations > 0:
 		return o.Relaxations
+	case o.Minima:
+		return max(100, 2*o.Max)
 	}
-	return max(100, 2*o.Max)
+	return max(100, min(500+200*rotors, 3000, 40*o.Max))
 }
 
 // fragmentField leaves electrostatics out: a fragment's charges are not those

@@ -1,6 +1,7 @@
 package generate
 
 import (
+	"container/heap"
 	"context"
 	"math"
 
@@ -11,6 +12,10 @@ import (
 // distances that order needs: an upper bound does where there are more.
 const orderLimit = 64
 
+// mostOrdered is how many candidates order looks at, the lowest: its time and its
+// memory grow with their square.
+const mostOrdered = 2400
+
 // order picks at most limit candidates from a list that is sorted by energy, so
 // that each prefix is a good choice of its size: the lowest first, then always
 // the one that brings all shapes of the list, each by its worth, closest to the
@@ -20,6 +25,7 @@ const orderLimit = 64
 // best choice of each size: G. L. Nemhauser, L. A. Wolsey, M. L. Fisher, Math.
 // Program. 1978, 14, 265.
 func (s *search) order(ctx context.Context, list []candidate, limit int) ([]candidate, error) {
+	list = list[:min(len(list), mostOrdered)]
 	xs := make([][]float64, len(list))
 	worth := make([]float64, len(list))
 	for k, e := range list {
@@ -41,33 +47,64 @@ func (s *search) order(ctx context.Context, list []candidate, limit int) ([]cand
 
 // cover picks points, the first one first and then always the one that lowers
 // the sum of worth times distance to the nearest pick most; ties by number.
+//
+// What a point would bring never grows as others are picked, so an old value is
+// a bound and only the points on top are looked at again: M. Minoux, in
+// Optimization Techniques, Lecture Notes in Control and Information Sciences 7,
+// 1978, 234.
 func cover(distance [][]float64, worth []float64, limit int) []int {
 	n := len(worth)
 	nearest := append([]float64(nil), distance[0]...)
-	taken := make([]bool, n)
-	taken[0] = true
-	picks := []int{0}
-	for len(picks) < limit {
-		best, most := -1, -1.0
-		for k := range n {
-			if taken[k] {
-				continue
-			}
-			var gain float64
-			for i, d := range distance[k] {
-				if d < nearest[i] {
-					gain += worth[i] * (nearest[i] - d)
-				}
-			}
-			if gain > most {
-				best, most = k, gain
+	gain := func(k int) float64 {
+		var sum float64
+		for i, d := range distance[k] {
+			if d < nearest[i] {
+				sum += worth[i] * (nearest[i] - d)
 			}
 		}
-		taken[best] = true
-		picks = append(picks, best)
-		for i, d := range distance[best] {
+		return sum
+	}
+	rest := make(bounds, 0, n)
+	for k := 1; k < n; k++ {
+		rest = append(rest, bound{k, gain(k)})
+	}
+	heap.Init(&rest)
+	picks := []int{0}
+	for len(picks) < limit && len(rest) > 0 {
+		for {
+			top := &rest[0]
+			old := top.gain
+			if top.gain = gain(top.point); top.gain == old {
+				break
+			}
+			heap.Fix(&rest, 0)
+		}
+		k := heap.Pop(&rest).(bound).point
+		picks = append(picks, k)
+		for i, d := range distance[k] {
 			nearest[i] = math.Min(nearest[i], d)
 		}
 	}
 	return picks
+}
+
+// A bound is a point and the most that it can bring.
+type bound struct {
+	point int
+	gain  float64
+}
+
+// bounds is a heap with the largest on top.
+type bounds []bound
+
+func (b bounds) Len() int { return len(b) }
+func (b bounds) Less(i, j int) bool {
+	return b[i].gain > b[j].gain || b[i].gain == b[j].gain && b[i].point < b[j].point
+}
+func (b bounds) Swap(i, j int) { b[i], b[j] = b[j], b[i] }
+func (b *bounds) Push(x any)   { *b = append(*b, x.(bound)) }
+func (b *bounds) Pop() any {
+	last := (*b)[len(*b)-1]
+	*b = (*b)[:len(*b)-1]
+	return last
 }

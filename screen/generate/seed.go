@@ -13,6 +13,7 @@ const (
 	streamWhole
 	streamKick
 	streamLottery
+	streamTally
 )
 
 // stream returns the random numbers that belong to one purpose and one index

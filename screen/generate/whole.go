@@ -17,9 +17,9 @@ const (
 // embedded relaxes embeddings of the whole molecule: a second opinion on what
 // the assembly can make, and the only way where it can make nothing.
 func (s *search) embedded(ctx context.Context) error {
-	runs := min(mostRuns, max(fewestRuns, s.o.relaxations()/wholeShare))
+	runs := min(mostRuns, max(fewestRuns, s.budget()/wholeShare))
 	if len(s.pool) == 0 {
-		runs = max(fewestRuns, s.o.relaxations()/2)
+		runs = max(fewestRuns, s.budget()/2)
 	}
 	for k := range runs {
 		s.result.Starts++

@@ -1,0 +1,53 @@
+package generate
+
+import "context"
+
+// batch is how many structures are drawn between two looks at the energies; of
+// bredShare one is bred from those that are there.
+const (
+	batch     = 50
+	bredShare = 4
+)
+
+// sampled draws structures in batches until the budget is spent or nothing new
+// is to be expected. The first batches follow the table of torsions, the later
+// ones also what turned out to be low. Where no minima are asked for rotors are
+// held: always where the grid has been through the minima, otherwise every other
+// time.
+func (s *search) sampled(ctx context.Context, budget int, gridded bool) error {
+	if len(s.assembly.turns) == 0 {
+		return nil
+	}
+	b := &breeder{s: s}
+	t := s.newTally()
+	for done := 0; done < budget && !t.exhausted(); done += batch {
+		n := min(batch, budget-done)
+		grid := latin(stream(s.o.Seed, s.id, streamGrid, done), n, len(s.assembly.turns))
+		from := len(s.pool)
+		b.learn()
+		for k := range n {
+			r := stream(s.o.Seed, s.id, streamDraw, done+k)
+			x := make([]float64, 3*s.m.NumAtoms())
+			rec, ok := recipe{}, false
+			if k%bredShare == bredShare-1 && b.ready() {
+				rec, ok = b.draw(r, x)
+			}
+			if !ok {
+				rec, ok = s.sampler.draw(r, grid[k], x)
+			}
+			s.result.Starts++
+			if !ok {
+				continue
+			}
+			s.result.Embedded++
+			held := !s.o.Minima && (gridded || k%2 == 0)
+			if err := s.add(ctx, x, rec, held); err != nil {
+				return err
+			}
+		}
+		s.sampler.learn(s.pool[from:])
+		t.take(s.pool)
+	}
+	s.result.Unseen = t.unseen()
+	return nil
+}
