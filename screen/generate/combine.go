@@ -24,25 +24,28 @@ const gridShare = 2
 // samples alone.
 func (s *search) assembled(ctx context.Context) error {
 	budget := s.budget()
-	gridded := s.combinations() <= float64(s.o.Exhaustive)
+	gridded := s.combinations(s.middles()) <= float64(s.o.Exhaustive)
 	if gridded {
-		limit := budget
+		states, limit := s.middles(), budget
 		if !s.o.Minima {
 			limit = budget / gridShare
+		} else if fine := s.shoulders(); s.combinations(fine) <= finest {
+			states, limit = fine, finest
 		}
-		spent, err := s.grid(ctx, limit)
+		spent, err := s.grid(ctx, states, limit)
 		if err != nil {
 			return err
 		}
-		budget -= spent
+		budget = max(budget-spent, fewestCounted)
 	}
 	return s.sampled(ctx, budget, gridded)
 }
 
-// grid relaxes all combinations, or so many of them, and returns how many.
-func (s *search) grid(ctx context.Context, limit int) (int, error) {
-	leaves := s.enumerate()
-	s.result.Starts += int(s.combinations())
+// grid relaxes all combinations of states, or so many of them, and returns how
+// many.
+func (s *search) grid(ctx context.Context, states [][]state, limit int) (int, error) {
+	leaves := s.enumerate(states)
+	s.result.Starts += int(s.combinations(states))
 	if s.result.Complete = len(leaves) <= limit; !s.result.Complete {
 		leaves = s.lottery(leaves, limit)
 	}
@@ -79,11 +82,11 @@ func (s *search) lottery(leaves []leaf, n int) []leaf {
 	return drawn
 }
 
-// combinations counts the recipes with every rotor in the middle of a state.
-func (s *search) combinations() float64 {
+// combinations counts the recipes with every rotor in one of its states.
+func (s *search) combinations(states [][]state) float64 {
 	n := 1.0
-	for _, t := range s.assembly.turns {
-		n *= float64(len(t.states))
+	for _, list := range states {
+		n *= float64(len(list))
 	}
 	for _, f := range s.assembly.frags {
 		n *= float64(len(f.shapes))
@@ -100,7 +103,7 @@ type leaf struct {
 
 // enumerate goes through all combinations depth first and leaves a branch where
 // fragments clash.
-func (s *search) enumerate() []leaf {
+func (s *search) enumerate(states [][]state) []leaf {
 	a := s.assembly
 	rec := recipe{make([]int, len(a.frags)), make([]float64, len(a.turns))}
 	x := make([]float64, 3*s.m.NumAtoms())
@@ -121,14 +124,13 @@ func (s *search) enumerate() []leaf {
 				visit(k+1, cost-math.Log(share))
 				continue
 			}
-			for n := range a.turns[step.turn].states {
-				crowding, ok := s.fitIn(k, n, rec, x)
+			for _, st := range states[step.turn] {
+				crowding, ok := s.fitIn(k, st, rec, x)
 				if !ok {
 					continue
 				}
 				a.settle(k)
-				weight := s.sampler.states[step.turn][n]
-				visit(k+1, cost-math.Log(share)-math.Log(weight)+crowding/tooCrowded)
+				visit(k+1, cost-math.Log(share)-math.Log(st.weight)+crowding/tooCrowded)
 				a.unsettle(k)
 			}
 		}
@@ -142,9 +144,8 @@ func (s *search) enumerate() []leaf {
 // middle clashes.
 var offsets = [...]float64{0, 0.8, -0.8, 1.6, -1.6}
 
-func (s *search) fitIn(k, n int, rec recipe, x []float64) (crowding float64, ok bool) {
+func (s *search) fitIn(k int, st state, rec recipe, x []float64) (crowding float64, ok bool) {
 	turn := s.assembly.steps[k].turn
-	st := s.assembly.turns[turn].states[n]
 	for _, off := range offsets {
 		rec.angles[turn] = st.angle + off*st.spread
 		if crowding = s.assembly.put(k, rec, x); crowding < tooCrowded {

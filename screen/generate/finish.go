@@ -7,6 +7,7 @@ import (
 	"slices"
 
 	"torsieve/dedupe"
+	"torsieve/internal/geom"
 	"torsieve/internal/units"
 )
 
@@ -78,13 +79,20 @@ func (s *search) tightened(ctx context.Context, chosen []candidate) ([]candidate
 	return s.within(s.distinct(final, hits, dedupe.DefaultThresholds())), nil
 }
 
-// kick moves every atom a little, at random: a structure that came to rest on a
-// saddle point, an eclipsed methyl group say, would stay there otherwise.
+// kick moves every atom and turns every rotor a little, at random: a structure
+// that came to rest on a saddle point, an eclipsed methyl group say or the
+// middle between two minima that mirror each other, would stay there otherwise.
 func (s *search) kick(x []float64, start int) {
-	const size = 0.06 * units.Angstrom // standard deviation of a coordinate
+	const (
+		size = 0.06 * units.Angstrom // standard deviations of a coordinate and of an angle
+		turn = 6 * degree
+	)
 	r := stream(s.o.Seed, s.id, streamKick, start)
 	for i := range x {
 		x[i] += size * r.NormFloat64()
+	}
+	for _, rotor := range s.m.Rotors() {
+		geom.RotateAbout(x, rotor.J, rotor.K, rotor.Moving, turn*r.NormFloat64())
 	}
 }
 

@@ -58,7 +58,7 @@ func Defaults() Options {
 // itself.
 func Spread() Options {
 	o := Defaults()
-	o.EnergyScale = 20 * units.KcalPerMol
+	o.EnergyScale = 10 * units.KcalPerMol
 	o.MirrorImages = true
 	o.Minima = false
 	o.Field.Charges = "none"

@@ -2,12 +2,17 @@ package generate
 
 import "context"
 
-// batch is how many structures are drawn between two looks at the energies; of
-// bredShare one is bred from those that are there.
-const (
-	batch     = 50
-	bredShare = 4
-)
+// batch is how many structures are drawn between two looks at the energies.
+const batch = 50
+
+// bredShare: of so many structures one is bred from those that are there. Minima
+// are found by it; coverage is not made better.
+func (s *search) bredShare() int {
+	if s.o.Minima {
+		return 2
+	}
+	return 4
+}
 
 // sampled draws structures in batches until the budget is spent or nothing new
 // is to be expected. The first batches follow the table of torsions, the later
@@ -18,7 +23,7 @@ func (s *search) sampled(ctx context.Context, budget int, gridded bool) error {
 	if len(s.assembly.turns) == 0 {
 		return nil
 	}
-	b := &breeder{s: s}
+	b, bred := &breeder{s: s}, s.bredShare()
 	t := s.newTally()
 	for done := 0; done < budget && !t.exhausted(); done += batch {
 		n := min(batch, budget-done)
@@ -29,7 +34,7 @@ func (s *search) sampled(ctx context.Context, budget int, gridded bool) error {
 			r := stream(s.o.Seed, s.id, streamDraw, done+k)
 			x := make([]float64, 3*s.m.NumAtoms())
 			rec, ok := recipe{}, false
-			if k%bredShare == bredShare-1 && b.ready() {
+			if k%bred == bred-1 && b.ready() {
 				rec, ok = b.draw(r, x)
 			}
 			if !ok {

@@ -87,6 +87,7 @@ func (s *search) cut(ctx context.Context) error {
 	}
 	s.assembly = newAssembly(s.m, s.screen, frags, turns)
 	s.sampler = newSampler(s.assembly)
+	s.sampler.evenly = s.o.Minima
 	return nil
 }
 

@@ -17,6 +17,7 @@ type tally struct {
 	energy []float64
 	fresh  []int // by relaxation: the group that it opened, or -1
 	taken  int   // structures of the pool that have been counted
+	first  int   // of them made before the first draw
 	dice   *rand.Rand
 }
 
@@ -28,6 +29,7 @@ func (s *search) newTally() *tally {
 	t := &tally{shapes: dedupe.NewCollection(s.comparer, alike), scale: s.o.EnergyScale,
 		dice: stream(s.o.Seed, s.id, streamTally, 0)}
 	t.take(s.pool)
+	t.first = t.taken
 	return t
 }
 
@@ -62,7 +64,7 @@ func (t *tally) unseen() float64 {
 	return float64(once) / float64(len(t.fresh))
 }
 
-// When a search may end before its budget: after so many relaxations, if the
+// When a search may end before its budget: after so many drawn relaxations, if the
 // next batch is expected to add no more than this share to the summed weights
 // and this share of new shapes.
 const (
@@ -73,7 +75,7 @@ const (
 
 // exhausted says whether another batch is worth while.
 func (t *tally) exhausted() bool {
-	return len(t.fresh) >= fewestCounted && t.unseen() <= shapeTolerance && t.expected() <= weightTolerance
+	return len(t.fresh)-t.first >= fewestCounted && t.unseen() <= shapeTolerance && t.expected() <= weightTolerance
 }
 
 // expected is the upper end, at 95 %, of the share of weight that the next batch
