@@ -19,6 +19,10 @@ func (s *search) budget() int {
 // where no minima are asked for.
 const gridShare = 2
 
+// freeWidth is the share of a state's spread that is drawn where rotors are not
+// held: the force field moves the rest.
+const freeWidth = 0.7
+
 // assembled relaxes structures put together from fragments: all combinations
 // where they are few, and then samples of what lies beside them; otherwise
 // samples alone.
@@ -37,6 +41,8 @@ func (s *search) assembled(ctx context.Context) error {
 			return err
 		}
 		budget = max(budget-spent, fewestCounted)
+	} else {
+		s.sampler.width = freeWidth
 	}
 	return s.sampled(ctx, budget, gridded)
 }

@@ -35,7 +35,7 @@ type Options struct {
 	Field forcefield.Options
 
 	// Relaxations is how many structures are relaxed at most. 0: twice Max and at
-	// least 100; without Minima 500 and 200 more for each rotor, at most 3000 and
+	// least 100; without Minima 500 and 150 more for each rotor, at most 2000 and
 	// at most 40 Max. The search ends before where nothing new is to be expected.
 	Relaxations int
 
@@ -88,7 +88,7 @@ func (o Options) relaxations(rotors int) int {
 	case o.Minima:
 		return max(100, 2*o.Max)
 	}
-	return max(100, min(500+200*rotors, 3000, 40*o.Max))
+	return max(100, min(500+150*rotors, 2000, 40*o.Max))
 }
 
 // fragmentField leaves electrostatics out: a fragment's charges are not those

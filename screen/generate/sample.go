@@ -10,11 +10,12 @@ type sampler struct {
 	a      *assembly
 	states [][]float64 // by rotor: weights of the states, adapted as energies come in
 	shapes [][]float64 // by fragment: weights of the shapes
+	width  float64     // share of a state's spread that is drawn
 	evenly bool        // every place in a state is as likely as another
 }
 
 func newSampler(a *assembly) *sampler {
-	s := &sampler{a: a}
+	s := &sampler{a: a, width: 1}
 	for _, t := range a.turns {
 		w := make([]float64, len(t.states))
 		for k, st := range t.states {
@@ -89,7 +90,7 @@ func (s *sampler) grow(r *rand.Rand, first []float64, rec recipe, x []float64) b
 func (s *sampler) angle(turn int, u float64) float64 {
 	k, share := pickShare(s.states[turn], u)
 	st := s.a.turns[turn].states[k]
-	off := math.Sqrt2 * math.Erfinv(2*share-1)
+	off := math.Sqrt2 * math.Erfinv(2*share-1) * s.width
 	if s.evenly {
 		off = outmost * (2*share - 1)
 	}

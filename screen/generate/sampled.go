@@ -16,9 +16,10 @@ func (s *search) bredShare() int {
 
 // sampled draws structures in batches until the budget is spent or nothing new
 // is to be expected. The first batches follow the table of torsions, the later
-// ones also what turned out to be low. Where no minima are asked for rotors are
-// held: always where the grid has been through the minima, otherwise every other
-// time.
+// ones also what turned out to be low. Where no minima are asked for and the grid
+// has been through them rotors are held, so that what lies between is found too;
+// where combinations are too many for a grid the places in the list are better
+// given to their middles.
 func (s *search) sampled(ctx context.Context, budget int, gridded bool) error {
 	if len(s.assembly.turns) == 0 {
 		return nil
@@ -45,7 +46,7 @@ func (s *search) sampled(ctx context.Context, budget int, gridded bool) error {
 				continue
 			}
 			s.result.Embedded++
-			held := !s.o.Minima && (gridded || k%2 == 0)
+			held := gridded && !s.o.Minima
 			if err := s.add(ctx, x, rec, held); err != nil {
 				return err
 			}
