@@ -79,6 +79,26 @@ func TestUniqueTwice(t *testing.T) {
 	})
 }
 
+// A Collection takes shapes as they come: butane's anti form, gauche, its mirror
+// image, and gauche with an energy that cannot be that of the same minimum.
+func TestCollection(t *testing.T) {
+	m := parse(t, "CCCC")
+	k := NewCollection(NewComparer(m, Options{}), DefaultThresholds())
+	kcal := units.KcalPerMol
+	for _, c := range []struct {
+		angle, energy float64
+		group         int
+		fresh         bool
+	}{
+		{64, 0.6, 0, true}, {180, 0, 1, true}, {-64, 0.61, 0, false}, {180, 0.01, 1, false}, {64, 5, 2, true},
+	} {
+		group, fresh := k.Add(moved(chain(m, c.angle), 3), c.energy*kcal)
+		if group != c.group || fresh != c.fresh {
+			t.Errorf("%g degrees, %g kcal/mol: group %d, new %v; want %d, %v", c.angle, c.energy, group, fresh, c.group, c.fresh)
+		}
+	}
+}
+
 // The fingerprint never claims more distance than there is.
 func TestFingerprintIsABound(t *testing.T) {
 	m := parse(t, "c1ccccc1CCO")

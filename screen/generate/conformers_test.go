@@ -216,6 +216,65 @@ func TestRefusals(t *testing.T) {
 	}
 }
 
+// Long chains and large molecules, beyond any grid: an answer in the count of
+// starts that was asked for, with the stated stereo.
+func TestLargeMolecules(t *testing.T) {
+	for _, c := range []struct {
+		name, smiles string
+		rotors       int // at least
+		atoms        int // at least
+	}{
+		{"hexacontane", strings.Repeat("C", 60), 50, 182},
+		{"a peptide of 30 alanines", strings.Repeat("N[C@@H](C)C(=O)", 30) + "O", 59, 300},
+	} {
+		m := parse(t, c.smiles)
+		o := Spread()
+		o.Max, o.Relaxations = 3, 12
+		res, err := Conformers(context.Background(), m, c.name, o)
+		if err != nil {
+			t.Errorf("%s: %v", c.name, err)
+			continue
+		}
+		if m.NumAtoms() < c.atoms || m.RotatableBonds() < c.rotors {
+			t.Fatalf("%s: %d atoms, %d rotors", c.name, m.NumAtoms(), m.RotatableBonds())
+		}
+		if len(res.Conformers) == 0 || res.Complete || res.Starts > 12+mostRuns {
+			t.Errorf("%s: %d conformers of %d starts, complete %v", c.name, len(res.Conformers), res.Starts, res.Complete)
+		}
+		for _, x := range res.Conformers {
+			if err := m.StereoMatches(x.X); err != nil {
+				t.Errorf("%s: %v", c.name, err)
+			}
+		}
+	}
+}
+
+// Configurations that no ring can hold are refused after a bounded number of
+// attempts, or were dropped with a warning when the molecule was read.
+func TestImpossibleRings(t *testing.T) {
+	for _, text := range []string{
+		"C1CC2=CC1CC2",                       // a double bond at the bridgehead of norbornane: J. Bredt, Justus Liebigs Ann. Chem. 1924, 437, 1
+		"C1CC[C@H]2[C@@H]3CC[C@H]2[C@@H]1C3", // whichever way: it has an end
+		"C12C3C1C23", "C1CC/C=C/C1", "C1CCC/C=C/CC1",
+	} {
+		m := parse(t, text)
+		isomers, err := m.Isomers(8)
+		if err != nil {
+			t.Fatal(err)
+		}
+		o := Defaults()
+		o.Max = 10
+		res, err := Conformers(context.Background(), isomers[0], text, o)
+		var e *EmbedError
+		if err != nil && !errors.As(err, &e) {
+			t.Errorf("%s: %v", text, err)
+		}
+		if err == nil && len(res.Conformers) == 0 {
+			t.Errorf("%s: neither conformers nor an error", text)
+		}
+	}
+}
+
 func TestOptionsCheck(t *testing.T) {
 	for _, c := range []struct {
 		change func(*Options)

@@ -2,6 +2,7 @@ package generate
 
 import (
 	"math"
+	"math/rand/v2"
 	"slices"
 	"testing"
 )
@@ -36,6 +37,39 @@ func TestCover(t *testing.T) {
 		if got := cover(c.distance, c.worth, c.limit); !slices.Equal(got, c.want) {
 			t.Errorf("%s: %v, want %v", c.name, got, c.want)
 		}
+	}
+}
+
+// The way with bounds picks what looking at every point each time picks.
+func TestCoverIsGreedy(t *testing.T) {
+	r := rand.New(rand.NewPCG(5, 5))
+	const n = 80
+	at := make([]float64, n)
+	worth := make([]float64, n)
+	for k := range at {
+		at[k], worth[k] = float64(r.IntN(60)), float64(1+r.IntN(3)) // whole numbers, for ties
+	}
+	distance := onALine(at...)
+	nearest := slices.Clone(distance[0])
+	want := []int{0}
+	for len(want) < 30 {
+		best, most := -1, -1.0
+		for k := range n {
+			var gain float64
+			for i, d := range distance[k] {
+				gain += worth[i] * math.Max(0, nearest[i]-d)
+			}
+			if gain > most && !slices.Contains(want, k) {
+				best, most = k, gain
+			}
+		}
+		want = append(want, best)
+		for i, d := range distance[best] {
+			nearest[i] = math.Min(nearest[i], d)
+		}
+	}
+	if got := cover(distance, worth, 30); !slices.Equal(got, want) {
+		t.Errorf("%v, want %v", got, want)
 	}
 }
 

@@ -123,3 +123,47 @@ func TestHeldStays(t *testing.T) {
 		t.Errorf("rotors moved by %g radians held and %g free in sum", held, free)
 	}
 }
+
+// What is bred has every rotor near an angle of one of its parents but the few
+// drawn anew, and ring shapes of theirs.
+func TestBreeding(t *testing.T) {
+	s := searchOf(t, drugs[0])
+	ctx := context.Background()
+	for k := range 40 {
+		x := make([]float64, 3*s.m.NumAtoms())
+		if rec, ok := s.sampler.draw(stream(4, "x", streamDraw, k), nil, x); ok {
+			if err := s.add(ctx, x, rec, true); err != nil {
+				t.Fatal(err)
+			}
+		}
+	}
+	b := &breeder{s: s}
+	b.learn()
+	if !b.ready() {
+		t.Fatalf("%d parents", len(b.parents))
+	}
+	rotors, strange := 0, 0
+	for k := range 30 {
+		x := make([]float64, 3*s.m.NumAtoms())
+		rec, ok := b.draw(stream(5, "x", streamDraw, k), x)
+		if !ok {
+			continue
+		}
+		if err := s.m.StereoMatches(x); err != nil {
+			t.Error(err)
+		}
+		for n, angle := range rec.angles {
+			rotors++
+			near := false
+			for _, p := range b.parents {
+				near = near || math.Abs(math.Remainder(angle-p.recipe.angles[n], 2*math.Pi)) < 1e-3+4*nudge*s.assembly.turns[n].states[0].spread
+			}
+			if !near {
+				strange++
+			}
+		}
+	}
+	if rotors == 0 || strange*5 > rotors {
+		t.Errorf("%d of %d rotors are like no parent's", strange, rotors)
+	}
+}
