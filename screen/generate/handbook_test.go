@@ -139,16 +139,16 @@ func TestCyclohexane(t *testing.T) {
 			t.Errorf("chair: torsion %.1f at atom %d, want %g", got, i, want)
 		}
 	}
-	q := puckeringOf(chair.X[:18])
+	q := geom.PuckeringOf(chair.X[:18])
 	// Cremer and Pople 1975: Q about 0.56 to 0.58 angstrom for the chair, theta 0.
-	if total := q.total() / units.Angstrom; math.Abs(total-0.57) > 0.03 || math.Abs(q.amplitude[0]) > 0.02*units.Angstrom {
-		t.Errorf("chair: Q %.3f, q2 %.3f angstrom; want 0.57 and 0", total, q.amplitude[0]/units.Angstrom)
+	if total := q.Total() / units.Angstrom; math.Abs(total-0.57) > 0.03 || math.Abs(q.Amplitude[0]) > 0.02*units.Angstrom {
+		t.Errorf("chair: Q %.3f, q2 %.3f angstrom; want 0.57 and 0", total, q.Amplitude[0]/units.Angstrom)
 	}
 	twist := res.Conformers[1]
-	q = puckeringOf(twist.X[:18])
-	if phase := math.Mod(q.phase[0]/degree+360+30, 60); math.Abs(q.amplitude[1]) > 0.1*units.Angstrom || math.Min(phase, 60-phase) > 8 {
+	q = geom.PuckeringOf(twist.X[:18])
+	if phase := math.Mod(q.Phase[0]/degree+360+30, 60); math.Abs(q.Amplitude[1]) > 0.1*units.Angstrom || math.Min(phase, 60-phase) > 8 {
 		t.Errorf("second conformer: q3 %.3f angstrom, phase %.1f; want a twist-boat (q3 0, phase 30 + 60 n)",
-			q.amplitude[1]/units.Angstrom, q.phase[0]/degree)
+			q.Amplitude[1]/units.Angstrom, q.Phase[0]/degree)
 	}
 }
 
@@ -164,7 +164,7 @@ func TestMethylcyclohexane(t *testing.T) {
 	}
 	chairs := map[bool]bool{}
 	for _, c := range res.Conformers {
-		if q := puckeringOf(c.X[3:21]); math.Abs(q.amplitude[1]) > 0.5*units.Angstrom {
+		if q := geom.PuckeringOf(c.X[3:21]); math.Abs(q.Amplitude[1]) > 0.5*units.Angstrom {
 			chairs[anti(c)] = true
 		}
 	}

@@ -8,6 +8,7 @@ import (
 	"math"
 	"sync"
 
+	"torsieve/internal/geom"
 	"torsieve/internal/units"
 )
 
@@ -66,22 +67,22 @@ var ringTemplates = sync.OnceValues(func() (map[int][]ringTemplate, error) {
 // check compares the heights with the amplitudes (angstrom) and phases (degree).
 func (r ringTemplate) check(cp map[string][]float64) error {
 	n := len(r.z)
-	amplitudes, phases := modes(n)
+	amplitudes, phases := geom.PuckeringModes(n)
 	if amplitudes == 0 || n == 4 && len(cp) == 0 {
 		return nil
 	}
-	p := puckering{make([]float64, amplitudes), make([]float64, phases)}
+	p := geom.Puckering{Amplitude: make([]float64, amplitudes), Phase: make([]float64, phases)}
 	for k := range amplitudes {
 		v := cp[fmt.Sprintf("q%d", k+2)]
 		if len(v) == 0 {
 			return fmt.Errorf("generate: ring shape %q: no amplitude q%d", r.name, k+2)
 		}
-		p.amplitude[k] = v[0] * units.Angstrom
+		p.Amplitude[k] = v[0] * units.Angstrom
 		if k < phases && len(v) > 1 {
-			p.phase[k] = v[1] * degree
+			p.Phase[k] = v[1] * degree
 		}
 	}
-	for j, z := range p.heights(n) {
+	for j, z := range p.Heights(n) {
 		if math.Abs(z-r.z[j]) > 2e-4*units.Angstrom {
 			return fmt.Errorf("generate: ring shape %q: height %d does not fit its amplitudes", r.name, j)
 		}

@@ -10,7 +10,7 @@ import (
 // Sizes in units of the picture; a bond is scale long.
 const (
 	scale    = 26.0
-	margin   = 20.0
+	margin   = 25.0
 	font     = 13.0
 	gap      = 4.2 // between the lines of a double bond
 	wide     = 3.6 // half the broad end of a wedge
