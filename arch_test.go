@@ -27,7 +27,8 @@ var mayImport = map[string]string{
 	"screen/generate":    "internal molecule forcefield dedupe",
 	"screen":             "internal molecule dedupe screen/generate screen/ensemble screen/store",
 	"screen/tiertest":    "internal molecule screen",
-	"screen/report":      "internal molecule screen screen/ensemble",
+	"screen/report":      "internal molecule screen screen/ensemble screen/report/page",
+	"screen/report/page": "internal molecule screen screen/ensemble",
 	"cmd": "internal molecule forcefield semiempirical hf dedupe screen " +
 		"screen/generate screen/ensemble screen/report screen/store",
 }

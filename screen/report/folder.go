@@ -16,12 +16,14 @@ import (
 
 	"torsieve/internal/atomicfile"
 	"torsieve/screen"
+	"torsieve/screen/report/page"
 )
 
 // Names of the files of a run folder.
 const (
 	LigandTable    = "ligands.csv"
 	ConformerTable = "conformers.csv"
+	Page           = "report.html"
 	RunFile        = "run.json"
 	StoreFile      = "run.db"
 	LogFile        = "log.jsonl"
@@ -34,6 +36,7 @@ type Folder struct {
 	path    string
 	rows    []ligandRows
 	times   []LigandTime
+	book    page.Book
 	written map[string]bool // names in the ensemble folder
 }
 
@@ -81,7 +84,7 @@ func SetAside(path string) (string, error) {
 			return "", err
 		}
 		// run.json last: a folder with it is a run's
-		for _, name := range []string{StoreFile, StoreFile + "-wal", StoreFile + "-shm", StoreFile + ".lock", LogFile, LigandTable, ConformerTable, ensembleFolder, RunFile} {
+		for _, name := range []string{StoreFile, StoreFile + "-wal", StoreFile + "-shm", StoreFile + ".lock", LogFile, LigandTable, ConformerTable, Page, ensembleFolder, RunFile} {
 			err := os.Rename(filepath.Join(path, name), filepath.Join(aside, name))
 			if err != nil && !errors.Is(err, os.ErrNotExist) {
 				return "", err
@@ -121,12 +124,13 @@ func (f *Folder) Keep(r *screen.Result) error {
 	}
 	f.rows = append(f.rows, ligandRows{order: r.Ligand.Order, ligand: ligandRow(r), conformers: text.Bytes()})
 	f.times = append(f.times, timesOf(r))
+	f.book.Add(r)
 	return nil
 }
 
-// Close writes the tables and the run file, ligands in the order of the run. Of
-// a run that came to its end (whole) it removes ensembles of earlier ones that
-// are in it no more.
+// Close writes the tables, the page and the run file, ligands in the order of the
+// run. Of a run that came to its end (whole) it removes ensembles of earlier ones
+// that are in it no more.
 func (f *Folder) Close(run *Run, whole bool) error {
 	if whole {
 		if err := f.removeStale(); err != nil {
@@ -136,7 +140,12 @@ func (f *Folder) Close(run *Run, whole bool) error {
 	slices.SortFunc(f.rows, func(a, b ligandRows) int { return cmp.Compare(a.order, b.order) })
 	slices.SortFunc(f.times, func(a, b LigandTime) int { return cmp.Compare(a.order, b.order) })
 	run.Ligands = f.times
-	return errors.Join(f.write(LigandTable, f.ligands), f.write(ConformerTable, f.conformers), f.write(RunFile, run.write))
+	return errors.Join(
+		f.write(LigandTable, f.ligands),
+		f.write(ConformerTable, f.conformers),
+		f.write(RunFile, run.write), // sums up the times that the page shows
+		f.write(Page, func(w io.Writer) error { return f.book.Write(w, run.forPage()) }),
+	)
 }
 
 func (f *Folder) removeStale() error {

@@ -2,10 +2,15 @@ package report
 
 import (
 	"encoding/json"
+	"fmt"
 	"io"
+	"maps"
+	"slices"
+	"strings"
 	"time"
 
 	"torsieve/screen"
+	"torsieve/screen/report/page"
 )
 
 // A Run is run.json: enough to repeat the run, and the times that it took. Times
@@ -117,4 +122,38 @@ func (r *Run) End(now time.Time) {
 	if begun, err := time.Parse(time.RFC3339, r.Begun); err == nil {
 		r.Seconds = now.Sub(begun).Seconds()
 	}
+}
+
+// forPage is what the page says of the run. Call it after write, which sums up
+// the times.
+func (r *Run) forPage() page.Run {
+	p := page.Run{
+		Version: r.Version, Command: r.Command, Begun: r.Begun, Seconds: r.Seconds,
+		Solvent: fmt.Sprint(r.Settings["solvent"]),
+		Machine: fmt.Sprintf("%s, %s, %d cores, %d used", r.Machine.System, r.Machine.Processor, r.Machine.Cores, r.Machine.Jobs),
+	}
+	for _, name := range []string{"forcefield", "semiempirical", "hf"} {
+		if method, ran := r.Methods[name]; ran {
+			p.Tiers = append(p.Tiers, page.Tier{Name: name, Method: method, Seconds: r.SecondsByTier[name]})
+		}
+	}
+	if len(p.Tiers) < 2 {
+		p.Solvent = "none" // the force field knows no solvent
+	}
+	for _, in := range r.Inputs {
+		p.Inputs = append(p.Inputs, page.Input{File: in.File, SHA256: in.SHA256, Records: in.Records})
+	}
+	for _, name := range slices.Sorted(maps.Keys(r.Settings)) {
+		p.Settings = append(p.Settings, page.Setting{Name: name, Value: settingText(r.Settings[name])})
+	}
+	return p
+}
+
+// settingText writes a setting as run.json does; what was not set is "not set".
+func settingText(v any) string {
+	text, err := json.Marshal(v)
+	if err != nil || string(text) == "null" || string(text) == `""` {
+		return "not set"
+	}
+	return strings.Trim(string(text), `"`)
 }

@@ -19,7 +19,8 @@ const (
 
 // SVG returns the drawing as an element of its own. Colours come from the style
 // sheet: atoms have the class of their element (e7, e8, ...), all else the colour
-// of the text. title is told to readers that do not see.
+// of the text, and spots behind the atoms, which a style sheet hides or shows.
+// title is told to readers that do not see.
 func (d Drawing) SVG(title string) string {
 	var b strings.Builder
 	low, high := d.extent()
@@ -27,8 +28,14 @@ func (d Drawing) SVG(title string) string {
 	place := func(a Atom) [2]float64 {
 		return [2]float64{(a.X-low[0])*scale + margin, (high[1]-a.Y)*scale + margin}
 	}
-	fmt.Fprintf(&b, `<svg xmlns="http://www.w3.org/2000/svg" class="structure" role="img" aria-label="%s" viewBox="0 0 %s %s" width="%s" height="%s">`,
+	fmt.Fprintf(&b, `<svg class="structure" role="img" aria-label="%s" viewBox="0 0 %s %s" width="%s" height="%s">`,
 		escape(title), num(w), num(h), num(w), num(h))
+	b.WriteString(`<g class="spots">`)
+	for _, a := range d.Atoms {
+		p := place(a)
+		fmt.Fprintf(&b, `<circle data-a="%d" cx="%s" cy="%s" r="9"/>`, a.Of, num(p[0]), num(p[1]))
+	}
+	b.WriteString(`</g>`)
 	b.WriteString(`<g class="bonds" fill="none" stroke="currentColor" stroke-width="1.5" stroke-linecap="round">`)
 	for _, bond := range d.Bonds {
 		d.writeBond(&b, bond, place)
