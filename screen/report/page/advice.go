@@ -168,7 +168,7 @@ func lookAtDoubts(r *screen.Result) string {
 // percent writes a fraction for a reader.
 func percent(p float64) string {
 	switch {
-	case p > 0 && p < 0.0005:
+	case p < 0.0005: // a population is never nothing
 		return "< 0.1 %"
 	case p < 0.0995:
 		return fmt.Sprintf("%.1f %%", 100*p)

@@ -65,7 +65,10 @@ func (n number) MarshalJSON() ([]byte, error) {
 
 // figuresOf takes down the first n kept conformers.
 func figuresOf(r *screen.Result, zero []float64, n int) *figures {
-	f := &figures{Elements: r.Mol.Numbers(), Step: stepFor(r, n)}
+	f := &figures{
+		Elements: r.Mol.Numbers(), Step: stepFor(r, n),
+		Bonds: []int{}, Others: []other{}, Turns: []turn{}, Rings: []pucker{}, // a script counts them
+	}
 	for _, b := range r.Mol.Bonds() {
 		f.Bonds = append(f.Bonds, b.A, b.B, b.Order)
 	}

@@ -24,7 +24,7 @@ const forLigands = MaxBytes - 1.5e6
 // allowances are how many conformers of a ligand a page shows: the first of them
 // for which the ligands have room together. With the last one a ligand is a mere
 // line of the overview.
-var allowances = []int{40, 20, 10, 5, 2, 0}
+var allowances = []int{40, 30, 22, 16, 12, 8, 5, 3, 2, 1, 0}
 
 // A Book holds the ligands of a page.
 type Book struct {

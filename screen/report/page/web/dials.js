@@ -1,7 +1,7 @@
 // Torsions as dials and ring shapes as maps: each conformer is a hand, or a
 // marker, and its length or size tells the population.
 
-const size = 190, middle = 95, rim = 66;
+const size = 190, height = 212, middle = 95, rim = 66;
 
 page.dials = (slot, ligand) => {
   const { data } = ligand, looks = page.looks(data);
@@ -14,7 +14,7 @@ page.dials = (slot, ligand) => {
   ];
   if (all.length === 0) return;
   for (const d of all) {
-    const svg = page.canvas(size, size, `${d.words} of ${d.title}`);
+    const svg = page.canvas(size, height, `${d.words} of ${d.title}`);
     const draw = () => svg.replaceChildren(...d.draw());
     draw();
     ligand.onSelect.push(draw);
@@ -65,7 +65,7 @@ function dial(t, ligand, looks, weight) {
     }
     parts.push(g);
   }
-  parts.push(page.text(middle, size - 4, `${ligand.data.conformers[ligand.selected].number}: ${String(t.angles[ligand.selected]).replace("-", "−")}°`, { "text-anchor": "middle", class: "value" }));
+  parts.push(page.text(middle, height - 6, `${ligand.data.conformers[ligand.selected].number}: ${String(t.angles[ligand.selected]).replace("-", "−")}°`, { "text-anchor": "middle", class: "value" }));
   return parts;
 }
 
@@ -76,7 +76,7 @@ function wheel(r, ligand, looks, weight) {
     page.text(middle + 3, middle - rim + 12, `${far.toFixed(2)} Å`, { class: "tick" })];
   for (const k of order(ligand)) parts.push(dot(ligand, looks, weight, k, ...point(r.phase[k], rim * r.amplitude[k] / far), `q ${r.amplitude[k].toFixed(2)} Å, φ ${r.phase[k]}°`));
   const k = ligand.selected;
-  parts.push(page.text(middle, size - 4, `q ${r.amplitude[k].toFixed(2)} Å, φ ${r.phase[k]}°`, { "text-anchor": "middle", class: "value" }));
+  parts.push(page.text(middle, height - 6, `q ${r.amplitude[k].toFixed(2)} Å, φ ${r.phase[k]}°`, { "text-anchor": "middle", class: "value" }));
   return parts;
 }
 
@@ -91,7 +91,7 @@ function globe(r, ligand, looks, weight) {
     page.text(x(180), y(180) - 6, "chair", { "text-anchor": "middle", class: "place" }));
   for (const k of order(ligand)) parts.push(dot(ligand, looks, weight, k, x(r.phase[k]), y(r.theta[k]), `Q ${r.amplitude[k].toFixed(2)} Å, θ ${r.theta[k]}°, φ ${r.phase[k]}°`));
   const k = ligand.selected;
-  parts.push(page.text(middle, size - 8, `Q ${r.amplitude[k].toFixed(2)} Å, θ ${r.theta[k]}°, φ ${r.phase[k]}°`, { "text-anchor": "middle", class: "value" }));
+  parts.push(page.text(middle, height - 22, `Q ${r.amplitude[k].toFixed(2)} Å, θ ${r.theta[k]}°, φ ${r.phase[k]}°`, { "text-anchor": "middle", class: "value" }));
   return parts;
 }
 

@@ -42,11 +42,13 @@ function addShape(parts, data, at, shape, scale, hidden) {
     if (hidden[i] || hidden[j]) continue;
     const p = scale(at[i]), q = scale(at[j]);
     const mid = [(p[0] + q[0]) / 2, (p[1] + q[1]) / 2];
-    for (const [end, a, z] of [[p, i, (3 * p[2] + q[2]) / 4], [q, j, (p[2] + 3 * q[2]) / 4]]) {
-      const line = (extra, w) => page.svg("path", { d: `M${end[0].toFixed(1)} ${end[1].toFixed(1)}L${mid[0].toFixed(1)} ${mid[1].toFixed(1)}`,
-        "stroke-width": (w * p[3]).toFixed(1), fill: "none", "stroke-linecap": "round", ...extra });
-      if (!shape.back) parts.push({ z: z - 0.02, node: line({ class: "halo" }, thick + 0.08) });
-      parts.push({ z, node: line({ stroke: colour(a), "stroke-dasharray": shape.dash || null }, thick) });
+    const line = (a, b, w, extra) => page.svg("path", { d: `M${a[0].toFixed(1)} ${a[1].toFixed(1)}L${b[0].toFixed(1)} ${b[1].toFixed(1)}`,
+      "stroke-width": (w * p[3]).toFixed(1), fill: "none", ...extra });
+    // The halo sets a bond off from those behind it.
+    const far = Math.min(3 * p[2] + q[2], p[2] + 3 * q[2]) / 4;
+    if (!shape.back) parts.push({ z: far - 0.02, node: line(p, q, thick + 0.1, { class: "halo" }) });
+    for (const [end, a] of [[p, i], [q, j]]) {
+      parts.push({ z: far, node: line(end, mid, thick, { stroke: colour(a), "stroke-dasharray": shape.dash || null, "stroke-linecap": "round" }) });
     }
   }
   if (shape.back) return;

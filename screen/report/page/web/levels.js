@@ -1,15 +1,15 @@
 // Energies by level: what each level of theory changed. A conformer is a line
 // from column to column.
 
-const width = 700, height = 340, left = 56, right = 24, top = 26, bottom = 46;
+const height = 340, left = 50, right = 12, top = 26, bottom = 46;
 
 page.levels = (slot, ligand) => {
-  const { data } = ligand, looks = page.looks(data);
+  const { data } = ligand, looks = page.looks(data), width = page.widthOf(slot);
   const columns = columnsOf(data);
   const ceiling = ceilingOf(data, columns);
-  const x = (c) => left + 40 + (columns.length === 1 ? 0.5 : c / (columns.length - 1)) * (width - left - right - 80);
+  const half = Math.min(26, width / (4 * columns.length));
+  const x = (c) => left + half + 8 + (columns.length === 1 ? 0.5 : c / (columns.length - 1)) * (width - left - right - 2 * half - 16);
   const y = (e) => top + (1 - Math.min(e, ceiling) / ceiling) * (height - top - bottom);
-  const half = 26;
 
   const track = (energies, attributes, fully) => {
     let d = "", before = false;
@@ -23,7 +23,7 @@ page.levels = (slot, ligand) => {
     return page.svg("path", { d, fill: "none", ...attributes }, fully);
   };
   const draw = () => {
-    const parts = [...axes(columns, ceiling, x, y)];
+    const parts = [...axes(columns, ceiling, x, y, width)];
     for (const o of data.others) parts.push(track(o, { class: "left-behind" }, page.svg("title", {}, `conformer ${o.number}, left behind`)));
     data.conformers.forEach((c, k) => {
       const look = looks.get(c.family), mine = k === ligand.selected;
@@ -76,14 +76,14 @@ function ceilingOf(data, columns) {
   return most * 1.08;
 }
 
-function axes(columns, ceiling, x, y) {
+function axes(columns, ceiling, x, y, width) {
   const parts = [];
   const step = [0.25, 0.5, 1, 2, 5, 10, 20, 50].find((s) => ceiling / s <= 6) || 100;
   for (let e = 0; e <= ceiling; e += step) {
     parts.push(page.svg("path", { d: `M${left} ${y(e).toFixed(1)}H${width - right}`, class: "grid" }),
       page.text(left - 8, y(e) + 4, String(e), { "text-anchor": "end", class: "tick" }));
   }
-  columns.forEach((column, c) => parts.push(page.text(x(c), height - 20, column.name, { "text-anchor": "middle", class: "axis" })));
+  columns.forEach((column, c) => parts.push(page.text(x(c), height - 20 + (width < 480 && c % 2 ? 15 : 0), column.name, { "text-anchor": "middle", class: "axis" })));
   parts.push(page.text(14, (top + height - bottom) / 2, "kcal/mol", { class: "axis", "text-anchor": "middle", transform: `rotate(-90 14 ${(top + height - bottom) / 2})` }));
   return parts;
 }

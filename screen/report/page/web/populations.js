@@ -1,16 +1,16 @@
 // Populations with their bars, by rank.
 
-const width = 700, row = 20, left = 150, right = 70, top = 24;
+const row = 20, left = 150, right = 60, top = 24;
 
 page.populations = (slot, ligand) => {
-  const { data } = ligand, looks = page.looks(data);
+  const { data } = ligand, looks = page.looks(data), width = page.widthOf(slot);
   let t = 0;
   const n = data.conformers.length, height = top + n * row + 12;
   const most = Math.min(1, Math.max(...data.conformers.flatMap((c) => [...c.populations, ...(c.high || [])])) * 1.02);
   const x = (p) => left + (p / most) * (width - left - right);
   const draw = () => {
     const parts = [];
-    const step = most > 0.6 ? 0.2 : most > 0.25 ? 0.1 : 0.05;
+    const step = width < 480 ? (most > 0.5 ? 0.5 : 0.2) : most > 0.6 ? 0.2 : most > 0.25 ? 0.1 : 0.05;
     for (let p = 0; p <= most + 1e-9; p += step) {
       parts.push(page.svg("path", { d: `M${x(p).toFixed(1)} ${top - 4}V${height - 10}`, class: "grid" }),
         page.text(x(p), top - 9, `${Math.round(100 * p)} %`, { "text-anchor": "middle", class: "tick" }));

@@ -72,7 +72,7 @@ page.scene = (slot, ligand) => {
   slot.append(page.figure("Shapes in space", page.element("div", {}, stage, print, caption), {
     draw: flat,
     controls: [page.element("span", { class: "controls" }, step(-1, "Previous"), step(1, "Next"),
-      page.element("label", {}, "Show ", choose), page.element("label", { class: "tick" }, hydrogens, " all hydrogens"))],
+      page.element("label", {}, "Show ", choose), page.element("label", { class: "check" }, hydrogens, " all hydrogens"))],
     note: (viewer ? "" : "This browser has no WebGL: the view is drawn flat. ") +
       "Drag or use the arrow keys to turn. " + (looks.size > 1 ? "In overlays the carbons have the colour of their family; " : "") +
       `superposed on the first conformer${ligand.shapes.length < data.conformers.length ? `; the first ${ligand.shapes.length} are on this page` : ""}.`,

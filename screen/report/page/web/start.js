@@ -93,6 +93,10 @@ document.documentElement.classList.add("scripted");
 page.overview();
 addEventListener("hashchange", follow);
 addEventListener("beforeprint", () => page.current && page.current.forPrint && page.current.forPrint());
-matchMedia("(prefers-color-scheme: dark)").addEventListener("change", () => page.current && page.current.redraw());
+matchMedia("(prefers-color-scheme: dark)").addEventListener("change", () => {
+  if (!page.current) return;
+  for (const use of page.current.onSelect) use();
+  page.current.redraw();
+});
 follow();
 window.torsieveReport = page; // for those who look at it from the console, and for tests

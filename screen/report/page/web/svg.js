@@ -20,12 +20,18 @@ function fill(node, attributes, children) {
 page.canvas = (width, height, label, ...children) =>
   page.svg("svg", { viewBox: `0 0 ${width} ${height}`, width, height, role: "img", "aria-label": label }, ...children);
 
+// widthOf is how wide a figure in a slot may be, so that its letters keep their
+// size on a narrow screen.
+page.widthOf = (slot) => Math.round(Math.max(300, Math.min(900, (slot.clientWidth || 700) - 34)));
+
 page.text = (x, y, words, attributes = {}) => page.svg("text", { x, y, ...attributes }, words);
 
 // Families of shapes have a colour (M. Okabe, K. Ito, palette for all kinds of
 // colour vision), a marker and a dash, so that no two of them differ in colour
 // alone.
+// On a dark page the darker ones are lifted.
 const colours = ["#0072b2", "#d55e00", "#009e73", "#cc79a7", "#e69f00", "#56b4e9"];
+const lifted = ["#4aa8e0", "#f0803c", "#2cc59a", "#e3a3c8", "#f0b93c", "#9ad4f5"];
 const dashes = ["", "7 3", "2 3", "9 3 2 3"];
 const outlines = [
   "M-4 0a4 4 0 1 0 8 0a4 4 0 1 0 -8 0", "M-3.6 -3.6h7.2v7.2h-7.2z", "M0 -4.6l4.4 7.8h-8.8z",
@@ -40,7 +46,7 @@ page.looks = (data) => {
     if (looks.has(c.family)) continue;
     const n = looks.size;
     looks.set(c.family, {
-      colour: colours[n % colours.length], marker: outlines[n % outlines.length], dash: dashes[n % dashes.length], place: n,
+      get colour() { return (page.isDark() ? lifted : colours)[n % colours.length]; }, marker: outlines[n % outlines.length], dash: dashes[n % dashes.length], place: n,
     });
   }
   return looks;
@@ -49,13 +55,13 @@ page.looks = (data) => {
 page.marker = (look, x, y, size = 1) =>
   page.svg("path", { d: look.marker, transform: `translate(${x} ${y}) scale(${size})`, fill: look.colour, class: "marker" });
 
-page.percent = (p) => (p > 0 && p < 0.0005 ? "< 0.1 %" : p < 0.0995 ? `${(100 * p).toFixed(1)} %` : `${Math.round(100 * p)} %`);
+page.percent = (p) => (p < 0.0005 ? "< 0.1 %" : p < 0.0995 ? `${(100 * p).toFixed(1)} %` : `${Math.round(100 * p)} %`);
 
 page.isDark = () => matchMedia("(prefers-color-scheme: dark)").matches;
 
 // Colours of the elements: light and dark page.
 const atoms = {
-  1: ["#8d99a6", "#cfd6dd"], 6: ["#4a525c", "#a8b0ba"], 7: ["#0072b2", "#56b4e9"], 8: ["#d55e00", "#f0803c"],
+  1: ["#8d99a6", "#cfd6dd"], 6: ["#646d78", "#a8b0ba"], 7: ["#0072b2", "#56b4e9"], 8: ["#d55e00", "#f0803c"],
   9: ["#009e73", "#2cc59a"], 15: ["#b46500", "#e69f00"], 16: ["#b08a00", "#f0d442"], 17: ["#009e73", "#2cc59a"],
   35: ["#a34a7c", "#cc79a7"], 53: ["#7a3f96", "#b98ad0"],
 };
