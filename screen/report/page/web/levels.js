@@ -1,7 +1,7 @@
 // Energies by level: what each level of theory changed. A conformer is a line
 // from column to column.
 
-const height = 340, left = 50, right = 12, top = 26, bottom = 46;
+const height = 340, left = 60, right = 12, top = 26, bottom = 46;
 
 page.levels = (slot, ligand) => {
   const { data } = ligand, looks = page.looks(data), width = page.widthOf(slot);
