@@ -14,7 +14,7 @@ import (
 )
 
 // A Run is run.json: enough to repeat the run, and the times that it took. Times
-// stand nowhere else among the outputs but in the log.
+// stand nowhere else among the outputs but in the log and on the page.
 type Run struct {
 	Program  string            `json:"program"`
 	Version  string            `json:"version"`

@@ -143,4 +143,3 @@ func TestPercent(t *testing.T) {
 		}
 	}
 }
-

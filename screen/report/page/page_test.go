@@ -201,7 +201,7 @@ func TestPageIsWellFormed(t *testing.T) {
 // is left out is said.
 func TestPageStaysSmall(t *testing.T) {
 	const drug = "CC(C)Oc1cccc(c1)-c1ccnc(NCC2CCOCC2)n1"
-	for _, c := range []struct{ ligands, shown int }{{500, 20}, {4000, 0}} {
+	for _, c := range []struct{ ligands, shown int }{{500, 20}, {1500, 1}} {
 		var b Book
 		first := madeUp(t, drug, "first", 0, 60)
 		first.Warnings = []string{strings.Repeat("a long warning ", 20), strings.Repeat("<", 300)}

@@ -114,7 +114,7 @@ func write(w io.Writer, run Run, ligands []*ligand, shown int) error {
 	s := sheet{
 		Style: template.CSS(text("web/page.css")), LibraryVersion: libraryVersion,
 		Library: template.JS(text("assets/3dmol/3Dmol-min.js")), Program: template.JS(program()),
-		LibraryLicence: text("assets/3dmol/LICENSE"),
+		LibraryLicence: licences(),
 		Run:            run, Counts: countOf(ligands), Reduced: reduced(shown),
 	}
 	s.Policy = policy(string(s.Library), string(s.Program))
@@ -131,6 +131,15 @@ func write(w io.Writer, run Run, ligands []*ligand, shown int) error {
 		s.Ligands = append(s.Ligands, entry{l, n + 1})
 	}
 	return sheets.ExecuteTemplate(w, "page", s)
+}
+
+// licences are those of the library and of what was built into it.
+func licences() string {
+	all := text("assets/3dmol/LICENSE")
+	for _, part := range []string{"pako", "netcdfjs", "iobuffer", "upng-js"} {
+		all += "\n" + part + ", built into 3Dmol.js\n\n" + text("assets/3dmol/LICENSE-"+part)
+	}
+	return all
 }
 
 // reduced says what a page of many ligands leaves out.
