@@ -170,8 +170,10 @@ func percent(p float64) string {
 	switch {
 	case p < 0.0005: // a population is never nothing
 		return "< 0.1 %"
-	case p < 0.0995:
+	case p < 0.0995, p >= 0.9905 && p < 0.9995:
 		return fmt.Sprintf("%.1f %%", 100*p)
+	case p >= 0.9995 && p < 1:
+		return "> 99.9 %"
 	}
 	return fmt.Sprintf("%.0f %%", math.Round(100*p))
 }

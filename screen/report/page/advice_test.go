@@ -137,7 +137,7 @@ func TestChairsArePoles(t *testing.T) {
 }
 
 func TestPercent(t *testing.T) {
-	for p, want := range map[float64]string{0: "< 0.1 %", 0.0004: "< 0.1 %", 0.0123: "1.2 %", 0.0996: "10 %", 0.5: "50 %", 1: "100 %"} {
+	for p, want := range map[float64]string{0: "< 0.1 %", 0.0004: "< 0.1 %", 0.0123: "1.2 %", 0.0996: "10 %", 0.5: "50 %", 0.9876: "99 %", 0.9951: "99.5 %", 0.9999: "> 99.9 %", 1: "100 %"} {
 		if have := percent(p); have != want {
 			t.Errorf("%g is %s, want %s", p, have, want)
 		}

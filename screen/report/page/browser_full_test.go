@@ -200,9 +200,16 @@ func TestBrowserShowsTheEnsemble(t *testing.T) {
 		}
 	}
 
-	// All shapes together paint more than one; none paint nothing.
-	ask[any](r, `(() => { const s = document.querySelector("#overlay"); s.value = "all"; s.dispatchEvent(new Event("change")); return 0; })()`)
-	if all := r.number(painted); all < one {
+	// Seen from one place, all shapes together paint more than one; none paint
+	// nothing.
+	one = r.number(painted)
+	ask[any](r, `(() => {
+	  const viewer = torsieveReport.current.viewer, view = viewer.getView(), s = document.querySelector("#overlay");
+	  s.value = "all"; s.dispatchEvent(new Event("change"));
+	  viewer.setView(view);
+	  return 0;
+	})()`)
+	if all := r.number(painted); all < 1.05*one {
 		t.Errorf("%g pixels with all shapes, %g with one", all, one)
 	}
 	ask[any](r, `(torsieveReport.current.viewer.removeAllModels(), 0)`)

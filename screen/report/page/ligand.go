@@ -7,7 +7,6 @@ import (
 
 	"torsieve/internal/units"
 	"torsieve/screen"
-	"torsieve/screen/ensemble"
 	"torsieve/screen/report/page/drawing"
 )
 
@@ -127,7 +126,7 @@ func rowOf(r *screen.Result, i, k int, zero []float64) conformer {
 func intervalOf(w screen.Weights, k int) interval {
 	v := interval{Value: w.Populations[k], Known: w.Bars != nil}
 	if v.Known {
-		var bar ensemble.Bar = w.Bars[k]
+		bar := w.Bars[k]
 		v.Low, v.High = bar.Low, bar.High
 	}
 	return v

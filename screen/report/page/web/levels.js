@@ -8,7 +8,7 @@ page.levels = (slot, ligand) => {
   const columns = columnsOf(data);
   const ceiling = ceilingOf(data, columns);
   const half = Math.min(26, width / (4 * columns.length));
-  const x = (c) => left + half + 8 + (columns.length === 1 ? 0.5 : c / (columns.length - 1)) * (width - left - right - 2 * half - 16);
+  const x = (c) => left + half + 22 + (columns.length === 1 ? 0.5 : c / (columns.length - 1)) * (width - left - right - 2 * half - 44);
   const y = (e) => top + (1 - Math.min(e, ceiling) / ceiling) * (height - top - bottom);
 
   const track = (energies, attributes, fully) => {
@@ -33,7 +33,7 @@ page.levels = (slot, ligand) => {
       columns.forEach((column, n) => {
         const e = column.of(c);
         if (e !== null) group.append(page.marker(look, x(n) - half, y(e), mine ? 1.2 : 0.7));
-        if (mine && e !== null) group.append(page.text(x(n), y(e) - 7, (e > ceiling ? "▲ " : "") + e.toFixed(2), { "text-anchor": "middle", class: "value" }));
+        if (mine && e !== null) group.append(page.text(x(n), y(e) + (e > ceiling ? 18 : -7), (e > ceiling ? "▲ " : "") + e.toFixed(2), { "text-anchor": "middle", class: "value" }));
       });
       parts.push(group);
     });

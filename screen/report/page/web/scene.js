@@ -17,6 +17,7 @@ page.scene = (slot, ligand) => {
     "aria-label": "The molecule in space. Arrow keys turn it, plus and minus change its size, page up and page down change the conformer." });
   const caption = page.element("p", { class: "now", "aria-live": "polite" });
   const viewer = page.hasWebGL() ? gl(stage) : null;
+  const legend = looks.size > 1 ? families(ligand, looks) : null;
   const print = page.element("div", { class: "for-print", "aria-hidden": "true" });
 
   const hidden = () => data.elements.map((z, i) => z === 1 && !state.hydrogens && ligand.onCarbon[i]);
@@ -52,6 +53,7 @@ page.scene = (slot, ligand) => {
     state.turn = page.turnBy(state.turn, axis, degrees * Math.PI / 180);
     draw();
   };
+  const whole = () => { if (viewer) { viewer.zoomTo(); viewer.zoom(1.15); viewer.render(); } };
   const grow = (factor) => { if (viewer) { viewer.zoom(factor); viewer.render(); } };
   const keys = {
     ArrowLeft: () => turn("y", -15), ArrowRight: () => turn("y", 15), ArrowUp: () => turn("x", -15), ArrowDown: () => turn("x", 15),
@@ -65,11 +67,11 @@ page.scene = (slot, ligand) => {
   });
   if (!viewer) drag(stage, turn);
 
-  const choose = page.element("select", { change: (e) => { state.mode = e.target.value; draw(); }, id: "overlay" },
+  const choose = page.element("select", { change: (e) => { state.mode = e.target.value; draw(); whole(); }, id: "overlay" },
     ...modes.map(([value, words]) => page.element("option", { value }, words)));
-  const hydrogens = page.element("input", { type: "checkbox", change: (e) => { state.hydrogens = e.target.checked; draw(); } });
+  const hydrogens = page.element("input", { type: "checkbox", change: (e) => { state.hydrogens = e.target.checked; draw(); whole(); } });
   const step = (by, words) => page.element("button", { type: "button", click: () => ligand.select(ligand.selected + by) }, words);
-  slot.append(page.figure("Shapes in space", page.element("div", {}, stage, print, caption), {
+  slot.append(page.figure("Shapes in space", page.element("div", {}, stage, print, caption, legend), {
     draw: flat,
     controls: [page.element("span", { class: "controls" }, step(-1, "Previous"), step(1, "Next"),
       page.element("label", {}, "Show ", choose), page.element("label", { class: "check" }, hydrogens, " all hydrogens"))],
@@ -83,8 +85,7 @@ page.scene = (slot, ligand) => {
     viewer.zoomTo();
     const view = viewer.getView();
     viewer.setView([...view.slice(0, 4), ...quaternion(state.turn)]);
-    viewer.zoom(1.15);
-    viewer.render();
+    whole();
   }
   ligand.redraw = draw;
   ligand.mark = (atoms) => { state.marked = atoms; draw(); };
@@ -92,6 +93,18 @@ page.scene = (slot, ligand) => {
   ligand.viewer = viewer;
   draw();
 };
+
+// families lists the families with their looks; each leads to its lowest shape.
+function families(ligand, looks) {
+  const { conformers } = ligand.data;
+  return page.element("ul", { class: "families", "aria-label": "Families of shapes" }, ...[...looks].map(([family, look]) => {
+    const members = conformers.filter((c) => c.family === family);
+    const sum = members.reduce((p, c) => p + c.populations[0], 0);
+    return page.element("li", {}, page.element("button", { type: "button", click: () => ligand.select(conformers.indexOf(members[0])) },
+      page.svg("svg", { viewBox: "-6 -6 12 12", width: 13, height: 13, "aria-hidden": "true" }, page.marker(look, 0, 0)),
+      ` family ${family}: ${members.length} ${members.length === 1 ? "shape" : "shapes"}, ${page.percent(sum)}`));
+  }));
+}
 
 function gl(stage) {
   try {

@@ -55,7 +55,11 @@ page.looks = (data) => {
 page.marker = (look, x, y, size = 1) =>
   page.svg("path", { d: look.marker, transform: `translate(${x} ${y}) scale(${size})`, fill: look.colour, class: "marker" });
 
-page.percent = (p) => (p < 0.0005 ? "< 0.1 %" : p < 0.0995 ? `${(100 * p).toFixed(1)} %` : `${Math.round(100 * p)} %`);
+page.percent = (p) => {
+  if (p < 0.0005) return "< 0.1 %";
+  if (p >= 0.9995 && p < 1) return "> 99.9 %";
+  return p < 0.0995 || (p >= 0.9905 && p < 0.9995) ? `${(100 * p).toFixed(1)} %` : `${Math.round(100 * p)} %`;
+};
 
 page.isDark = () => matchMedia("(prefers-color-scheme: dark)").matches;
 
