@@ -1,6 +1,7 @@
 package page
 
 import (
+	"fmt"
 	"html/template"
 	"math"
 	"strings"
@@ -76,6 +77,14 @@ func newLigand(r *screen.Result) *ligand {
 	}
 	l.Advice = adviceFor(r)
 	return l
+}
+
+// bare is a ligand that the page could not take in.
+func bare(r *screen.Result, fault error) *ligand {
+	return &ligand{
+		order: r.Ligand.Order, ID: short(r.Ligand.ID), Source: short(r.Ligand.Place), Status: r.Status, Reason: short(r.Reason),
+		Warnings: []string{short(fmt.Sprintf("not shown for a fault of the program (%v): its results stand in conformers.csv", fault))},
+	}
 }
 
 // mostWarnings is how many warnings of a ligand the page prints.

@@ -34,9 +34,14 @@ type Book struct {
 }
 
 // Add takes down what the page shows of a result, and keeps nothing else of it.
-// How much is shown depends on which ligands there are, not on their order.
+// How much is shown depends on which ligands there are, not on their order. A
+// fault of the program in one of them costs its place on the page, and the page
+// says so; the results of a run do not hang on it.
 func (b *Book) Add(r *screen.Result) {
-	l := newLigand(r)
+	var l *ligand
+	if err := screen.Guard(func() error { l = newLigand(r); return nil }); err != nil {
+		l = bare(r, err)
+	}
 	l.cut(allowances[b.level])
 	b.ligands = append(b.ligands, l)
 	b.bytes += l.bytes()

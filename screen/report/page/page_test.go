@@ -196,6 +196,19 @@ func TestPageIsWellFormed(t *testing.T) {
 	}
 }
 
+// A ligand that makes the page stumble does not take the others with it.
+func TestFaultInOneLigand(t *testing.T) {
+	var b Book
+	bad := butanol(t, "bad", 0, 4)
+	bad.Conformers[0].X = bad.Conformers[0].X[:3] // a fault of the caller: not of this molecule
+	b.Add(bad)
+	b.Add(butanol(t, "good", 1, 4))
+	text := written(t, &b)
+	if !strings.Contains(text, "not shown for a fault of the program") || !strings.Contains(text, `<a href="#ligand-2">good</a>`) {
+		t.Error("want the fault told and the other ligand shown")
+	}
+}
+
 // Five hundred ligands of the size of a drug, forty conformers each and with
 // warnings, stay under the limit; so do many more, with less of each; and what
 // is left out is said.
