@@ -54,6 +54,9 @@ func open(t *testing.T, flags ...chromedp.ExecAllocatorOption) *reader {
 	r := &reader{T: t, ctx: ctx}
 	r.must(chromedp.Listen(ctx, r.note))
 	r.do(call(network.Enable, network.EnableParams{}), call(log.Enable, cdp.Empty{}))
+	// Not on the first call: it would bound the life of the browser.
+	r.ctx, stop = context.WithTimeout(ctx, 2*time.Minute)
+	t.Cleanup(stop)
 	return r
 }
 
