@@ -101,11 +101,11 @@ func (m *machine) ligand(ctx context.Context, l *Ligand) (*Result, error) {
 	res.Warnings = append(res.Warnings, l.Warnings...)
 	if l.Err != nil {
 		res.Status, res.Reason = l.Status, l.Err.Error()
-		return res, nil
+		return res, nil //nolint:nilerr // it is in the result
 	}
 	if ctx.Err() != nil {
 		res.Status, res.Reason = Stopped, "the run was stopped before its turn"
-		return res, nil
+		return res, nil //nolint:nilerr // it is in the result
 	}
 	m.tell(Event{Kind: Begun, Ligand: l.ID})
 	r := &ligandRun{
