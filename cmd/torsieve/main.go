@@ -9,6 +9,8 @@ import (
 	"os"
 	"os/signal"
 	"syscall"
+
+	"gonum.org/v1/gonum/blas/blas64"
 )
 
 // Exit statuses, as README.md promises them.
@@ -23,6 +25,7 @@ const (
 var errInterrupted = errors.New("stopped by a signal")
 
 func main() {
+	blas64.Use(fastProducts{})
 	ctx, cancel := context.WithCancelCause(context.Background())
 	signals := make(chan os.Signal, 2)
 	signal.Notify(signals, os.Interrupt, syscall.SIGTERM, syscall.SIGHUP)
