@@ -3,20 +3,14 @@
 package generate
 
 import (
-	"bufio"
 	"context"
 	"encoding/csv"
 	"fmt"
-	"io"
 	"os"
-	"slices"
 	"strings"
 	"testing"
-	"time"
 
-	"torsieve/internal/units"
 	"torsieve/molecule"
-	"torsieve/molecule/sdf"
 	"torsieve/molecule/smiles"
 )
 
@@ -79,63 +73,4 @@ func embeds(text string) error {
 		return err
 	}
 	return m.StereoMatches(x)
-}
-
-// TestWriteEnsembles generates an ensemble for each line "SMILES<tab>id" of the
-// file that GENERATE_LIGANDS names and writes all of them to the SD file that
-// GENERATE_OUT names, in the order in which they would be handed out: input for
-// a scorer of recovered crystal shapes.
-func TestWriteEnsembles(t *testing.T) {
-	in, out := os.Getenv("GENERATE_LIGANDS"), os.Getenv("GENERATE_OUT")
-	if in == "" || out == "" {
-		t.Skip("a tool: set GENERATE_LIGANDS and GENERATE_OUT")
-	}
-	ligands, err := os.ReadFile(in)
-	if err != nil {
-		t.Fatal(err)
-	}
-	f, err := os.Create(out)
-	if err != nil {
-		t.Fatal(err)
-	}
-	defer f.Close()
-	w := bufio.NewWriter(f)
-	failed := 0
-	var took []float64
-	for _, line := range strings.Split(strings.TrimSpace(string(ligands)), "\n") {
-		text, id, _ := strings.Cut(line, "\t")
-		begun := time.Now()
-		if err := writeEnsemble(t, w, text, id); err != nil {
-			failed++
-			t.Errorf("%s: %v", id, err)
-		}
-		took = append(took, time.Since(begun).Seconds())
-	}
-	if err := w.Flush(); err != nil {
-		t.Fatal(err)
-	}
-	slices.Sort(took)
-	t.Logf("%d ligands, %d failed; seconds: median %.1f, nine in ten %.1f, longest %.1f", len(took), failed,
-		took[len(took)/2], took[len(took)*9/10], took[len(took)-1])
-}
-
-func writeEnsemble(t *testing.T, w io.Writer, text, id string) error {
-	m, err := stated(text)
-	if err != nil {
-		return err
-	}
-	begun := time.Now()
-	res, err := Conformers(context.Background(), m, id, Spread())
-	if err != nil {
-		return err
-	}
-	t.Logf("%s: %d rotors, %d starts, %d relaxed, %d found, %d kept, complete %v, %.1f s %v", id, m.RotatableBonds(),
-		res.Starts, res.Relaxed, res.Found, len(res.Conformers), res.Complete, time.Since(begun).Seconds(), res.Warnings)
-	for _, c := range res.Conformers {
-		above := (c.Energy - res.Conformers[0].Energy) / units.KcalPerMol
-		if err := sdf.Write(w, sdf.Out{Mol: m, X: c.X, Title: id, Comment: fmt.Sprintf("%.3f kcal/mol", above)}); err != nil {
-			return err
-		}
-	}
-	return nil
 }
