@@ -24,6 +24,7 @@ type commands struct {
 	Screen   screenCommand   `cmd:"" help:"The main job: from ligands to weighted ensembles."`
 	Status   statusCommand   `cmd:"" help:"How far a run is; also while it is under way."`
 	Show     showCommand     `cmd:"" help:"The answer of a run in the terminal: its ligands, or the conformers of one."`
+	Merge    mergeCommand    `cmd:"" help:"Join runs that were made of slices of one list."`
 	Generate generateCommand `cmd:"" help:"Conformers of the generator and the force field only."`
 	Point    pointCommand    `cmd:"" help:"Single-point energies, one JSON object a line."`
 	Relax    relaxCommand    `cmd:"" help:"Optimise structures at a tier."`

@@ -20,6 +20,8 @@ type screenCommand struct {
 	Out     string   `help:"Run folder: made if it is not there." required:"" placeholder:"DIR"`
 	Fresh   bool     `help:"Set the run in the folder aside first, instead of going on with it."`
 
+	Slice slice `help:"Only every n-th ligand of the list, from the i-th on: one of n independent runs for merge." placeholder:"i/n"`
+
 	Through       string    `group:"Methods" help:"Last tier to run: forcefield, semiempirical or hf." enum:"forcefield,semiempirical,hf" default:"hf"`
 	MaxConformers int       `group:"Methods" help:"Cap on the conformers that enter the semi-empirical tier (default: ${default})." default:"${max_conformers}" placeholder:"N"`
 	Window        *float64  `group:"Methods" help:"Energy window for the last tier (default: 5 to 10, by the rotatable bonds)." placeholder:"KCAL"`
@@ -51,6 +53,7 @@ func (c *screenCommand) Run(s *session) error {
 	if err != nil {
 		return err
 	}
+	ligands = c.Slice.of(ligands)
 	if !anyReadable(ligands) {
 		return &failure{code: exitNothing} // nothing is written for it
 	}
