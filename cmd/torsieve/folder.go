@@ -38,15 +38,17 @@ func (s *session) takeFolder(path, where string, fresh bool, run *report.Run) (*
 			return nil, err
 		}
 	}
-	folder, err := report.Create(path, run)
-	if err != nil {
-		return nil, nothing(err, folderHint(err))
+	if err := os.MkdirAll(path, 0o755); err != nil {
+		return nil, nothing(err, "")
 	}
+	// Nothing of a run that another process drives is written to.
 	f, err := s.holdStore(where, run)
 	if err != nil {
 		return nil, nothing(err, folderHint(err))
 	}
-	f.Folder = folder
+	if f.Folder, err = report.Create(path, run); err != nil {
+		return nil, nothing(errors.Join(err, f.close()), folderHint(err))
+	}
 	if there && !fresh {
 		s.voice.note("%s holds a run: what it has done with the same settings is not computed again", path)
 	}
@@ -67,7 +69,8 @@ func (s *session) holdStore(where string, run *report.Run) (*runFolder, error) {
 	}
 	hold, err := st.Hold(s.ctx, store.Holder{Program: "torsieve screen", Host: host, PID: os.Getpid(), Begun: run.Begun})
 	if err != nil {
-		return nil, errors.Join(err, st.Close())
+		_ = st.Close() // the reason has been found
+		return nil, err
 	}
 	return &runFolder{store: st, hold: hold}, nil
 }

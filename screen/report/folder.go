@@ -60,7 +60,7 @@ func Holds(path string) (run bool, err error) {
 	if err != nil {
 		return false, err
 	}
-	run = slices.ContainsFunc(entries, func(e os.DirEntry) bool { return e.Name() == RunFile })
+	run = slices.ContainsFunc(entries, func(e os.DirEntry) bool { return e.Name() == RunFile || e.Name() == StoreFile })
 	foreign := slices.ContainsFunc(entries, func(e os.DirEntry) bool { return !strings.HasPrefix(e.Name(), asidePrefix) })
 	if foreign && !run {
 		return false, fmt.Errorf("%s: %w", path, ErrNotEmpty)
